@@ -1,0 +1,141 @@
+package ask
+
+import (
+	"bytes"
+	"encoding/json"
+	"errors"
+	"fmt"
+	"io"
+	"math"
+
+	"tailgap/core/cutoff"
+	"tailgap/core/sample"
+	"tailgap/core/verdict"
+)
+
+// Limits of what can be asked; beyond them an answer would be noise, or
+// would never come.
+const (
+	minReplicates = 200
+	maxReplicates = 100_000_000
+	maxCutoffs    = 1000
+)
+
+// NewQuestion returns a question with the defaults: a fitted curve, the step
+// detected, 95% intervals from 10,000 replicates with seed 1, no cutoffs and
+// no tolerance.
+func NewQuestion() Question {
+	return Question{
+		Format: QuestionFormat, Scores: []string{}, Missing: []string{}, Header: sample.HeaderAuto,
+		Cutoffs: []cutoff.Cutoff{}, Level: 0.95, Replicates: 10_000, Seed: 1,
+	}
+}
+
+// ReadQuestion reads a question file: JSON with the version QuestionFormat.
+// What the file leaves out keeps its default. An unknown version, an unknown
+// field and a question that Check refuses are errors.
+func ReadQuestion(text []byte) (Question, error) {
+	var version struct {
+		Format *string `json:"format"`
+	}
+	if err := json.Unmarshal(text, &version); err != nil {
+		return Question{}, fmt.Errorf("this is not a question file: %w", err)
+	}
+	if version.Format == nil || *version.Format != QuestionFormat {
+		found := "no format"
+		if version.Format != nil {
+			found = fmt.Sprintf("the format %.60q", *version.Format)
+		}
+		return Question{}, fmt.Errorf("the question file has %s; this program reads %q", found, QuestionFormat)
+	}
+	question := NewQuestion()
+	decoder := json.NewDecoder(bytes.NewReader(text))
+	decoder.DisallowUnknownFields()
+	if err := decoder.Decode(&question); err != nil {
+		return Question{}, fmt.Errorf("the question file can't be read: %w", err)
+	}
+	if _, err := decoder.Token(); !errors.Is(err, io.EOF) {
+		return Question{}, errors.New("the question file goes on after the question; a file holds one question")
+	}
+	return question.filled(), question.Check()
+}
+
+// WriteQuestion writes the question as ReadQuestion reads it.
+func WriteQuestion(question Question) ([]byte, error) {
+	text, err := json.MarshalIndent(question.filled(), "", "  ")
+	return append(text, '\n'), err
+}
+
+// filled has empty lists where there are none, so that a question is always
+// written in one way.
+func (q Question) filled() Question {
+	if q.Scores == nil {
+		q.Scores = []string{}
+	}
+	if q.Missing == nil {
+		q.Missing = []string{}
+	}
+	if q.Cutoffs == nil {
+		q.Cutoffs = []cutoff.Cutoff{}
+	}
+	if q.Header == "" {
+		q.Header = sample.HeaderAuto
+	}
+	return q
+}
+
+// Check returns an error, a sentence for the person who asks, when the
+// question can't be answered whatever the data.
+func (q Question) Check() error {
+	if q.Format != QuestionFormat {
+		return fmt.Errorf("the question has the format %.60q; this program reads %q", q.Format, QuestionFormat)
+	}
+	if !(q.Level > 0 && q.Level < 1) {
+		return fmt.Errorf("the level %v is not between 0 and 1; write 0.95 for 95%% intervals", q.Level)
+	}
+	if q.Replicates < minReplicates || q.Replicates > maxReplicates {
+		return fmt.Errorf("%d replicates can't be used; ask for between %d and %d", q.Replicates, minReplicates, maxReplicates)
+	}
+	if float64(q.Replicates+1)*(1-q.Level) < 1 {
+		return fmt.Errorf("a level of %v needs more than %d replicates: ask for %.0f or more", q.Level, q.Replicates, math.Ceil(1/(1-q.Level)))
+	}
+	if q.Workers < 0 {
+		return fmt.Errorf("%d workers can't share the work; write 0 for one worker for each core", q.Workers)
+	}
+	if q.Curve != nil && (!(q.Curve.SD > 0) || !finite(q.Curve.SD) || !finite(q.Curve.Mean)) {
+		return fmt.Errorf("a curve with mean %v and SD %v can't be drawn; the SD must be above zero and both must be finite", q.Curve.Mean, q.Curve.SD)
+	}
+	return errors.Join(q.checkCutoffs(), q.checkStakes())
+}
+
+func (q Question) checkCutoffs() error {
+	if len(q.Cutoffs) > maxCutoffs {
+		return fmt.Errorf("%d cutoffs are more than one answer takes; ask for at most %d", len(q.Cutoffs), maxCutoffs)
+	}
+	seen := map[cutoff.Cutoff]bool{}
+	for _, c := range q.Cutoffs {
+		if seen[c] {
+			return fmt.Errorf("the cutoff %s is there twice; leave one out", c)
+		}
+		seen[c] = true
+	}
+	return nil
+}
+
+func (q Question) checkStakes() error {
+	if q.Heads != nil && (!(*q.Heads > 0) || !finite(*q.Heads)) {
+		return fmt.Errorf("%v heads can't be counted; say how many people the share will be applied to, a number above zero", *q.Heads)
+	}
+	for _, limit := range []*verdict.Limit{q.TooHigh, q.TooLow} {
+		switch {
+		case limit == nil:
+		case !(limit.Size >= 0) || !finite(limit.Size):
+			return fmt.Errorf("the tolerance %s can't be used; it must be zero or more", limit)
+		case limit.Unit == verdict.Heads && q.Heads == nil:
+			return fmt.Errorf("the tolerance %s needs to know of how many people; say it with heads, such as 4000", limit)
+		}
+	}
+	return nil
+}
+
+func finite(x float64) bool { return !math.IsNaN(x) && !math.IsInf(x, 0) }
