@@ -4,7 +4,6 @@ package cutoff
 
 import (
 	"fmt"
-	"math"
 	"regexp"
 	"strconv"
 	"strings"
@@ -57,11 +56,11 @@ type Cutoff struct {
 	To   float64
 }
 
-const number = `[-+]?(?:\d+\.?\d*|\.\d+)(?:[eE][-+]?\d+)?`
+const number = `[-+]?(?:\d+(?:\.\d+)?|\.\d+)(?:[eE][-+]?\d+)?`
 
 var (
 	oneSided = regexp.MustCompile(`^(>=|≥|>|<=|≤|<)\s*(` + number + `)$`)
-	twoEnded = regexp.MustCompile(`^(` + number + `?)\s*\.\.\s*(` + number + `)$`)
+	twoEnded = regexp.MustCompile(`^(` + number + `)\s*\.\.\s*(` + number + `)$`)
 	plain    = strings.NewReplacer("−", "-", "\u00a0", " ", "\u202f", " ")
 )
 
@@ -79,7 +78,7 @@ func Parse(text string) (Cutoff, error) {
 		return Cutoff{Side: side, At: at + 0}, nil
 	}
 	if m := twoEnded.FindStringSubmatch(clean); m != nil {
-		from, errFrom := strconv.ParseFloat(strings.TrimSuffix(m[1], "."), 64)
+		from, errFrom := strconv.ParseFloat(m[1], 64)
 		to, errTo := strconv.ParseFloat(m[2], 64)
 		if errFrom != nil || errTo != nil {
 			return Cutoff{}, unreadable(text)
@@ -136,8 +135,5 @@ func (c *Cutoff) UnmarshalText(text []byte) (err error) {
 	*c, err = Parse(string(text))
 	return err
 }
-
-// Finite is false where a number was too large to be one.
-func (c Cutoff) Finite() bool { return !math.IsInf(c.At, 0) && !math.IsInf(c.To, 0) }
 
 func format(x float64) string { return strconv.FormatFloat(x, 'f', -1, 64) }

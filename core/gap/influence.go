@@ -1,0 +1,74 @@
+package gap
+
+import (
+	"math"
+
+	"tailgap/core/curve"
+)
+
+// SampleSums are the power sums of the sample itself.
+func (t Table) SampleSums() Sums {
+	m := t.Moments
+	n, sd := float64(m.N), m.SD
+	return Sums{
+		N: n, Mean: 0, SD: 1,
+		M2: m.M2 / (sd * sd), M3: m.M3 / (sd * sd * sd), M4: m.M4 / (sd * sd * sd * sd),
+	}
+}
+
+// SampleInside are the sums of the sample over a region.
+func (t Table) SampleInside(r Region) Inside {
+	var in Inside
+	for i := r.From; i < r.To; i++ {
+		count, u := float64(t.Counts.Count[i]), t.U[i]
+		in.K += count
+		in.S1 += count * u
+		in.S2 += count * u * u
+	}
+	return in
+}
+
+// Estimate is the region's estimate from the sample.
+func (t Table) Estimate(r Region) Estimate {
+	sums := t.SampleSums()
+	return t.At(&r, &sums, t.SampleInside(r))
+}
+
+// Influence is the influence function of the gap of an upper tail, one value
+// for each distinct score, for a fitted normal curve: what one more person
+// with that score would change in the gap, times n. A given curve's share
+// does not move, so only the counted share's part is left.
+//
+//	ψ(x) = φ(z)[u + (z/2)(u²-1)] - (1{x beyond the cutoff} - S),  u = (x-mean)/SD
+func (t Table) Influence(r Region) []float64 {
+	counted := t.SampleInside(r).K / float64(t.Counts.N)
+	psi := make([]float64, len(t.U))
+	for i, u := range t.U {
+		psi[i] = counted
+		if i >= r.From && i < r.To {
+			psi[i]--
+		}
+		if t.Curve.Fitted {
+			psi[i] += shareInfluence(r.lower.point, u)
+			if r.stretch {
+				psi[i] -= shareInfluence(r.upper.point, u)
+			}
+		}
+	}
+	return psi
+}
+
+func shareInfluence(z, u float64) float64 {
+	return curve.Density(z) * (u + z/2*(u*u-1))
+}
+
+// PlugInSE is the root of the mean squared influence over n, a proportion:
+// the delta method's standard error of the gap. It is right in the middle of
+// the scale and collapses in an empty tail; SE is the one that is reported.
+func (t Table) PlugInSE(r Region) float64 {
+	total, n := 0.0, float64(t.Counts.N)
+	for i, psi := range t.Influence(r) {
+		total += float64(t.Counts.Count[i]) * psi * psi
+	}
+	return math.Sqrt(total / n / n)
+}

@@ -1,0 +1,110 @@
+// Package gap computes how far the curve's share is from the counted share
+// over a region of the score scale, and how uncertain that is: its influence
+// function, variance and ghost-studentised standard error.
+//
+// Everything is computed for upper tails and stretches. A lower tail is the
+// complement of an upper one: its gap is minus the upper tail's, its limits
+// are mirrored and its standard error is the same.
+package gap
+
+import (
+	"math"
+
+	"tailgap/core/curve"
+	"tailgap/core/sample"
+)
+
+// Threshold is one end of a region: where people are split and where the
+// curve is read for it.
+type Threshold struct {
+	At     float64 // the score that splits
+	Strict bool    // a score equal to At is short of the threshold (X > At), not beyond it (X >= At)
+	Point  float64 // the score at which the curve is read: At, or half a step beside it
+}
+
+// Table is a count table in standard units, ready for shares and gaps to be
+// read from it, again and again, under any counts.
+type Table struct {
+	Counts  sample.Counts
+	Moments sample.Moments
+	Curve   curve.Normal
+	U       []float64 // the distinct scores, in SDs from the mean
+}
+
+// NewTable standardises the count table by its mean and SD, which must be
+// above zero.
+func NewTable(counts sample.Counts, moments sample.Moments, c curve.Normal) Table {
+	t := Table{Counts: counts, Moments: moments, Curve: c, U: make([]float64, len(counts.Score))}
+	for i, score := range counts.Score {
+		t.U[i] = t.standard(score)
+	}
+	return t
+}
+
+func (t Table) standard(score float64) float64 { return (score - t.Moments.Mean) / t.Moments.SD }
+
+// Region is the set of scores whose share is asked for: an upper tail, or a
+// stretch between two thresholds. All places are in standard units.
+type Region struct {
+	From, To int // the distinct scores inside: From <= i < To
+	lower    end
+	upper    end
+	stretch  bool
+}
+
+// end is one end of a region: where the curve is read, and where a ghost
+// observation stands.
+type end struct {
+	point, ghost float64
+	tail         float64 // a given curve's share beyond the point; it does not move with the sample
+}
+
+func (t Table) end(at Threshold) end {
+	return end{
+		point: t.standard(at.Point), ghost: t.standard(at.At),
+		tail: curve.UpperTail(t.Curve.Z(at.Point)),
+	}
+}
+
+func (t Table) index(at Threshold) int {
+	if at.Strict {
+		return t.Counts.IndexAbove(at.At)
+	}
+	return t.Counts.IndexAtLeast(at.At)
+}
+
+// Tail is the region at and beyond a threshold.
+func (t Table) Tail(at Threshold) Region {
+	return Region{From: t.index(at), To: len(t.U), lower: t.end(at)}
+}
+
+// Between is the region beyond the threshold from and short of the threshold to.
+func (t Table) Between(from, to Threshold) Region {
+	return Region{
+		From: t.index(from), To: max(t.index(from), t.index(to)),
+		lower: t.end(from), upper: t.end(to), stretch: true,
+	}
+}
+
+// Sums are power sums of a sample, or of a resample of it, in the standard
+// units of the sample; from them every share, gap and standard error follows.
+type Sums struct {
+	N, Mean, SD, M2, M3, M4 float64 // SD with divisor n-1, central moments with divisor n
+}
+
+// NewSums turns the sums of 1, u, u², u³ and u⁴ into moments.
+func NewSums(s0, s1, s2, s3, s4 float64) Sums {
+	mean := s1 / s0
+	r2, r3, r4 := s2/s0, s3/s0, s4/s0
+	square := mean * mean
+	m2 := math.Max(0, r2-square)
+	return Sums{
+		N: s0, Mean: mean, SD: math.Sqrt(m2 * s0 / (s0 - 1)),
+		M2: m2,
+		M3: r3 - 3*mean*r2 + 2*mean*square,
+		M4: r4 - 4*mean*r3 + 6*square*r2 - 3*square*square,
+	}
+}
+
+// Inside are the sums of 1, u and u² over the people inside a region.
+type Inside struct{ K, S1, S2 float64 }

@@ -1,0 +1,95 @@
+package resample
+
+import "math"
+
+// largest keeps the k largest of the values it is offered, in a buffer of
+// twice that size: when the buffer is full, the smaller half is thrown away
+// by selection. So a high quantile of many replicates needs neither all of
+// them nor a sort, and does not depend on the order they came in.
+type largest struct {
+	values []float64 // at most 2k
+	k      int
+	floor  float64 // every value below it is out
+}
+
+func newLargest(k int) largest {
+	return largest{k: k, floor: math.Inf(-1)}
+}
+
+func (l *largest) offer(x float64) {
+	if x < l.floor {
+		return
+	}
+	if len(l.values) == 2*l.k {
+		l.shrink()
+		if x < l.floor {
+			return
+		}
+	}
+	l.values = append(l.values, x)
+}
+
+// shrink keeps the k largest, the smallest of them first.
+func (l *largest) shrink() {
+	if len(l.values) <= l.k {
+		return
+	}
+	at := len(l.values) - l.k
+	selectNth(l.values, at)
+	copy(l.values, l.values[at:])
+	l.values = l.values[:l.k]
+	l.floor = l.values[0]
+}
+
+// kth is the k-th largest of everything offered to all parts; fewer than k
+// values in all is a mistake of the caller.
+func kth(parts []*largest) float64 {
+	all := newLargest(parts[0].k)
+	for _, part := range parts {
+		for _, x := range part.values {
+			all.offer(x)
+		}
+	}
+	if len(all.values) > all.k {
+		all.shrink()
+		return all.values[0]
+	}
+	selectNth(all.values, 0)
+	return all.values[0]
+}
+
+// selectNth reorders x so that x[n] is the value it would have if x were
+// sorted, nothing before it is larger and nothing after it smaller (Hoare
+// 1961, with the median of three as pivot).
+func selectNth(x []float64, n int) {
+	low, high := 0, len(x)-1
+	for low < high {
+		pivot := medianOfThree(x[low], x[(low+high)/2], x[high])
+		i, j := low, high
+		for i <= j {
+			for x[i] < pivot {
+				i++
+			}
+			for x[j] > pivot {
+				j--
+			}
+			if i <= j {
+				x[i], x[j] = x[j], x[i]
+				i++
+				j--
+			}
+		}
+		switch {
+		case n <= j:
+			high = j
+		case n >= i:
+			low = i
+		default:
+			return
+		}
+	}
+}
+
+func medianOfThree(a, b, c float64) float64 {
+	return max(min(a, b), min(max(a, b), c))
+}

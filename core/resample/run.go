@@ -1,0 +1,124 @@
+// Package resample draws bootstrap samples of a count table and reads from
+// them the quantiles that intervals and bands are made of.
+package resample
+
+import (
+	"context"
+	"math"
+	"runtime"
+	"sync/atomic"
+
+	"tailgap/core/gap"
+)
+
+// Plan says what is wanted of the replicates. Every region is judged at every
+// weight (see gap.Estimate.Gap). Groups are runs of regions, from (in) to
+// (out), for which simultaneous limits are wanted.
+type Plan struct {
+	Table      gap.Table
+	Regions    []gap.Region
+	Weights    []float64
+	Groups     [][2]int
+	Level      float64
+	Replicates int
+	Seed       uint64
+	Workers    int // goroutines; 0: one for each core. The quantiles are the same for any.
+}
+
+// Quantiles are quantiles of the studentised gap's absolute value
+// |E*-E|/√(V*/n), at the plan's level.
+type Quantiles struct {
+	Region [][]float64 // by region, then weight: for an interval
+	Group  [][]float64 // by group, then weight, of the largest over the group: for a band
+}
+
+// blockSize is how many replicates share one stream of random numbers; part
+// of what a seed means, so that changing it changes every answer slightly.
+const blockSize = 64
+
+// Run draws the replicates and returns their quantiles. It returns the
+// context's error soon after the context ends (within one replicate), having
+// stopped all its goroutines. progress, which may be nil, is called from the
+// calling goroutine with the number of replicates done.
+func Run(ctx context.Context, plan Plan, progress func(done int)) (Quantiles, error) {
+	workers := plan.Workers
+	if workers <= 0 {
+		workers = runtime.GOMAXPROCS(0)
+	}
+	blocks := (plan.Replicates + blockSize - 1) / blockSize
+	workers = min(workers, blocks)
+
+	studies := make([]*study, workers)
+	finished := make(chan int, workers)
+	drawer := newDrawer(plan.Table.Counts)
+	estimates := sampleEstimates(plan)
+	var next atomic.Int64
+	for w := range studies {
+		studies[w] = newStudy(plan, drawer, estimates)
+		go func() {
+			defer func() { finished <- 0 }()
+			for {
+				block := int(next.Add(1)) - 1
+				if block >= blocks {
+					return
+				}
+				size := min(blockSize, plan.Replicates-block*blockSize)
+				if !studies[w].block(ctx, block, size) {
+					return
+				}
+				finished <- size
+			}
+		}()
+	}
+	for done := 0; workers > 0; {
+		size := <-finished
+		if size == 0 {
+			workers--
+			continue
+		}
+		done += size
+		if progress != nil {
+			progress(done)
+		}
+	}
+	if err := ctx.Err(); err != nil {
+		return Quantiles{}, err
+	}
+	return merge(plan, studies), nil
+}
+
+func sampleEstimates(plan Plan) []gap.Estimate {
+	estimates := make([]gap.Estimate, len(plan.Regions))
+	for i, region := range plan.Regions {
+		estimates[i] = plan.Table.Estimate(region)
+	}
+	return estimates
+}
+
+// upperRank is how many of the largest of b replicates to keep so that the
+// smallest kept is their quantile: the value of rank ⌈(b+1)·level⌉.
+func upperRank(b int, level float64) int {
+	rank := int(math.Ceil(float64(b+1)*level - 1e-9))
+	return b - min(max(rank, 1), b) + 1
+}
+
+func merge(plan Plan, studies []*study) Quantiles {
+	collect := func(count int, of func(s *study, i, w int) *largest) [][]float64 {
+		all := make([][]float64, count)
+		parts := make([]*largest, len(studies))
+		for i := range all {
+			all[i] = make([]float64, len(plan.Weights))
+			for w := range all[i] {
+				for s, each := range studies {
+					parts[s] = of(each, i, w)
+				}
+				all[i][w] = kth(parts)
+			}
+		}
+		return all
+	}
+	return Quantiles{
+		Region: collect(len(plan.Regions), func(s *study, i, w int) *largest { return &s.region[i*len(plan.Weights)+w] }),
+		Group:  collect(len(plan.Groups), func(s *study, i, w int) *largest { return &s.group[i*len(plan.Weights)+w] }),
+	}
+}
