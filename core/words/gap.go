@@ -1,0 +1,124 @@
+package words
+
+import (
+	"math"
+
+	"tailgap/core/ask"
+)
+
+// gapDecimals is how many decimals a gap and its limits are printed with: one
+// from 1 point on, two below. The gap alone decides, so that it and its limits
+// are printed alike.
+func gapDecimals(gap float64) int {
+	if math.Abs(gap) >= 0.995 { // would print as 1.00
+		return 1
+	}
+	return 2
+}
+
+// Points prints a gap without its sign: "1.4 points", "0.13 points", "1
+// point", "under 0.01 points".
+func Points(gap float64) string {
+	digits := unsigned(gap, gapDecimals(gap))
+	if digits == "1.0" {
+		return "1 point"
+	}
+	return digits + " points"
+}
+
+// Gap prints a gap's direction and size: "too high by 1.4 points", "too low
+// by 3.9 points", "no gap".
+func Gap(points float64) string {
+	switch {
+	case points > 0:
+		return "too high by " + Points(points)
+	case points < 0:
+		return "too low by " + Points(points)
+	case points == 0:
+		return "no gap"
+	}
+	return "gap " + unknown
+}
+
+// SignedGap prints a gap for a table: "+1.4", "-0.13"; plus: the curve is too
+// high.
+func SignedGap(points float64) string { return signed(points, gapDecimals(points)) }
+
+// Limits prints the interval around a gap in the direction Gap gives it:
+// "1.1 to 1.8". Where the interval reaches to the other side each limit says
+// its own: "0.3 too low to 1.8 too high". Empty when the gap is exact.
+func Limits(r ask.Reading) string {
+	if r.GapLow == nil || r.GapHigh == nil {
+		return ""
+	}
+	decimals := gapDecimals(r.GapPoints)
+	size := func(x float64) string { return unsigned(x, decimals) }
+	return limits(r.GapPoints, *r.GapLow, *r.GapHigh, size, "too low", "too high")
+}
+
+// SignedLimits prints the interval around a gap for a table: "+1.1 to +1.8";
+// empty when the gap is exact.
+func SignedLimits(r ask.Reading) string {
+	if r.GapLow == nil || r.GapHigh == nil {
+		return ""
+	}
+	decimals := gapDecimals(r.GapPoints)
+	return signed(*r.GapLow, decimals) + " to " + signed(*r.GapHigh, decimals)
+}
+
+// limits words the two ends of an interval, low <= high, around a middle that
+// has already said its direction; size prints a number without its sign, under
+// and over name the directions.
+func limits(middle, low, high float64, size func(float64) string, under, over string) string {
+	switch {
+	case middle > 0 && low >= 0:
+		return size(low) + " to " + size(high)
+	case middle < 0 && high <= 0:
+		return size(high) + " to " + size(low)
+	}
+	side := func(x float64) string {
+		switch {
+		case x > 0:
+			return size(x) + " " + over
+		case x < 0:
+			return size(x) + " " + under
+		}
+		return size(x)
+	}
+	return side(low) + " to " + side(high)
+}
+
+// Heads says the gap in people: "56 too many of 4,000"; empty when no heads
+// were asked for.
+func Heads(q ask.Question, f ask.Finding) string {
+	if q.Heads == nil || f.Heads == nil {
+		return ""
+	}
+	of := " of " + people(*q.Heads)
+	switch gap := f.Heads.Gap; {
+	case gap > 0:
+		return unsigned(gap, 0) + " too many" + of
+	case gap < 0:
+		return unsigned(gap, 0) + " too few" + of
+	}
+	return "none too many or too few" + of
+}
+
+// SignedHeads prints the gap in people for a table: "+56"; empty when no
+// heads were asked for.
+func SignedHeads(f ask.Finding) string {
+	if f.Heads == nil {
+		return ""
+	}
+	return signed(f.Heads.Gap, 0)
+}
+
+// HeadLimits prints the interval around the gap in people: "44 to 72", "12
+// too few to 72 too many"; empty when there is none.
+func HeadLimits(f ask.Finding) string {
+	if f.Heads == nil || f.Heads.Low == nil || f.Heads.High == nil {
+		return ""
+	}
+	size := func(x float64) string { return unsigned(x, 0) }
+	return limits(f.Heads.Gap, *f.Heads.Low, *f.Heads.High, size, "too few", "too many")
+}
