@@ -3,6 +3,8 @@ package ask
 import (
 	"context"
 	"errors"
+	"fmt"
+	"math"
 
 	"tailgap/core/sample"
 )
@@ -11,7 +13,75 @@ import (
 // from the goroutine that called Judge.
 type Progress func(done, total int)
 
-// Judge answers the question on the sample.
+// Judge answers the question on the sample: for each score column the gap at
+// every cutoff and over the whole score range, with intervals, bands and
+// verdicts. The answer depends on question, sample and the question's seed
+// only. Errors are sentences for the person who asks: a question that Check
+// refuses, a column without a score, with one person or without any spread;
+// or the context's error when it ends first.
 func Judge(ctx context.Context, question Question, from sample.Sample, progress Progress) (Answer, error) {
-	return Answer{}, errors.New("not yet")
+	question = question.filled()
+	if err := question.Check(); err != nil {
+		return Answer{}, err
+	}
+	if len(from.Columns) == 0 {
+		return Answer{}, errors.New("there is no score to judge; choose a column")
+	}
+	answer := Answer{
+		Format: AnswerFormat, Program: Program, Demo: from.Demo, Question: question,
+		Warnings: []string{}, Suppressed: []string{}, Results: []Result{},
+	}
+	total := len(from.Columns) * question.Replicates
+	for i, column := range from.Columns {
+		report := func(done int) {
+			if progress != nil {
+				progress(i*question.Replicates+done, total)
+			}
+		}
+		result, err := judgeColumn(ctx, question, column, report)
+		if err != nil {
+			return Answer{}, err
+		}
+		answer.Results = append(answer.Results, result)
+		for _, warning := range result.Warnings {
+			if len(from.Columns) > 1 {
+				warning = column.Name + ": " + warning
+			}
+			answer.Warnings = append(answer.Warnings, warning)
+		}
+	}
+	return answer, nil
 }
+
+func judgeColumn(ctx context.Context, question Question, column sample.Column, report func(done int)) (Result, error) {
+	w, err := newWork(question, column)
+	if err != nil {
+		return Result{}, err
+	}
+	if err := w.run(ctx, report); err != nil {
+		return Result{}, err
+	}
+	return w.result(), nil
+}
+
+// describe returns the moments of a count table that a curve can be held
+// against, or an error that says why none can.
+func describe(name string, counts sample.Counts) (sample.Moments, error) {
+	switch {
+	case counts.N == 0:
+		return sample.Moments{}, fmt.Errorf("%s has no usable score", name)
+	case !finite(counts.Min()) || !finite(counts.Max()):
+		return sample.Moments{}, fmt.Errorf("%s has an infinite score; take it out or code it as missing", name)
+	case counts.N == 1:
+		return sample.Moments{}, fmt.Errorf("%s has one usable score; a spread needs at least two people", name)
+	case len(counts.Score) == 1:
+		return sample.Moments{}, fmt.Errorf("all %d scores of %s are equal; without any spread there is no curve", counts.N, name)
+	}
+	m := counts.Moments()
+	if !(m.M2 > 0) || !(m.M4 > 0) || !finite(m.M4) || !finite(m.Mean) || !(m.M4 >= m.M2*m.M2*(1-1e-6)) {
+		return sample.Moments{}, fmt.Errorf("the scores of %s are too large, or too close together for their size, to compute with; give them in another unit", name)
+	}
+	return m, nil
+}
+
+func toPoints(share float64) float64 { return 100 * math.Max(-1, math.Min(1, share)) }

@@ -31,6 +31,7 @@ type Estimate struct {
 func (t *Table) At(r *Region, s *Sums, in Inside) Estimate {
 	e := Estimate{N: s.N, Inside: in.K, Counted: in.K / s.N}
 	if !t.Curve.Fitted {
+		e.z = r.lower.z
 		e.Curve = r.lower.tail
 		if r.stretch {
 			e.Curve -= r.upper.tail
@@ -80,6 +81,10 @@ func step(point, mean float64) float64 {
 // Gap is the curve's share minus weight times the counted share. Weight 1 is
 // the gap itself; other weights judge a tolerance in percent of the count.
 func (e Estimate) Gap(weight float64) float64 { return e.Curve - weight*e.Counted }
+
+// CurveShort is the curve's share short of a tail, with all its digits where
+// the tail is nearly everything.
+func (e Estimate) CurveShort() float64 { return curve.UpperTail(-e.z) }
 
 // Shrunk is the counted share with two made-up people inside the region and
 // two outside (Agresti & Coull 1998).

@@ -56,14 +56,12 @@ type Region struct {
 // observation stands.
 type end struct {
 	point, ghost float64
-	tail         float64 // a given curve's share beyond the point; it does not move with the sample
+	z, tail      float64 // the point's z by a given curve, and the share beyond it: they don't move with the sample
 }
 
 func (t Table) end(at Threshold) end {
-	return end{
-		point: t.standard(at.Point), ghost: t.standard(at.At),
-		tail: curve.UpperTail(t.Curve.Z(at.Point)),
-	}
+	z := t.Curve.Z(at.Point)
+	return end{point: t.standard(at.Point), ghost: t.standard(at.At), z: z, tail: curve.UpperTail(z)}
 }
 
 func (t Table) index(at Threshold) int {
@@ -97,7 +95,7 @@ func NewSums(s0, s1, s2, s3, s4 float64) Sums {
 	mean := s1 / s0
 	r2, r3, r4 := s2/s0, s3/s0, s4/s0
 	square := mean * mean
-	m2 := math.Max(0, r2-square)
+	m2 := max(0, r2-square)
 	return Sums{
 		N: s0, Mean: mean, SD: math.Sqrt(m2 * s0 / (s0 - 1)),
 		M2: m2,

@@ -10,7 +10,7 @@ type drawer struct {
 }
 
 // costOfBinomial is about how many index draws one binomial draw costs.
-const costOfBinomial = 20
+const costOfBinomial = 40
 
 // newDrawer chooses the faster way for the table: an index draw for each
 // person, or a binomial draw for each distinct score.

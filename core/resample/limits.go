@@ -39,3 +39,42 @@ func IntervalOf(e gap.Estimate, weight, quantile, t float64, tail bool) Interval
 	}
 	return i
 }
+
+// RatioLimits are the limits of curve share over counted share: the weights
+// at which the interval of curve share - weight·counted share still holds 0
+// (Fieller 1954), given the estimated ratio and the interval at any weight.
+// A high limit of nil says that there is none, because the counted share
+// can't be told from zero.
+func RatioLimits(ratio float64, interval func(weight float64) Interval) (low, high *float64) {
+	const smallest, largest, halvings = 1e-9, 1e6, 100
+	bottom, top := ratio*smallest, ratio
+	if interval(bottom).Low > 0 {
+		for range halvings {
+			middle := (bottom + top) / 2
+			if interval(middle).Low > 0 {
+				bottom = middle
+			} else {
+				top = middle
+			}
+		}
+		low = &top
+	} else {
+		low = new(float64)
+	}
+	bottom, reach := ratio, math.Max(ratio, 1e-12)*2
+	for interval(reach).High >= 0 {
+		if reach > ratio*largest {
+			return low, nil
+		}
+		bottom, reach = reach, reach*2
+	}
+	for range halvings {
+		middle := (bottom + reach) / 2
+		if interval(middle).High >= 0 {
+			bottom = middle
+		} else {
+			reach = middle
+		}
+	}
+	return low, &bottom
+}

@@ -119,9 +119,11 @@ func (s *study) judge(region int, sums gap.Sums) {
 	for w, weight := range s.plan.Weights {
 		at := region*len(s.plan.Weights) + w
 		target := &s.scale[at]
-		variance := math.Max(e.V+e.KappaUnfloored(weight)*target.binomial, target.least)
+		variance := max(e.V+e.KappaUnfloored(weight)*target.binomial, target.least)
 		t := math.Abs(e.Gap(weight)-target.gap) * math.Sqrt(e.N/variance)
-		s.region[at].offer(t)
+		if largest := &s.region[at]; t >= largest.floor {
+			largest.offer(t)
+		}
 		if t > s.sup[w] {
 			s.sup[w] = t
 		}

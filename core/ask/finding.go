@@ -1,0 +1,159 @@
+package ask
+
+import (
+	"tailgap/core/cutoff"
+	"tailgap/core/resample"
+	"tailgap/core/verdict"
+)
+
+// result puts together what one column's answer shows.
+func (w *work) result() Result {
+	m := w.table.Moments
+	r := Result{
+		Score: w.column.Name,
+		Sample: Described{
+			N: w.column.Rows, Used: m.N, Dropped: w.column.Dropped,
+			Mean: m.Mean, SD: m.SD, Skewness: m.Skewness(), ExcessKurtosis: m.ExcessKurtosis(),
+			Min: w.table.Counts.Min(), Max: w.table.Counts.Max(), Distinct: len(w.table.U),
+			StepSource: w.scale.StepSource, Low: w.scale.Low, High: w.scale.High, RangeSource: w.scale.RangeSource,
+		},
+		Curve:   Curve{Kind: "normal", Mean: w.table.Curve.Mean, SD: w.table.Curve.SD, Source: "given"},
+		Cutoffs: []Finding{}, Sweeps: []Sweep{},
+	}
+	if r.Sample.Dropped == nil {
+		r.Sample.Dropped = r.Sample.Dropped[:0:0]
+	}
+	if w.scale.Step > 0 {
+		step := w.scale.Step
+		r.Sample.Step = &step
+	}
+	if w.table.Curve.Fitted {
+		r.Curve.Source = "fitted"
+	}
+	for _, c := range w.question.Cutoffs {
+		r.Cutoffs = append(r.Cutoffs, w.finding(c))
+	}
+	for _, sweep := range w.sweeps {
+		r.Sweeps = append(r.Sweeps, w.sweep(sweep))
+	}
+	r.Worst = worst(r.Sweeps)
+	r.Warnings = w.warnings()
+	return r
+}
+
+// finding is the answer at one cutoff.
+func (w *work) finding(c cutoff.Cutoff) Finding {
+	judged := w.shownAt(c, w.halfStep)
+	f := Finding{
+		Cutoff:          c,
+		Reading:         judged.reading(c, w.halfStep),
+		Counted:         judged.counted(),
+		CountedShare:    judged.countedShare(),
+		WithoutHalfStep: w.shownAt(c, false).reading(c, false),
+		Method:          judged.method(),
+	}
+	if w.scale.Step > 0 {
+		half := w.shownAt(c, true).reading(c, true)
+		f.HalfStep = &half
+	}
+	if f.Counted > 0 {
+		ratio := f.CurveShare / f.CountedShare
+		f.Ratio = &ratio
+		if !w.question.Everyone {
+			f.RatioLow, f.RatioHigh = judged.ratioLimits(ratio)
+		}
+	}
+	f.Heads = w.heads(f.Reading)
+	if f.Verdict != nil && *f.Verdict == string(verdict.Unsettled) && !(w.tolerance.OfCount() && f.Counted == 0) {
+		if more, ok := verdict.PeopleToSettle(w.tolerance, w.table.Counts.N, w.question.Level, judged.limits); ok {
+			f.PeopleToSettle = &more
+		}
+	}
+	f.Notes = w.notes(c, f)
+	return f
+}
+
+// method names how the interval was made.
+func (s shown) method() string {
+	switch {
+	case s.question.Everyone:
+		return "exact"
+	case s.tail && s.estimate().Few():
+		return "ghost-studentised, hull with score limits"
+	}
+	return "ghost-studentised"
+}
+
+func (s shown) ratioLimits(ratio float64) (low, high *float64) {
+	quantile := s.quantiles.Region[s.region][0]
+	return resample.RatioLimits(ratio, func(weight float64) resample.Interval {
+		return s.interval(weight, quantile)
+	})
+}
+
+func (w *work) heads(r Reading) *HeadCount {
+	if w.question.Heads == nil {
+		return nil
+	}
+	people := func(points float64) float64 { return points / 100 * *w.question.Heads }
+	h := &HeadCount{Gap: people(r.GapPoints)}
+	if r.GapLow != nil {
+		low, high := people(*r.GapLow), people(*r.GapHigh)
+		h.Low, h.High = &low, &high
+	}
+	return h
+}
+
+// sweep is one side's sweep with its band and trusted range.
+func (w *work) sweep(plan sweepPlan) Sweep {
+	out := Sweep{Side: plan.side, Threshold: plan.thresholds}
+	if !w.tolerance.None() {
+		out.Trusted = []Stretch{}
+	}
+	trustedBefore := false
+	for i, at := range plan.thresholds {
+		s := shown{w, plan.first + i, true, plan.side.Lower()}
+		out.CurveShare = append(out.CurveShare, s.curveShare())
+		out.CountedShare = append(out.CountedShare, s.countedShare())
+		out.GapPoints = append(out.GapPoints, toPoints(s.gap(1)))
+		band := func(weight float64) verdict.Limits { return s.bandLimits(plan.group, weight) }
+		if !w.question.Everyone {
+			interval, simultaneous := s.limits(1), band(1)
+			out.Low = append(out.Low, toPoints(interval.Low))
+			out.High = append(out.High, toPoints(interval.High))
+			out.BandLow = append(out.BandLow, toPoints(simultaneous.Low))
+			out.BandHigh = append(out.BandHigh, toPoints(simultaneous.High))
+		}
+		trusted := !w.tolerance.None() && s.decide(band) == verdict.Holds
+		if trusted {
+			trivial := w.tolerance.Trivial(s.curveShare(), s.countedShare())
+			out.Trusted = extend(out.Trusted, at, trivial, trustedBefore)
+		}
+		trustedBefore = trusted
+	}
+	return out
+}
+
+// extend adds a trusted threshold to the last stretch when it goes on, or
+// starts a new one.
+func extend(stretches []Stretch, at float64, trivial, goesOn bool) []Stretch {
+	if last := len(stretches) - 1; goesOn && stretches[last].Trivial == trivial {
+		stretches[last].To = at
+		return stretches
+	}
+	return append(stretches, Stretch{From: at, To: at, Trivial: trivial})
+}
+
+func worst(sweeps []Sweep) Worst {
+	var w Worst
+	for _, s := range sweeps {
+		for i, points := range s.GapPoints {
+			if i == 0 && w == (Worst{}) || abs(points) > abs(w.GapPoints) {
+				w = Worst{Side: s.Side, Threshold: s.Threshold[i], GapPoints: points}
+			}
+		}
+	}
+	return w
+}
+
+func abs(x float64) float64 { return max(x, -x) }

@@ -1,0 +1,177 @@
+package ask
+
+import (
+	"tailgap/core/curve"
+	"tailgap/core/cutoff"
+	"tailgap/core/gap"
+	"tailgap/core/resample"
+	"tailgap/core/sample"
+	"tailgap/core/verdict"
+)
+
+// work is one score column on its way to a Result: what is to be judged,
+// each region once however many places of the answer show it.
+type work struct {
+	question  Question
+	column    sample.Column
+	table     gap.Table
+	scale     sample.Scale
+	tolerance verdict.Tolerance
+	halfStep  bool // judge with the half-step: asked for, and there is a step
+	plan      resample.Plan
+	known     map[key]int
+	sweeps    []sweepPlan
+	quantiles resample.Quantiles
+	estimates []gap.Estimate
+	t         float64 // Student's t at the question's level
+}
+
+// key tells regions apart; one-sided regions have no To.
+type key struct {
+	from, to gap.Threshold
+	stretch  bool
+}
+
+// sweepPlan is one side's thresholds: regions first..first+len(thresholds),
+// of the band of one group.
+type sweepPlan struct {
+	side       cutoff.Side
+	group      int
+	thresholds []float64
+	first      int
+}
+
+// newWork plans the judging of one column; it refuses a column that has no
+// spread.
+func newWork(question Question, column sample.Column) (*work, error) {
+	counts := sample.Count(column.Scores)
+	moments, err := describe(column.Name, counts)
+	if err != nil {
+		return nil, err
+	}
+	shape := curve.FitNormal(moments)
+	if given := question.Curve; given != nil {
+		shape = curve.Normal{Mean: given.Mean, SD: given.SD}
+	}
+	heads := 0.0
+	if question.Heads != nil {
+		heads = *question.Heads
+	}
+	w := &work{
+		question: question, column: column,
+		table:     gap.NewTable(counts, moments, shape),
+		scale:     sample.NewScale(counts, moments.SD, question.Step, question.Range),
+		tolerance: verdict.NewTolerance(question.TooHigh, question.TooLow, heads),
+		known:     map[key]int{},
+		t:         resample.StudentT(counts.N, question.Level),
+	}
+	w.halfStep = question.HalfStep && w.scale.Step > 0
+	w.planSweeps()
+	for _, c := range question.Cutoffs {
+		w.region(c, false)
+		if w.scale.Step > 0 {
+			w.region(c, true)
+		}
+	}
+	w.plan.Table = w.table
+	w.plan.Weights = w.tolerance.Weights()
+	w.plan.Level, w.plan.Replicates = question.Level, question.Replicates
+	w.plan.Seed, w.plan.Workers = question.Seed, question.Workers
+	return w, nil
+}
+
+// region is the index of the cutoff's region, planned if it is new.
+func (w *work) region(c cutoff.Cutoff, halfStep bool) int {
+	return w.add(gap.Ends(w.scale, c, halfStep))
+}
+
+func (w *work) add(ends []gap.Threshold) int {
+	k := key{from: ends[0]}
+	if len(ends) == 2 {
+		k.to, k.stretch = ends[1], true
+	}
+	index, planned := w.known[k]
+	if !planned {
+		index = len(w.plan.Regions)
+		w.known[k] = index
+		w.plan.Regions = append(w.plan.Regions, w.table.Region(ends))
+	}
+	return index
+}
+
+// planSweeps plans a sweep for each side in use. Sides that part the people
+// at the same places share their replicates: a lower tail is the complement
+// of an upper one.
+func (w *work) planSweeps() {
+	grid := gap.Grid(w.table.Counts, w.scale, thresholdsOf(w.question.Cutoffs))
+	groups := map[bool]int{}
+	for _, side := range sidesOf(w.question.Cutoffs) {
+		strict := side.Strict() && w.scale.Step > 0 // without a step both kinds share one grid
+		group, planned := groups[strict]
+		if !planned {
+			group = len(w.plan.Groups)
+			groups[strict] = group
+			w.planGroup(grid, strict)
+		}
+		thresholds, first := w.shown(grid, group)
+		w.sweeps = append(w.sweeps, sweepPlan{side: side, group: group, thresholds: thresholds, first: first})
+	}
+}
+
+// planGroup plans the regions of one band: the grid, and what lies past it.
+func (w *work) planGroup(grid []float64, strict bool) {
+	from := len(w.plan.Regions)
+	below, above := gap.Beyond(grid, w.scale.Step, w.table.Moments.SD)
+	for _, part := range [][]float64{below, grid, above} {
+		for _, at := range part {
+			w.add([]gap.Threshold{gap.Split(w.scale, at, strict, w.halfStep)})
+			if w.scale.Step == 0 {
+				w.add([]gap.Threshold{gap.Split(w.scale, at, true, false)})
+			}
+		}
+	}
+	w.plan.Groups = append(w.plan.Groups, [2]int{from, len(w.plan.Regions)})
+}
+
+// shown are the thresholds of a group that a sweep shows, and its first region.
+func (w *work) shown(grid []float64, group int) (thresholds []float64, first int) {
+	below, _ := gap.Beyond(grid, w.scale.Step, w.table.Moments.SD)
+	each := 1
+	if w.scale.Step == 0 {
+		each = 2
+	}
+	for _, at := range grid {
+		for range each {
+			thresholds = append(thresholds, at)
+		}
+	}
+	return thresholds, w.plan.Groups[group][0] + each*len(below)
+}
+
+// sidesOf are the sides in use, in the order of the cutoffs; a stretch alone,
+// or no cutoff at all, is swept as "at or above".
+func sidesOf(cutoffs []cutoff.Cutoff) []cutoff.Side {
+	var sides []cutoff.Side
+	used := map[cutoff.Side]bool{cutoff.Stretch: true}
+	for _, c := range cutoffs {
+		if !used[c.Side] {
+			used[c.Side] = true
+			sides = append(sides, c.Side)
+		}
+	}
+	if sides == nil {
+		sides = []cutoff.Side{cutoff.AtLeast}
+	}
+	return sides
+}
+
+func thresholdsOf(cutoffs []cutoff.Cutoff) []float64 {
+	var at []float64
+	for _, c := range cutoffs {
+		at = append(at, c.At)
+		if c.Side == cutoff.Stretch {
+			at = append(at, c.To)
+		}
+	}
+	return at
+}

@@ -1,0 +1,102 @@
+package ask
+
+import (
+	"fmt"
+	"math"
+	"strconv"
+
+	"tailgap/core/cutoff"
+	"tailgap/core/gap"
+	"tailgap/core/sample"
+)
+
+// notes are what must be borne in mind at one cutoff.
+func (w *work) notes(c cutoff.Cutoff, f Finding) []string {
+	notes := []string{}
+	add := func(format string, values ...any) { notes = append(notes, fmt.Sprintf(format, values...)) }
+	counts := w.table.Counts
+	switch rest := counts.N - f.Counted; {
+	case f.Counted < gap.FewPeople:
+		add("%s counted %s: the interval there is wide, and the ratio says little", people(f.Counted), c.Words())
+	case rest < gap.FewPeople:
+		add("%s counted on the other side of this cutoff: the interval there is wide", people(rest))
+	}
+	for _, at := range thresholdsOf([]cutoff.Cutoff{c}) {
+		if at < counts.Min() || at > counts.Max() {
+			add("%s is outside the scores seen (%s to %s)", number(at), number(counts.Min()), number(counts.Max()))
+		}
+		if !w.scale.Attainable(at) {
+			add("%s is between two attainable scores, %s and %s", number(at), number(w.scale.AtOrBelow(at)), number(w.scale.AtOrAbove(at)))
+		}
+	}
+	if f.HalfStep != nil && f.Verdict != nil && *f.HalfStep.Verdict != *f.WithoutHalfStep.Verdict {
+		add("the half-step decides the verdict: with it the curve %s, without it %s", verdictWord(*f.HalfStep.Verdict), verdictWord(*f.WithoutHalfStep.Verdict))
+	}
+	if f.Verdict != nil && *f.Verdict == "holds" && w.tolerance.Trivial(f.CurveShare, f.CountedShare) {
+		add("it holds only because so few people are concerned here: a gap as large as the tolerance was not possible; look at the ratio")
+	}
+	return notes
+}
+
+func verdictWord(verdict string) string {
+	if verdict == "unsettled" {
+		return "is unsettled"
+	}
+	return verdict
+}
+
+func people(n int) string {
+	if n == 1 {
+		return "1 person was"
+	}
+	return strconv.Itoa(n) + " people were"
+}
+
+// warnings are what must be borne in mind about one column. The bounds are
+// common practice.
+func (w *work) warnings() []string {
+	warnings := []string{}
+	add := func(format string, values ...any) { warnings = append(warnings, fmt.Sprintf(format, values...)) }
+	counts, m := w.table.Counts, w.table.Moments
+	for _, code := range sample.SuspectedCodes(counts) {
+		add("%s stands far from all other scores and looks like a missing code; if it is one, name it as missing", number(code))
+	}
+	if share, extreme := sample.ExtremeShare(counts, m); share > 0.5 && counts.N >= 20 {
+		add("the SD is mostly the %s: %.0f%% of the sum of squares is theirs", extremes(extreme), 100*share)
+	}
+	if spacing, share := sample.Heaps(counts, m, w.scale.Step); spacing > 0 {
+		add("scores pile up on multiples of %s: %.0f%% of the people are there; a cutoff on or beside such a score moves many people at once", number(spacing), 100*share)
+	}
+	if outside := outside(counts, w.scale); outside > 0 {
+		add("%d scores are outside the stated range %s to %s; they were used as they are", outside, number(w.scale.Low), number(w.scale.High))
+	}
+	if off := w.scale.OffStep(); off > 0 {
+		add("%d scores are not a whole number of steps of %s from the lowest score; check the step", off, number(w.scale.Step))
+	}
+	if w.scale.Low == 0 && counts.Min() >= 0 && m.Mean < 2*m.SD {
+		add("the mean is less than 2 SD above 0, the lowest score there can be: the scores are skewed, and the curve puts people below 0")
+	}
+	if excess := m.ExcessKurtosis(); excess > 10 && !w.question.Everyone {
+		add("the tails are very heavy (excess kurtosis %.0f): intervals and bands are too narrow", excess)
+	}
+	if w.question.Curve != nil && math.Abs(m.Mean-w.table.Curve.Mean) > 2*w.table.Curve.SD {
+		add("the mean of these scores is more than 2 SD from the given curve's: check that both are on the same scale")
+	}
+	return warnings
+}
+
+func extremes(n int) string {
+	if n == 1 {
+		return "single most extreme score"
+	}
+	return strconv.Itoa(n) + " most extreme scores"
+}
+
+func outside(counts sample.Counts, scale sample.Scale) int {
+	if scale.RangeSource != "stated" {
+		return 0
+	}
+	return counts.People(0, counts.IndexAtLeast(scale.Low)) + counts.People(counts.IndexAbove(scale.High), len(counts.Score))
+}
+
+func number(x float64) string { return strconv.FormatFloat(x, 'f', -1, 64) }

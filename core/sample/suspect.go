@@ -1,0 +1,103 @@
+package sample
+
+import "math"
+
+// The thresholds in this file are rules of thumb, common practice rather
+// than published constants: they decide what is worth a warning, never a
+// figure.
+
+// usualCodes are numbers that often stand for "no score".
+var usualCodes = map[float64]bool{
+	-1: true, -7: true, -8: true, -9: true, -77: true, -88: true, -99: true, -999: true, -9999: true,
+	77: true, 88: true, 99: true, 777: true, 888: true, 999: true, 7777: true, 8888: true, 9999: true,
+}
+
+// SuspectedCodes are the lowest or highest scores that look like missing
+// codes: a usual code more than 4 SD from the mean of the other scores and
+// more than 2 SD from the nearest of them (their SD).
+func SuspectedCodes(c Counts) []float64 {
+	var suspects []float64
+	for len(c.Score) > 3 {
+		last := len(c.Score) - 1
+		switch {
+		case usualCodes[c.Score[last]] && apart(c, last, last-1):
+			suspects = append(suspects, c.Score[last])
+			c = without(c, last)
+		case usualCodes[c.Score[0]] && apart(c, 0, 1):
+			suspects = append(suspects, c.Score[0])
+			c = without(c, 0)
+		default:
+			return suspects
+		}
+	}
+	return suspects
+}
+
+func apart(c Counts, suspect, neighbour int) bool {
+	m := without(c, suspect).Moments()
+	return math.Abs(c.Score[suspect]-m.Mean) > 4*m.SD && math.Abs(c.Score[suspect]-c.Score[neighbour]) > 2*m.SD
+}
+
+// without is the table without its first or its last score.
+func without(c Counts, index int) Counts {
+	n := c.N - c.Count[index]
+	if index == 0 {
+		return Counts{Score: c.Score[1:], Count: c.Count[1:], N: n}
+	}
+	return Counts{Score: c.Score[:index], Count: c.Count[:index], N: n}
+}
+
+// ExtremeShare is the part of the sum of squares about the mean that comes
+// from the most extreme hundredth of the people (at least one), and how many
+// they are.
+func ExtremeShare(c Counts, m Moments) (share float64, people int) {
+	people = (c.N + 99) / 100
+	low, high := 0, len(c.Score)-1
+	usedLow, usedHigh := 0, 0
+	total := 0.0
+	for range people {
+		below, above := m.Mean-c.Score[low], c.Score[high]-m.Mean
+		if below > above {
+			total += below * below
+			if usedLow++; usedLow == c.Count[low] {
+				low, usedLow = low+1, 0
+			}
+		} else {
+			total += above * above
+			if usedHigh++; usedHigh == c.Count[high] {
+				high, usedHigh = high-1, 0
+			}
+		}
+	}
+	return total / (float64(c.N) * m.M2), people
+}
+
+// Heaps is the spacing of round scores (10 or 5 steps) at which people pile
+// up, with the share of people there; 0 when there is none. People pile up
+// when their share on the round scores is above one and a half times what
+// even spreading would put there, by more than four standard errors, on a
+// scale with an SD of at least one spacing.
+func Heaps(c Counts, m Moments, step float64) (spacing, share float64) {
+	if step == 0 {
+		return 0, 0
+	}
+	for _, steps := range []float64{10, 5} {
+		spacing = steps * step
+		if m.SD < spacing {
+			continue
+		}
+		on := 0
+		for i, score := range c.Score {
+			multiple := score / spacing
+			if math.Abs(multiple-math.Round(multiple)) < 1e-6 {
+				on += c.Count[i]
+			}
+		}
+		share = float64(on) / float64(c.N)
+		even := 1 / steps
+		if share > 1.5*even && share-even > 4*math.Sqrt(even*(1-even)/float64(c.N)) {
+			return spacing, share
+		}
+	}
+	return 0, 0
+}
