@@ -1,7 +1,9 @@
 package words
 
 import (
+	"slices"
 	"strconv"
+	"strings"
 
 	"tailgap/core/ask"
 )
@@ -18,12 +20,33 @@ func Cautions() []string {
 // Demo marks everything that was made from the demo data.
 func Demo() string { return "DEMO: made-up scores of nobody. Nothing here is a finding." }
 
-// Method says how the figures came about: "95% intervals and bands from
-// 10,000 replicates, seed 1."
-func Method(q ask.Question) string {
-	if q.Everyone {
-		return "These are all the people: the gaps are exact and have no interval."
+// Method says how the figures came about: "95% intervals (ghost-studentised)
+// and bands from 10,000 replicates, seed 1. Made by tailgap 0.1.0."
+func Method(a ask.Answer) string {
+	q := a.Question
+	text := "These are all the people: the gaps are exact and have no interval."
+	if !q.Everyone {
+		text = Level(q.Level) + " intervals" + methods(a) + " and bands from " + Count(q.Replicates) + " " +
+			plural(q.Replicates, "replicate") + ", seed " + strconv.FormatUint(q.Seed, 10) + "."
 	}
-	return Level(q.Level) + " intervals and bands from " + Count(q.Replicates) + " " +
-		plural(q.Replicates, "replicate") + ", seed " + strconv.FormatUint(q.Seed, 10) + "."
+	if a.Program != "" {
+		text += " Made by " + Line(a.Program) + "."
+	}
+	return text
+}
+
+// methods names each method that an interval of the answer was made with.
+func methods(a ask.Answer) string {
+	var named []string
+	for _, r := range a.Results {
+		for _, f := range r.Cutoffs {
+			if method := Line(f.Method); method != "" && !slices.Contains(named, method) {
+				named = append(named, method)
+			}
+		}
+	}
+	if len(named) == 0 {
+		return ""
+	}
+	return " (" + strings.Join(named, "; ") + ")"
 }

@@ -122,3 +122,12 @@ func HeadLimits(f ask.Finding) string {
 	size := func(x float64) string { return unsigned(x, 0) }
 	return limits(f.Heads.Gap, *f.Heads.Low, *f.Heads.High, size, "too few", "too many")
 }
+
+// SignedHeadLimits prints the interval around the gap in people for a table:
+// "+44 to +72"; empty when there is none.
+func SignedHeadLimits(f ask.Finding) string {
+	if f.Heads == nil || f.Heads.Low == nil || f.Heads.High == nil {
+		return ""
+	}
+	return signed(*f.Heads.Low, 0) + " to " + signed(*f.Heads.High, 0)
+}

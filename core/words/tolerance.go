@@ -162,11 +162,14 @@ func reachedLimits(q ask.Question, f ask.Finding) (high, low *verdict.Limit) {
 
 func ofCount(l *verdict.Limit) bool { return l != nil && l.Unit == verdict.OfCount }
 
-// Settle says how many more people would settle an unsettled verdict, or that
-// no realistic number would; empty otherwise.
+// Settle says how many more people would settle an unsettled verdict, that no
+// realistic number would, or that it can't be said; empty otherwise.
 func Settle(f ask.Finding) string {
 	if f.Verdict == nil || *f.Verdict != "unsettled" {
 		return ""
+	}
+	if f.PeopleToSettle == nil && f.Counted == 0 {
+		return "how many more people would settle it can't be said"
 	}
 	if f.PeopleToSettle == nil {
 		return "no realistic number of people would settle it"
