@@ -1,0 +1,59 @@
+package sample_test
+
+import (
+	"testing"
+
+	"github.com/stretchr/testify/assert"
+
+	"tailgap/core/sample"
+	"tailgap/testdata"
+)
+
+func with(scores []float64, value float64, times int) []float64 {
+	for range times {
+		scores = append(scores, value)
+	}
+	return scores
+}
+
+func spread(n int) []float64 {
+	scores := make([]float64, n)
+	for i := range scores {
+		scores[i] = float64(10 + i%21)
+	}
+	return scores
+}
+
+func TestSuspectedCodes(t *testing.T) {
+	assert.Empty(t, sample.SuspectedCodes(sample.Count(spread(200))))
+	assert.Equal(t, []float64{999}, sample.SuspectedCodes(sample.Count(with(spread(200), 999, 5))))
+	assert.Equal(t, []float64{999, -9}, sample.SuspectedCodes(sample.Count(with(with(spread(300), 999, 5), -9, 3))))
+	assert.Empty(t, sample.SuspectedCodes(sample.Count(with(spread(200), 998, 5))), "998 is no usual code")
+	assert.Empty(t, sample.SuspectedCodes(sample.Count([]float64{95, 97, 98, 99, 96})), "99 among others like it")
+}
+
+// Newcomb's times have two gross outliers; the others of the open data none.
+func TestExtremeShare(t *testing.T) {
+	share := func(dataset, column string) (float64, int) {
+		counts := sample.Count(testdata.Open(dataset, column))
+		return sample.ExtremeShare(counts, counts.Moments())
+	}
+	newcomb, people := share("newcomb", "time")
+	assert.Equal(t, 1, people)
+	assert.InDelta(t, 70.2121212*70.2121212/(65*10.7453248*10.7453248), newcomb, 1e-6) // (-44-mean)² over (n-1)·SD², from R's mean and SD
+	height, people := share("crimtab", "height_cm")
+	assert.Equal(t, 30, people)
+	assert.Less(t, height, 0.12)
+}
+
+func TestHeaps(t *testing.T) {
+	scores := spread(420) // 10..30 evenly
+	counts := sample.Count(with(scores, 20, 100))
+	spacing, _ := sample.Heaps(counts, counts.Moments(), 1)
+	assert.Equal(t, 5.0, spacing, "the SD is below 10, so heaps on tens can't be told")
+	even := sample.Count(scores)
+	spacing, _ = sample.Heaps(even, even.Moments(), 1)
+	assert.Zero(t, spacing)
+	spacing, _ = sample.Heaps(counts, counts.Moments(), 0)
+	assert.Zero(t, spacing)
+}
