@@ -1,0 +1,62 @@
+package intake
+
+import (
+	"io"
+	"strconv"
+
+	"tailgap/core/sample"
+)
+
+// Column is a column of a file as a person chooses it.
+type Column struct {
+	Name    string // from the header, or "column 3"
+	Number  int    // from 1
+	Numeric bool   // most of its first cells are numbers
+	Ask     string // what to put into Options.Scores for it: the name, or the number where the name is missing or isn't the only one
+}
+
+const looked = 200 // rows that Columns looks at
+
+// Columns reads the head of a source and says what columns it has. It refuses
+// what Read refuses, as far as it reads.
+func Columns(source Source, header sample.Header) ([]Column, error) {
+	if err := checkHeader(header); err != nil {
+		return nil, err
+	}
+	r, err := open(source.Reader, Options{Header: header})
+	if err != nil {
+		return nil, err
+	}
+	filled, numbers := make([]int, r.width), make([]int, r.width)
+	for range looked {
+		data, err := r.next()
+		if err == io.EOF {
+			break
+		}
+		if err != nil {
+			return nil, err
+		}
+		for i, cell := range data.cells[:min(len(data.cells), r.width)] {
+			switch _, k, _ := r.cells.read(cell); k {
+			case usable, ambiguous, infinite:
+				numbers[i]++
+				filled[i]++
+			case unreadable:
+				filled[i]++
+			}
+		}
+	}
+	list := make([]Column, r.width)
+	for i := range list {
+		list[i] = Column{Name: r.label(i), Number: i + 1, Numeric: 2*numbers[i] > filled[i], Ask: r.ask(i)}
+	}
+	return list, nil
+}
+
+// ask is how find finds this column.
+func (c columns) ask(index int) string {
+	if f, err := c.find(c.label(index)); err == nil && f.index == index {
+		return c.label(index)
+	}
+	return strconv.Itoa(index + 1)
+}
