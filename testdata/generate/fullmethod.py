@@ -1,0 +1,185 @@
+#!/usr/bin/python3
+"""The whole ghost-studentised interval and the simultaneous band, resampling
+included, for a few cutoffs: writes interval/full.json.
+
+Rows are drawn by index, 20,000 times, under five seeds; the mean and SD of the
+five quantiles say how far another engine may be from them by chance alone.
+Every cell is an upper tail, P(X >= c) or P(X > c): a lower side has the same
+T*, and its interval by complement and sign.
+
+Run from testdata:  python3 generate/fullmethod.py
+"""
+import json
+import math
+import sys
+
+import numpy as np
+from scipy.special import ndtr
+
+sys.dont_write_bytecode = True
+from interval import read_column, second_interval, t_quantile
+
+REPLICATES, SEEDS, LEVEL = 20000, (1, 2, 3, 4, 5), 0.95
+
+
+class Fit:
+    """What every threshold needs, for a whole matrix of counts at once: one row
+    a sample, one column a distinct score."""
+
+    def __init__(self, values, counts, given=None):
+        self.n = counts.sum(axis=1, keepdims=True)
+        self.m = counts @ values[:, None] / self.n
+        moment = lambda r: np.einsum("ij,ij->i", counts, (values - self.m) ** r)[:, None] / self.n
+        self.m2, self.m3, self.m4 = moment(2), moment(3), moment(4)
+        self.s = np.sqrt(self.m2 * self.n / (self.n - 1))
+        assert self.s.min() > 0
+        self.given = given
+        above = lambda w: np.concatenate([np.cumsum(w[:, ::-1], axis=1)[:, ::-1], np.zeros((len(w), 1))], axis=1)
+        u = values - self.m
+        self.K, self.U, self.UU = above(counts), above(counts * u), above(counts * u * u)
+
+    def tail(self, i, d):
+        """P(X >= d) by the curve, its two derivatives, and the count, sum and
+        sum of squares (about the mean) of the scores from the i-th up."""
+        mean, sd = self.given or (self.m, self.s)
+        z = (d - mean) / sd
+        f = 0 * z if self.given else np.exp(-z * z / 2) / math.sqrt(2 * math.pi)
+        share = ndtr(-z) + 0 * self.m
+        return share, f / sd + 0 * self.m, f * z / (2 * sd**2) + 0 * self.m, self.K[:, i], self.U[:, i], self.UU[:, i]
+
+    def judge(self, cells, w):
+        """E, v, D, k for cells; a cell is (i, d, c) or, a stretch, a pair of them."""
+        share, a, b, k, U, UU = self.tail(cells["i"], cells["d"])
+        ghosts = [cells["c"]]
+        if "j" in cells:
+            over = self.tail(cells["j"], cells["d2"])
+            share, a, b, k, U, UU = (p - q for p, q in zip((share, a, b, k, U, UU), over))
+            ghosts.append(cells["c2"])
+        A = a * U + b * (UU - k * self.m2)
+        g = sum(a * (c - self.m) + b * ((c - self.m) ** 2 - self.m2) for c in ghosts) / len(ghosts)
+        v = self.n / (self.n - 1) * (a * a * self.m2 + 2 * a * b * self.m3 + b * b * (self.m4 - self.m2**2))
+        D = (A + g) / (k + 1) - (g - A) / (self.n - k + 1)
+        return share - w * k / self.n, share, v, w * w - 2 * w * D, k
+
+
+def draws(values, x, seed, rows=500):
+    """Count matrices of resamples, drawn by row index."""
+    rng = np.random.default_rng(seed)
+    place = np.searchsorted(values, x)
+    n, size = len(x), len(values)
+    for _ in range(REPLICATES // rows):
+        drawn = place[rng.integers(0, n, (rows, n))] + size * np.arange(rows)[:, None]
+        yield np.bincount(drawn.ravel(), minlength=rows * size).reshape(rows, size).astype(float)
+
+
+def run(x, cells, w, given):
+    """The sample's own terms and, for each seed, T* of each cell and its sup."""
+    values = np.unique(x)
+    counts = np.array([[(x == v).sum() for v in values]], dtype=float)
+    E, share, v, raw, k = (q[0] for q in Fit(values, counts, given).judge(cells, w))
+    n = len(x)
+    p = (k + 2) / (n + 4)
+    spread = p * (1 - p)
+    kappa = np.maximum(raw, -0.95 * v / spread)
+    se2 = (v + kappa * spread) / n
+    quantiles, sup = [], []
+    for seed in SEEDS:
+        T = []
+        for c in draws(values, x, seed):
+            e, _, vs, ks, _ = Fit(values, c, given).judge(cells, w)
+            V = np.maximum(vs + ks * spread, 0.05 * n * se2)
+            T.append(np.abs(e - E) / np.sqrt(V / n))
+        T = np.concatenate(T)
+        quantiles.append(np.quantile(T, LEVEL, axis=0))
+        sup.append(np.quantile(T.max(axis=1), LEVEL))
+    return dict(E=E, share=share, v=v, kappa=kappa, k=k, se=np.sqrt(se2), q=np.array(quantiles), sup=np.array(sup))
+
+
+def tail_cells(values, thresholds, strict, shift):
+    """Cells for >= c (or > c) at each threshold, the curve read shift away."""
+    side = "right" if strict else "left"
+    slack = 1e-9 * max(1.0, np.abs(values).max())  # thresholds made by adding steps
+    i = np.searchsorted(values, thresholds + (slack if strict else -slack), side=side)
+    return dict(i=i, d=thresholds + shift, c=thresholds)
+
+
+def case(dataset, column, step, cutoff, side, half, w=1.0, given=None):
+    x = read_column(dataset, column)
+    values = np.unique(x)
+    n, t = len(x), t_quantile(LEVEL, len(x) - 1)
+    strict, lower = side in (">", "<="), side in ("<=", "<")
+    shift = 0.0 if not half else step / 2 if strict else -step / 2
+    r = run(x, tail_cells(values, np.array([cutoff]), strict, shift), w, given)
+    q = max(t, r["q"].mean())
+    E, se, k = r["E"][0], r["se"][0], r["k"][0]
+    low, high = E - q * se, E + q * se
+    hull = min(k, n - k) < 10
+    if hull:
+        z = (cutoff + shift - (given or (x.mean(),))[0]) / (given[1] if given else x.std(ddof=1))
+        terms = dict(n=n, k=k, v=r["v"][0], kappa=r["kappa"][0])
+        low2, high2, _ = second_interval(terms, t, r["share"][0], z, given, w)
+        low, high = min(low, low2), max(high, high2)
+    if lower:
+        E, low, high = 1 - w - E, 1 - w - high, 1 - w - low
+    # the band's grid: all attainable scores and one step more at both ends,
+    # or, without a step, both sides of every jump
+    if step:
+        grid = values[0] + step * np.arange(-1, round((values[-1] - values[0]) / step) + 2)
+        cells = tail_cells(values, grid, strict, shift)
+    else:
+        a, b = tail_cells(values, values, False, 0.0), tail_cells(values, values, True, 0.0)
+        cells = {key: np.concatenate([a[key], b[key]]) for key in a}
+    band = run(x, cells, w, given)
+    return dict(dataset=dataset, column=column, step=step, cutoff=cutoff, side=side, half_step=half, weight=w,
+                given_mean=given and given[0], given_sd=given and given[1], level=LEVEL, replicates=REPLICATES, seeds=len(SEEDS),
+                n=n, counted=int(n - k if lower else k), difference_points=100 * E, se_points=100 * se, t=t,
+                quantile_mean=r["q"].mean(), quantile_sd=r["q"].std(ddof=1), q=q, takes_hull=bool(hull), low_points=100 * low, high_points=100 * high,
+                band_thresholds=len(cells["i"]), band_q_mean=band["sup"].mean(), band_q_sd=band["sup"].std(ddof=1))
+
+
+def stretch(dataset, column, step, start, stop, half):
+    x = read_column(dataset, column)
+    values = np.unique(x)
+    shift = step / 2 if half else 0.0
+    lo = tail_cells(values, np.array([start]), False, -shift)
+    hi = tail_cells(values, np.array([stop]), True, shift)
+    r = run(x, dict(lo, j=hi["i"], d2=hi["d"], c2=hi["c"]), 1.0, None)
+    t = t_quantile(LEVEL, len(x) - 1)
+    q, E, se = max(t, r["q"].mean()), r["E"][0], r["se"][0]
+    return {"dataset": dataset, "column": column, "step": step, "from": start, "to": stop, "half_step": half, "level": LEVEL, "replicates": REPLICATES,
+            "seeds": len(SEEDS), "n": len(x), "counted": int(r["k"][0]), "gap_points": 100 * E, "se_points": 100 * se, "t": t,
+            "quantile_mean": r["q"].mean(), "quantile_sd": r["q"].std(ddof=1), "q": q, "low_points": 100 * (E - q * se), "high_points": 100 * (E + q * se)}
+
+
+CASES = [
+    ("pima", "glu", 1, 200, ">=", False),  # nobody there
+    ("pima", "glu", 1, 200, ">=", True),
+    ("pima", "age", 1, 21, "<=", True),  # the floor of the scale
+    ("pima", "bmi", 0.1, 40, ">", True),
+    ("cd4", "oneyear", 0.01, 6.5, ">=", False),  # n = 20, nobody there
+    ("cd4", "baseline", 0.01, 5, ">=", True),  # n = 20, one there
+    ("newcomb", "time", 1, 0, "<=", False),  # two gross outliers
+    ("newcomb", "time", 1, 24, "<", True),
+    ("mathexam", "tests", 1, 20, ">=", True),  # many on both sides
+    ("mathexam", "nsolved", 1, 1, "<=", True),
+    ("faithful", "eruptions", None, 4.5, ">=", False),  # no step, two humps
+    ("mathexam", "tests", 1, 24, ">=", False, 1.2),  # N - 1.2 S
+    ("pima", "age", 1, 60, ">=", True, 0.8),
+    ("pima", "bp", 1, 90, ">=", True, 1.0, (72, 12)),  # a given curve
+    ("cd4", "oneyear", 0.01, 5.5, ">=", True, 1.0, (4.1, 1.2)),
+]
+STRETCHES = [("pima", "glu", 1, 126, 139, True), ("newcomb", "time", 1, -44, 0, False), ("cd4", "baseline", 0.01, 3, 4, True)]
+
+
+def plain(o):
+    return o.item() if isinstance(o, np.generic) else o
+
+
+def write(path, **lists):
+    body = ",\n".join(f'"{name}": [\n' + ",\n".join(json.dumps({k: plain(v) for k, v in r.items()}) for r in records) + "]" for name, records in lists.items())
+    with open(path, "w") as f:
+        f.write('{"made_by": "generate/fullmethod.py",\n' + body + "}\n")
+
+
+if __name__ == "__main__":
+    write("interval/full.json", cutoffs=[case(*c) for c in CASES], stretches=[stretch(*s) for s in STRETCHES])
