@@ -1,0 +1,83 @@
+package resample_test
+
+import (
+	"context"
+	"fmt"
+	"math"
+	"slices"
+	"testing"
+
+	"github.com/stretchr/testify/assert"
+	"github.com/stretchr/testify/require"
+
+	"tailgap/core/curve"
+	"tailgap/core/cutoff"
+	"tailgap/core/gap"
+	"tailgap/core/resample"
+	"tailgap/testdata"
+)
+
+// The whole method against testdata/generate/fullmethod.py, which draws rows
+// in NumPy: each quantile is a mean over five seeds of 20,000 replicates,
+// with its Monte Carlo SD beside it.
+func TestWholeMethodAgreesWithNumPy(t *testing.T) {
+	var file struct {
+		Cutoffs []struct {
+			Dataset, Column string
+			Step            *float64
+			Cutoff          float64
+			Side            cutoff.Side
+			HalfStep        bool `json:"half_step"`
+			Weight          float64
+			Mean            *float64 `json:"given_mean"`
+			SD              *float64 `json:"given_sd"`
+			Level           float64
+			SE              float64 `json:"se_points"`
+			Quantile        float64 `json:"quantile_mean"`
+			QuantileSD      float64 `json:"quantile_sd"`
+			Low             float64 `json:"low_points"`
+			High            float64 `json:"high_points"`
+			BandThresholds  int     `json:"band_thresholds"`
+			Band            float64 `json:"band_q_mean"`
+			BandSD          float64 `json:"band_q_sd"`
+		}
+	}
+	testdata.JSON("interval/full.json", &file)
+	require.GreaterOrEqual(t, len(file.Cutoffs), 12)
+	for _, want := range file.Cutoffs {
+		where := fmt.Sprintf("%s.%s %v%v half-step %v weight %v", want.Dataset, want.Column, want.Side, want.Cutoff, want.HalfStep, want.Weight)
+		var given *curve.Given
+		if want.Mean != nil {
+			given = &curve.Given{Mean: *want.Mean, SD: *want.SD}
+		}
+		table, scale := column{Dataset: want.Dataset, Column: want.Column, Step: want.Step}.table(given)
+		plan := resample.Plan{Table: table, Weights: []float64{want.Weight}, Level: want.Level, Replicates: 20_000, Seed: 5}
+		plan.Regions = []gap.Region{table.Region(gap.Ends(scale, cutoff.Cutoff{Side: want.Side, At: want.Cutoff}, want.HalfStep))}
+		grid := gap.Grid(table.Counts, scale, nil)
+		if scale.Step > 0 {
+			grid = slices.Concat([]float64{grid[0] - scale.Step}, grid, []float64{grid[len(grid)-1] + scale.Step})
+		}
+		for _, at := range grid {
+			if scale.Step == 0 {
+				plan.Regions = append(plan.Regions, table.Tail(gap.Split(scale, at, false, false)), table.Tail(gap.Split(scale, at, true, false)))
+				continue
+			}
+			plan.Regions = append(plan.Regions, table.Tail(gap.Split(scale, at, want.Side.Strict(), want.HalfStep)))
+		}
+		plan.Groups = [][2]int{{1, len(plan.Regions)}}
+
+		got, err := resample.Run(context.Background(), plan, nil)
+		require.NoError(t, err)
+		monteCarlo := 5 * math.Max(want.QuantileSD, 0.004)
+		assert.InDeltaf(t, want.Quantile, got.Region[0][0], monteCarlo, "quantile, %s", where)
+		assert.InDeltaf(t, want.Band, got.Group[0][0], 5*math.Max(want.BandSD, 0.004), "band's quantile, %s", where)
+
+		e := table.Estimate(plan.Regions[0])
+		i := resample.IntervalOf(e, want.Weight, got.Region[0][0], resample.StudentT(table.Counts.N, want.Level), true)
+		if want.Side.Lower() {
+			i = i.Mirror(1 - want.Weight)
+		}
+		assert.InDeltaf(t, want.Low, 100*i.Low, monteCarlo*want.SE, "low limit, %s", where)
+		assert.InDeltaf(t, want.High, 100*i.High, monteCarlo*want.SE, "high limit, %s", where)
+	}
+}
