@@ -56,11 +56,16 @@ type Cutoff struct {
 	To   float64
 }
 
-const number = `[-+]?(?:\d+(?:\.\d+)?|\.\d+)(?:[eE][-+]?\d+)?`
+const (
+	exponent = `(?:[eE][-+]?\d+)?`
+	number   = `[-+]?(?:\d+(?:\.\d+)?|\.\d+)` + exponent
+	// endpoint has digits before its point, so that 20...30 is no number.
+	endpoint = `[-+]?\d+(?:\.\d+)?` + exponent
+)
 
 var (
 	oneSided = regexp.MustCompile(`^(>=|≥|>|<=|≤|<)\s*(` + number + `)$`)
-	twoEnded = regexp.MustCompile(`^(` + number + `)\s*\.\.\s*(` + number + `)$`)
+	twoEnded = regexp.MustCompile(`^(` + endpoint + `)\s*\.\.\s*(` + endpoint + `)$`)
 	plain    = strings.NewReplacer("−", "-", "\u00a0", " ", "\u202f", " ")
 )
 
