@@ -44,7 +44,7 @@ func ReadJSON(text []byte) (ask.Answer, error) {
 	if version.Format != ask.AnswerFormat {
 		return ask.Answer{}, fmt.Errorf("this is no answer this program can read: its format is %.40q, not %q", version.Format, ask.AnswerFormat)
 	}
-	var a ask.Answer
+	a := ask.Answer{Question: ask.NewQuestion()} // what a question leaves out keeps its default
 	if err := json.Unmarshal(text, &a); err != nil {
 		return ask.Answer{}, unreadable(text, err)
 	}

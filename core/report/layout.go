@@ -3,6 +3,8 @@ package report
 import (
 	"strings"
 	"unicode/utf8"
+
+	"tailgap/core/words"
 )
 
 // columns is the width of a terminal that the text is laid out for.
@@ -10,12 +12,13 @@ const columns = 80
 
 // wrapped is the text broken between words into lines of at most 80 columns,
 // the first one opened with first, the others with rest. A word that is longer
-// than a line stands on a line of its own.
+// than a line stands on a line of its own, and no character of it moves a
+// cursor.
 func wrapped(first, rest, text string) string {
 	var out strings.Builder
 	line, width := first, utf8.RuneCountInString(first)
 	fresh := true
-	for _, word := range strings.Fields(text) {
+	for _, word := range strings.Fields(words.Line(text)) {
 		size := utf8.RuneCountInString(word)
 		if !fresh && width+1+size > columns {
 			out.WriteString(line + "\n")

@@ -46,7 +46,7 @@ func (t *text) line(s string) { t.WriteString(wrapped("", "", s)) }
 // list writes each text as a paragraph of its own, opened with label.
 func (t *text) list(label string, texts []string) {
 	for _, one := range texts {
-		t.WriteString(wrapped(label, "  ", words.Line(one)))
+		t.WriteString(wrapped(label, "  ", one))
 	}
 }
 
@@ -151,7 +151,7 @@ func judgedRow(label string, f ask.Finding, r ask.Reading) []string {
 		ratio = words.RatioNumber(*f.Ratio)
 	}
 	if f.Verdict != nil {
-		verdict = *f.Verdict
+		verdict = words.Line(*f.Verdict)
 	}
 	return []string{label, words.Share(r.CurveShare), words.Share(f.CountedShare), words.SignedGap(r.GapPoints),
 		words.SignedLimits(r), ratio, words.SignedHeads(f), verdict}
@@ -160,7 +160,7 @@ func judgedRow(label string, f ask.Finding, r ask.Reading) []string {
 func otherRow(label string, f ask.Finding, r ask.Reading) []string {
 	verdict := ""
 	if r.Verdict != nil {
-		verdict = "(" + *r.Verdict + ")"
+		verdict = "(" + words.Line(*r.Verdict) + ")"
 	}
 	return []string{label, words.Share(r.CurveShare), words.Share(f.CountedShare), words.SignedGap(r.GapPoints),
 		words.SignedLimits(r), "", "", verdict}

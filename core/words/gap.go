@@ -30,14 +30,14 @@ func Points(gap float64) string {
 // by 3.9 points", "no gap".
 func Gap(points float64) string {
 	switch {
+	case math.IsNaN(points) || math.IsInf(points, 0):
+		return "gap " + unknown
 	case points > 0:
 		return "too high by " + Points(points)
 	case points < 0:
 		return "too low by " + Points(points)
-	case points == 0:
-		return "no gap"
 	}
-	return "gap " + unknown
+	return "no gap"
 }
 
 // SignedGap prints a gap for a table: "+1.4", "-0.13"; plus: the curve is too
