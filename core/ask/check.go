@@ -17,7 +17,7 @@ import (
 // would never come.
 const (
 	minReplicates = 200
-	maxReplicates = 100_000_000
+	maxReplicates = 1_000_000
 	maxCutoffs    = 1000
 )
 
@@ -62,8 +62,12 @@ func ReadQuestion(text []byte) (Question, error) {
 
 // WriteQuestion writes the question as ReadQuestion reads it.
 func WriteQuestion(question Question) ([]byte, error) {
-	text, err := json.MarshalIndent(question.filled(), "", "  ")
-	return append(text, '\n'), err
+	var text bytes.Buffer
+	encoder := json.NewEncoder(&text)
+	encoder.SetEscapeHTML(false) // leave < and > as they are
+	encoder.SetIndent("", "  ")
+	err := encoder.Encode(question.filled())
+	return text.Bytes(), err
 }
 
 // filled has empty lists where there are none, so that a question is always

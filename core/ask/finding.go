@@ -112,7 +112,7 @@ func (w *work) sweep(plan sweepPlan) Sweep {
 	}
 	trustedBefore := false
 	for i, at := range plan.thresholds {
-		s := shown{w, plan.first + i, true, plan.side.Lower()}
+		s := shown{w, plan.regions[i], true, plan.side.Lower()}
 		out.CurveShare = append(out.CurveShare, s.curveShare())
 		out.CountedShare = append(out.CountedShare, s.countedShare())
 		out.GapPoints = append(out.GapPoints, toPoints(s.gap(1)))

@@ -32,13 +32,13 @@ type key struct {
 	stretch  bool
 }
 
-// sweepPlan is one side's thresholds: regions first..first+len(thresholds),
-// of the band of one group.
+// sweepPlan is one side's thresholds, their regions, and the group whose
+// band they share.
 type sweepPlan struct {
 	side       cutoff.Side
 	group      int
 	thresholds []float64
-	first      int
+	regions    []int
 }
 
 // newWork plans the judging of one column; it refuses a column that has no
@@ -104,48 +104,47 @@ func (w *work) add(ends []gap.Threshold) int {
 // of an upper one.
 func (w *work) planSweeps() {
 	grid := gap.Grid(w.table.Counts, w.scale, thresholdsOf(w.question.Cutoffs))
-	groups := map[bool]int{}
+	planned := map[bool]sweepPlan{}
 	for _, side := range sidesOf(w.question.Cutoffs) {
 		strict := side.Strict() && w.scale.Step > 0 // without a step both kinds share one grid
-		group, planned := groups[strict]
-		if !planned {
-			group = len(w.plan.Groups)
-			groups[strict] = group
-			w.planGroup(grid, strict)
+		sweep, known := planned[strict]
+		if !known {
+			sweep = w.planGroup(grid, strict)
+			planned[strict] = sweep
 		}
-		thresholds, first := w.shown(grid, group)
-		w.sweeps = append(w.sweeps, sweepPlan{side: side, group: group, thresholds: thresholds, first: first})
+		sweep.side = side
+		w.sweeps = append(w.sweeps, sweep)
 	}
 }
 
-// planGroup plans the regions of one band: the grid, and what lies past it.
-func (w *work) planGroup(grid []float64, strict bool) {
+// planGroup plans the regions of one band: the grid, which sweeps show, and
+// what lies past it.
+func (w *work) planGroup(grid []float64, strict bool) sweepPlan {
+	sweep := sweepPlan{group: len(w.plan.Groups)}
 	from := len(w.plan.Regions)
 	below, above := gap.Beyond(grid, w.scale.Step, w.table.Moments.SD)
-	for _, part := range [][]float64{below, grid, above} {
-		for _, at := range part {
-			w.add([]gap.Threshold{gap.Split(w.scale, at, strict, w.halfStep)})
-			if w.scale.Step == 0 {
-				w.add([]gap.Threshold{gap.Split(w.scale, at, true, false)})
-			}
+	w.planThresholds(below, strict)
+	for _, at := range grid {
+		for _, region := range w.planThresholds([]float64{at}, strict) {
+			sweep.thresholds = append(sweep.thresholds, at)
+			sweep.regions = append(sweep.regions, region)
 		}
 	}
+	w.planThresholds(above, strict)
 	w.plan.Groups = append(w.plan.Groups, [2]int{from, len(w.plan.Regions)})
+	return sweep
 }
 
-// shown are the thresholds of a group that a sweep shows, and its first region.
-func (w *work) shown(grid []float64, group int) (thresholds []float64, first int) {
-	below, _ := gap.Beyond(grid, w.scale.Step, w.table.Moments.SD)
-	each := 1
-	if w.scale.Step == 0 {
-		each = 2
-	}
-	for _, at := range grid {
-		for range each {
-			thresholds = append(thresholds, at)
+// planThresholds plans the region of each threshold; without a step two, at
+// the score and just past it.
+func (w *work) planThresholds(thresholds []float64, strict bool) (regions []int) {
+	for _, at := range thresholds {
+		regions = append(regions, w.add([]gap.Threshold{gap.Split(w.scale, at, strict, w.halfStep)}))
+		if w.scale.Step == 0 {
+			regions = append(regions, w.add([]gap.Threshold{gap.Split(w.scale, at, true, false)}))
 		}
 	}
-	return thresholds, w.plan.Groups[group][0] + each*len(below)
+	return regions
 }
 
 // sidesOf are the sides in use, in the order of the cutoffs; a stretch alone,

@@ -62,7 +62,7 @@ func (w *work) warnings() []string {
 		add("%s stands far from all other scores and looks like a missing code; if it is one, name it as missing", number(code))
 	}
 	if share, extreme := sample.ExtremeShare(counts, m); share > 0.5 && counts.N >= 20 {
-		add("the SD is mostly the %s: %.0f%% of the sum of squares is theirs", extremes(extreme), 100*share)
+		add("the SD is mostly the %s: %.0f%% of the sum of squares comes from there", extremes(extreme), 100*share)
 	}
 	if spacing, share := sample.Heaps(counts, m, w.scale.Step); spacing > 0 {
 		add("scores pile up on multiples of %s: %.0f%% of the people are there; a cutoff on or beside such a score moves many people at once", number(spacing), 100*share)

@@ -1,0 +1,170 @@
+package ask_test
+
+import (
+	"context"
+	"math"
+	"testing"
+
+	"github.com/stretchr/testify/assert"
+	"github.com/stretchr/testify/require"
+
+	"tailgap/core/ask"
+	"tailgap/core/curve"
+	"tailgap/core/sample"
+	"tailgap/core/verdict"
+)
+
+func TestQuestionsThatCantBeAnswered(t *testing.T) {
+	number := func(x float64) *float64 { return &x }
+	for sentence, change := range map[string]func(q *ask.Question){
+		`the question has the format "tailgap/question/2"; this program reads "tailgap/question/1"`:         func(q *ask.Question) { q.Format = "tailgap/question/2" },
+		`the level 95 is not between 0 and 1; write 0.95 for 95% intervals`:                                 func(q *ask.Question) { q.Level = 95 },
+		`the level 0 is not between 0 and 1; write 0.95 for 95% intervals`:                                  func(q *ask.Question) { q.Level = 0 },
+		`the level 1 is not between 0 and 1; write 0.95 for 95% intervals`:                                  func(q *ask.Question) { q.Level = 1 },
+		`the level NaN is not between 0 and 1; write 0.95 for 95% intervals`:                                func(q *ask.Question) { q.Level = math.NaN() },
+		`199 replicates can't be used; ask for between 200 and 1000000`:                                     func(q *ask.Question) { q.Replicates = 199 },
+		`1000001 replicates can't be used; ask for between 200 and 1000000`:                                 func(q *ask.Question) { q.Replicates = 1_000_001 },
+		`a level of 0.999 needs more than 200 replicates: ask for 1000 or more`:                             func(q *ask.Question) { q.Level, q.Replicates = 0.999, 200 },
+		`-1 workers can't share the work; write 0 for one worker for each core`:                             func(q *ask.Question) { q.Workers = -1 },
+		`a curve with mean 50 and SD 0 can't be drawn; the SD must be above zero and both must be finite`:   func(q *ask.Question) { q.Curve = &curve.Given{Mean: 50} },
+		`a curve with mean +Inf and SD 1 can't be drawn; the SD must be above zero and both must be finite`: func(q *ask.Question) { q.Curve = &curve.Given{Mean: math.Inf(1), SD: 1} },
+		`the cutoff >=5 is there twice; leave one out`:                                                      func(q *ask.Question) { q.Cutoffs = append(question(">=5").Cutoffs, question(">= 5").Cutoffs...) },
+		`0 heads can't be counted; say how many people the share will be applied to, a number above zero`:   func(q *ask.Question) { q.Heads = number(0) },
+		`the tolerance 40heads needs to know of how many people; say it with heads, such as 4000`:           func(q *ask.Question) { q.TooLow = &verdict.Limit{Size: 40, Unit: verdict.Heads} },
+		`the tolerance -1pt can't be used; it must be zero or more`:                                         func(q *ask.Question) { q.TooHigh = points(-1) },
+	} {
+		q := question()
+		change(&q)
+		assert.EqualError(t, q.Check(), sentence)
+		_, err := ask.Judge(context.Background(), q, of([]float64{1, 2, 3}), nil)
+		assert.EqualError(t, err, sentence)
+	}
+}
+
+func TestSamplesThatCantBeJudged(t *testing.T) {
+	for sentence, scores := range map[string][]float64{
+		"score has no usable score":                                                                                           {},
+		"score has one usable score; a spread needs at least two people":                                                      {7},
+		"all 3 scores of score are equal; without any spread there is no curve":                                               {7, 7, 7},
+		"score has an infinite score; take it out or code it as missing":                                                      {7, math.Inf(1)},
+		"the scores of score are too large, or too close together for their size, to compute with; give them in another unit": {1e200, -1e200},
+	} {
+		_, err := ask.Judge(context.Background(), question(), of(scores), nil)
+		assert.EqualError(t, err, sentence)
+	}
+	for _, scores := range [][]float64{{1e-200, 2e-200}, {1e16, 1e16 + 2}, {math.MaxFloat64, 1}, {0, 5e-324}} {
+		answer, err := ask.Judge(context.Background(), question(">=1"), of(scores), nil)
+		if err == nil {
+			for _, value := range []float64{answer.Results[0].Sample.SD, answer.Results[0].Cutoffs[0].CurveShare, *answer.Results[0].Cutoffs[0].GapLow} {
+				assert.False(t, math.IsNaN(value) || math.IsInf(value, 0), scores)
+			}
+		}
+	}
+	_, err := ask.Judge(context.Background(), question(), sample.Sample{}, nil)
+	assert.EqualError(t, err, "there is no score to judge; choose a column")
+}
+
+func TestQuestionFiles(t *testing.T) {
+	q := question(">=70", "20..30")
+	q.Missing, q.Scores = []string{"-9"}, []string{"vocabulary"}
+	q.TooHigh, q.TooLow = points(1), ofCount(20)
+	q.Range, q.Curve = &sample.Range{Low: 0, High: 83}, &curve.Given{Mean: 54.6, SD: 13.1}
+	text, err := ask.WriteQuestion(q)
+	require.NoError(t, err)
+	assert.Contains(t, string(text), `">=70"`, "signs are left readable")
+	back, err := ask.ReadQuestion(text)
+	require.NoError(t, err)
+	assert.Equal(t, q, back)
+
+	short, err := ask.ReadQuestion([]byte(`{"format":"tailgap/question/1","cutoffs":[">=70"]}`))
+	require.NoError(t, err)
+	assert.Equal(t, 0.95, short.Level)
+	assert.Equal(t, 10_000, short.Replicates)
+
+	for text, sentence := range map[string]string{
+		`{`:                                  `this is not a question file: unexpected end of JSON input`,
+		`[]`:                                 `this is not a question file: json: cannot unmarshal array into Go value of type struct { Format *string "json:\"format\"" }`,
+		`{"cutoffs":[]}`:                     `the question file has no format; this program reads "tailgap/question/1"`,
+		`{"format":"tailgap/question/9"}`:    `the question file has the format "tailgap/question/9"; this program reads "tailgap/question/1"`,
+		`{"format":"tailgap/question/1"} {}`: `this is not a question file: invalid character '{' after top-level value`,
+		`{"format":"tailgap/question/1","colour":1}`:         `the question file can't be read: json: unknown field "colour"`,
+		`{"format":"tailgap/question/1","cutoffs":["x"]}`:    `the question file can't be read: the cutoff "x" can't be read; write it as >=50, >50, <=20, <20 or 20..30, decimals with a point`,
+		`{"format":"tailgap/question/1","too_high":"1%"}`:    `the question file can't be read: the tolerance "1%" could mean two things; write 1pt for percentage points or 1%count for a part of the counted share`,
+		`{"format":"tailgap/question/1","level":1.5}`:        `the level 1.5 is not between 0 and 1; write 0.95 for 95% intervals`,
+		`{"format":"tailgap/question/1","header":"perhaps"}`: `the question file can't be read: the header setting "perhaps" can't be read; write auto, yes or no`,
+	} {
+		_, err := ask.ReadQuestion([]byte(text))
+		assert.EqualError(t, err, sentence)
+	}
+}
+
+// Whatever bytes a question file has: an error or a question that can be
+// written and read again as the same.
+func FuzzReadQuestion(f *testing.F) {
+	q := question(">=70", "20..30")
+	text, _ := ask.WriteQuestion(q)
+	f.Add(text)
+	f.Add([]byte(`{"format":"tailgap/question/1","heads":1e308,"seed":18446744073709551615,"step":"0.1"}`))
+	f.Fuzz(func(t *testing.T, text []byte) {
+		q, err := ask.ReadQuestion(text)
+		if err != nil {
+			return
+		}
+		written, err := ask.WriteQuestion(q)
+		require.NoError(t, err)
+		back, err := ask.ReadQuestion(written)
+		require.NoError(t, err)
+		assert.Equal(t, q, back)
+	})
+}
+
+func TestWarnings(t *testing.T) {
+	spread := func(n int) []float64 {
+		var scores []float64
+		for i := range n {
+			scores = append(scores, float64(10+i%21))
+		}
+		return scores
+	}
+	warn := func(q ask.Question, scores []float64) []string { return judge(t, q, scores).Warnings }
+	assert.Empty(t, warn(question(">=20"), spread(210)))
+	assert.Contains(t, warn(question(">=20"), append(spread(210), 999, 999)),
+		"999 stands far from all other scores and looks like a missing code; if it is one, name it as missing")
+	assert.Contains(t, warn(question(">=20"), append(spread(60), 500)),
+		"the SD is mostly the single most extreme score: 97% of the sum of squares comes from there")
+	heaped := spread(210)
+	for i := range 60 {
+		heaped = append(heaped, float64(10+5*(i%5)))
+	}
+	assert.Contains(t, warn(question(">=20"), heaped),
+		"scores pile up on multiples of 5: 41% of the people are there; a cutoff on or beside such a score moves many people at once")
+	ranged := question(">=20")
+	ranged.Range = &sample.Range{Low: 0, High: 29}
+	assert.Contains(t, warn(ranged, spread(210)), "10 scores are outside the stated range 0 to 29; they were used as they are")
+	stepped := question(">=20")
+	stepped.Step = sample.StepChoice{Size: 2}
+	assert.Contains(t, warn(stepped, spread(210)), "100 scores are not a whole number of steps of 2 from the lowest score; check the step")
+	assert.Contains(t, warn(question(">=2"), []float64{0, 0, 0, 0, 1, 1, 2, 5, 9}),
+		"the mean is less than 2 SD above 0, the lowest score there can be: the scores are skewed, and the curve puts people below 0")
+	given := question(">=20")
+	given.Curve = &curve.Given{Mean: 500, SD: 100}
+	assert.Contains(t, warn(given, spread(210)), "the mean of these scores is more than 2 SD from the given curve's: check that both are on the same scale")
+}
+
+func TestNotes(t *testing.T) {
+	var scores []float64
+	for i := range 200 {
+		scores = append(scores, float64(10+i%21))
+	}
+	q := question(">=30", ">=31", "<=8", ">10")
+	q.TooHigh, q.TooLow = points(2), points(2)
+	r := judge(t, q, scores)
+	assert.Contains(t, r.Cutoffs[0].Notes, "9 people were counted at 30 or above: the interval there is wide, and the ratio says little")
+	assert.Contains(t, r.Cutoffs[1].Notes, "31 is outside the scores seen (10 to 30)")
+	assert.Contains(t, r.Cutoffs[2].Notes, "0 people were counted at 8 or below: the interval there is wide, and the ratio says little")
+	assert.NotContains(t, r.Cutoffs[3].Notes, "9 people were counted on the other side of this cutoff: the interval there is wide")
+	far := question(">=60")
+	far.TooHigh, far.TooLow = points(5), points(5)
+	assert.Contains(t, judge(t, far, scores).Cutoffs[0].Notes,
+		"it holds only because so few people are concerned here: a gap as large as the tolerance was not possible; look at the ratio")
+}

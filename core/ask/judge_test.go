@@ -1,0 +1,317 @@
+package ask_test
+
+import (
+	"context"
+	"math"
+	"testing"
+
+	"github.com/stretchr/testify/assert"
+	"github.com/stretchr/testify/require"
+	"gonum.org/v1/gonum/stat/distuv"
+	"pgregory.net/rapid"
+
+	"tailgap/core/ask"
+	"tailgap/core/curve"
+	"tailgap/core/cutoff"
+	"tailgap/core/sample"
+	"tailgap/core/verdict"
+	"tailgap/testdata"
+)
+
+// question is one with few replicates and these cutoffs.
+func question(cutoffs ...string) ask.Question {
+	q := ask.NewQuestion()
+	q.Replicates = 500
+	for _, text := range cutoffs {
+		c, err := cutoff.Parse(text)
+		if err != nil {
+			panic(err)
+		}
+		q.Cutoffs = append(q.Cutoffs, c)
+	}
+	return q
+}
+
+func points(size float64) *verdict.Limit  { return &verdict.Limit{Size: size} }
+func ofCount(size float64) *verdict.Limit { return &verdict.Limit{Size: size, Unit: verdict.OfCount} }
+
+func of(scores []float64) sample.Sample {
+	return sample.Sample{Columns: []sample.Column{{Name: "score", Rows: len(scores), Scores: scores}}}
+}
+
+func judge(t require.TestingT, q ask.Question, scores []float64) ask.Result {
+	answer, err := ask.Judge(context.Background(), q, of(scores), nil)
+	require.NoError(t, err)
+	return answer.Results[0]
+}
+
+func TestBothReadingsAndTheJudgedOne(t *testing.T) {
+	scores := testdata.Open("mathexam", "tests")
+	q := question(">=24", "<=13")
+	q.TooHigh, q.TooLow = points(3), points(3)
+	plain := judge(t, q, scores)
+	q.HalfStep = true
+	half := judge(t, q, scores)
+	for i := range plain.Cutoffs {
+		p, h := plain.Cutoffs[i], half.Cutoffs[i]
+		assert.Equal(t, p.WithoutHalfStep, p.Reading)
+		assert.Equal(t, *h.HalfStep, h.Reading)
+		assert.InDelta(t, p.HalfStep.CurveShare, h.CurveShare, 0)
+		assert.Equal(t, p.Counted, h.Counted)
+		assert.Greater(t, h.CurveShare, p.CurveShare, "half a step short of the cutoff there is more of the curve")
+	}
+	none := q
+	none.Step = sample.StepChoice{None: true}
+	r := judge(t, none, scores)
+	assert.Nil(t, r.Cutoffs[0].HalfStep)
+	assert.Nil(t, r.Sample.Step)
+	assert.Equal(t, r.Cutoffs[0].WithoutHalfStep, r.Cutoffs[0].Reading, "no step, no half-step")
+}
+
+func TestEveryoneIsExact(t *testing.T) {
+	q := question(">=24", "<=13", "16..20")
+	q.Everyone, q.TooHigh = true, points(3)
+	r := judge(t, q, testdata.Open("mathexam", "tests"))
+	for _, f := range r.Cutoffs {
+		assert.Nil(t, f.GapLow)
+		assert.Nil(t, f.GapHigh)
+		assert.Nil(t, f.RatioLow)
+		assert.Nil(t, f.PeopleToSettle)
+		assert.Equal(t, "exact", f.Method)
+		want := "holds"
+		if f.GapPoints > 3 {
+			want = "fails"
+		}
+		assert.Equal(t, want, *f.Verdict)
+	}
+	assert.Nil(t, r.Sweeps[0].Low)
+	assert.Nil(t, r.Sweeps[0].BandHigh)
+	assert.NotNil(t, r.Sweeps[0].Trusted)
+}
+
+// A given curve leaves only the count random: the interval holds the curve's
+// share less Wilson's limits of the count where few are beyond.
+func TestGivenCurve(t *testing.T) {
+	q := question(">=200")
+	q.Curve = &curve.Given{Mean: 120, SD: 30}
+	f := judge(t, q, testdata.Open("pima", "glu")).Cutoffs[0]
+	share := distuv.UnitNormal.CDF(-(200 - 120) / 30.0)
+	assert.InDelta(t, share, f.CurveShare, 1e-14)
+	assert.Equal(t, 0, f.Counted)
+	assert.Nil(t, f.Ratio)
+	tq := distuv.StudentsT{Sigma: 1, Nu: 531}.Quantile(0.975)
+	wilson := tq * tq / (532 + tq*tq) // Wilson's upper limit of 0 in 532
+	assert.InDelta(t, 100*(share-wilson), *f.GapLow, 1e-9)
+}
+
+func TestSweepsOfEverySideInUse(t *testing.T) {
+	scores := testdata.Open("mathexam", "tests")
+	q := question(">=24", "<=13", ">20", "<16", ">=20", "16..20")
+	r := judge(t, q, scores)
+	var sides []string
+	for _, s := range r.Sweeps {
+		sides = append(sides, s.Side.String())
+		assert.Len(t, s.Threshold, 18, "9 to 26, the unobserved ones too")
+		assert.Equal(t, 9.0, s.Threshold[0])
+		assert.Equal(t, 26.0, s.Threshold[17])
+		for i := range s.Threshold {
+			assert.LessOrEqual(t, s.BandLow[i], s.Low[i])
+			assert.GreaterOrEqual(t, s.BandHigh[i], s.High[i])
+			assert.InDelta(t, s.GapPoints[i], 100*(s.CurveShare[i]-s.CountedShare[i]), 1e-12)
+		}
+		assert.Nil(t, s.Trusted, "no tolerance, nothing to trust")
+	}
+	assert.Equal(t, []string{">=", "<=", ">", "<"}, sides)
+	for _, f := range r.Cutoffs {
+		for _, s := range r.Sweeps {
+			for i, at := range s.Threshold {
+				if s.Side == f.Cutoff.Side && at == f.Cutoff.At {
+					assert.Equal(t, f.GapPoints, s.GapPoints[i])
+					assert.Equal(t, *f.GapLow, s.Low[i])
+					assert.Equal(t, *f.GapHigh, s.High[i])
+				}
+			}
+		}
+	}
+	mirror := func(a, b ask.Sweep) {
+		for i := range a.Threshold {
+			assert.InDelta(t, a.GapPoints[i], -b.GapPoints[i], 1e-12)
+			assert.InDelta(t, a.BandLow[i], -b.BandHigh[i], 1e-12)
+		}
+	}
+	mirror(r.Sweeps[0], r.Sweeps[3]) // >= and <
+	mirror(r.Sweeps[2], r.Sweeps[1]) // > and <=
+	largest := 0.0
+	for _, s := range r.Sweeps {
+		for _, g := range s.GapPoints {
+			largest = math.Max(largest, math.Abs(g))
+		}
+	}
+	assert.Equal(t, largest, math.Abs(r.Worst.GapPoints))
+	assert.Equal(t, ">=", judge(t, question("16..20"), scores).Sweeps[0].Side.String(), "a stretch alone is swept as at or above")
+}
+
+func TestSweepWithoutAStepShowsTheJumps(t *testing.T) {
+	q := question(">=3.5")
+	r := judge(t, q, testdata.Open("faithful", "eruptions"))
+	s := r.Sweeps[0]
+	require.Len(t, s.Threshold, 2*126)
+	for i := 0; i < len(s.Threshold); i += 2 {
+		assert.Equal(t, s.Threshold[i], s.Threshold[i+1])
+		assert.Greater(t, s.CountedShare[i], s.CountedShare[i+1])
+		assert.Equal(t, s.CurveShare[i], s.CurveShare[i+1])
+	}
+}
+
+func TestSweepIsThinnedAboveAThousandThresholds(t *testing.T) {
+	scores := make([]float64, 3000)
+	for i := range scores {
+		scores[i] = distuv.UnitNormal.Quantile((float64(i) + 0.5) / 3000)
+	}
+	q := question(">=1.23456", "<0.5")
+	q.Replicates = 200
+	s := judge(t, q, scores).Sweeps[0]
+	assert.Less(t, len(s.Threshold), 700)
+	assert.Greater(t, len(s.Threshold), 560)
+	assert.Contains(t, s.Threshold, 1.23456)
+	assert.Contains(t, s.Threshold, 0.5)
+	for i := range 25 {
+		assert.Contains(t, s.Threshold, scores[i])
+		assert.Contains(t, s.Threshold, scores[2999-i])
+	}
+	assert.IsNonDecreasing(t, s.Threshold)
+
+	wide := question(">=50")
+	wide.Step, wide.Range, wide.Replicates = sample.StepChoice{Size: 1}, &sample.Range{Low: 0, High: 1e9}, 200
+	s = judge(t, wide, []float64{1, 2, 50, 51, 52, 60, 61, 1000}).Sweeps[0]
+	assert.Less(t, len(s.Threshold), 50)
+	assert.Equal(t, 1e9, s.Threshold[len(s.Threshold)-1])
+}
+
+// Trusted stretches are the thresholds whose band is inside the tolerance,
+// split where they become trivial.
+func TestTrustedRange(t *testing.T) {
+	q := question(">=30")
+	q.TooHigh, q.TooLow = points(6), points(6)
+	r := judge(t, q, testdata.Open("crimtab", "finger_cm"))
+	s := r.Sweeps[0]
+	require.NotEmpty(t, s.Trusted)
+	for i, at := range s.Threshold {
+		inside := s.BandLow[i] >= -6 && s.BandHigh[i] <= 6
+		trivial := false
+		within := false
+		for _, stretch := range s.Trusted {
+			if at >= stretch.From && at <= stretch.To {
+				within, trivial = true, stretch.Trivial
+			}
+		}
+		assert.Equal(t, inside, within, at)
+		if within {
+			small := s.CurveShare[i] <= 0.06 && s.CountedShare[i] <= 0.06 || s.CurveShare[i] >= 0.94 && s.CountedShare[i] >= 0.94
+			assert.Equal(t, small, trivial, at)
+		}
+	}
+}
+
+// In percent of the count the verdict is of curve - 1.2·count and
+// curve - 0.8·count, so it agrees with the ratio's limits up to the quantile.
+func TestPercentOfTheCount(t *testing.T) {
+	q := question(">=30", ">=25", ">=200")
+	q.TooHigh, q.TooLow = ofCount(10), ofCount(10)
+	r := judge(t, q, testdata.Open("pima", "bmi"))
+	for _, f := range r.Cutoffs[:2] {
+		switch {
+		case *f.RatioLow > 1.11 || *f.RatioHigh < 0.89:
+			assert.Equal(t, "fails", *f.Verdict, f.Cutoff)
+		case *f.RatioLow > 0.91 && *f.RatioHigh < 1.09:
+			assert.Equal(t, "holds", *f.Verdict, f.Cutoff)
+		}
+	}
+	assert.Equal(t, "unsettled", *r.Cutoffs[2].Verdict, "nobody was counted there")
+	assert.Nil(t, r.Cutoffs[2].PeopleToSettle)
+	all := append([]float64{}, testdata.Open("pima", "bmi")...)
+	q.Everyone = true
+	assert.Equal(t, "fails", *judge(t, q, all).Cutoffs[2].Verdict, "when everyone was counted, nobody is nobody")
+}
+
+func TestHeads(t *testing.T) {
+	q := question(">=24")
+	heads := 4000.0
+	q.Heads, q.TooHigh = &heads, &verdict.Limit{Size: 40, Unit: verdict.Heads}
+	f := judge(t, q, testdata.Open("mathexam", "tests")).Cutoffs[0]
+	assert.InDelta(t, f.GapPoints*40, f.Heads.Gap, 1e-9)
+	assert.InDelta(t, *f.GapLow*40, *f.Heads.Low, 1e-9)
+	assert.InDelta(t, *f.GapHigh*40, *f.Heads.High, 1e-9)
+	q.TooHigh = points(1)
+	assert.Equal(t, *f.Verdict, *judge(t, q, testdata.Open("mathexam", "tests")).Cutoffs[0].Verdict, "40 of 4,000 are a point")
+}
+
+func TestAnUnattainableCutoffIsReadFromTheNextScore(t *testing.T) {
+	r := judge(t, question(">=20", ">=19.5"), testdata.Open("mathexam", "tests"))
+	whole, between := r.Cutoffs[0], r.Cutoffs[1]
+	assert.Equal(t, whole.Counted, between.Counted)
+	assert.Equal(t, whole.HalfStep.CurveShare, between.HalfStep.CurveShare)
+	assert.NotEqual(t, whole.CurveShare, between.CurveShare)
+	assert.Contains(t, between.Notes, "19.5 is between two attainable scores, 19 and 20")
+}
+
+// For any whole-number sample: shares add up over the two sides of a cutoff,
+// intervals hold the gap, more than the gap is in the band, and the answer is
+// free of order and of the number of workers.
+func TestAnswersAreCoherent(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		scores := rapid.SliceOfN(rapid.Map(rapid.IntRange(-10, 30), func(i int) float64 { return float64(i) }), 2, 40).Draw(t, "scores")
+		scores = append(scores, 31, -11) // some spread
+		at := rapid.IntRange(-15, 35).Draw(t, "at")
+		q := question()
+		q.Replicates = 200
+		for _, side := range []cutoff.Side{cutoff.AtLeast, cutoff.Below, cutoff.Above, cutoff.AtMost} {
+			q.Cutoffs = append(q.Cutoffs, cutoff.Cutoff{Side: side, At: float64(at)})
+		}
+		q.TooHigh, q.TooLow = points(1), ofCount(30)
+		q.HalfStep = rapid.Bool().Draw(t, "half-step")
+		r := judge(t, q, scores)
+		for i := 0; i < 4; i += 2 {
+			a, b := r.Cutoffs[i], r.Cutoffs[i+1]
+			assert.Equal(t, len(scores), a.Counted+b.Counted)
+			assert.InDelta(t, 1, a.CurveShare+b.CurveShare, 1e-12)
+			assert.InDelta(t, a.GapPoints, -b.GapPoints, 1e-9)
+			assert.InDelta(t, *a.GapLow, -*b.GapHigh, 1e-9)
+		}
+		for _, f := range r.Cutoffs {
+			assert.LessOrEqual(t, *f.GapLow, f.GapPoints)
+			assert.GreaterOrEqual(t, *f.GapHigh, f.GapPoints)
+			if f.Ratio != nil {
+				assert.LessOrEqual(t, *f.RatioLow, *f.Ratio*(1+1e-9))
+				if f.RatioHigh != nil {
+					assert.GreaterOrEqual(t, *f.RatioHigh, *f.Ratio*(1-1e-9))
+				}
+			}
+		}
+		shuffled := rapid.Permutation(scores).Draw(t, "order")
+		q.Workers = rapid.IntRange(1, 5).Draw(t, "workers")
+		assert.Equal(t, r, judge(t, q, shuffled))
+	})
+}
+
+func TestCancelAndProgress(t *testing.T) {
+	ctx, cancel := context.WithCancel(context.Background())
+	q := question(">=24")
+	q.Replicates = 1_000_000
+	_, err := ask.Judge(ctx, q, of(testdata.Open("mathexam", "tests")), func(done, total int) {
+		assert.Equal(t, 1_000_000, total)
+		cancel()
+	})
+	assert.ErrorIs(t, err, context.Canceled)
+	q.Replicates = 500
+	two := of(testdata.Open("mathexam", "tests"))
+	two.Columns = append(two.Columns, two.Columns[0])
+	last := 0
+	_, err = ask.Judge(context.Background(), q, two, func(done, total int) {
+		assert.Equal(t, 1000, total)
+		assert.Greater(t, done, last)
+		last = done
+	})
+	require.NoError(t, err)
+	assert.Equal(t, 1000, last)
+}
