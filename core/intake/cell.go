@@ -66,17 +66,19 @@ type code struct {
 	reason string
 }
 
-func parseCodes(missing []string) []code {
+func newCellReader(delimiter rune, missing []string) cellReader {
+	c := cellReader{comma: commaRuleFor(delimiter)}
 	var codes []code
 	for _, text := range missing {
 		text = trim(text)
 		if text == "" {
 			continue // a blank cell has its own reason
 		}
-		value, k := parseFloat(strings.Replace(text, "−", "-", 1))
+		value, k, _ := c.read(text)
 		codes = append(codes, code{text: text, value: value, number: k == usable, reason: "coded " + printable(text, 40)})
 	}
-	return codes
+	c.codes = codes
+	return c
 }
 
 // reason words the kinds that are left out.

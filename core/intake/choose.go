@@ -55,8 +55,11 @@ func Columns(source Source, header sample.Header) ([]Column, error) {
 
 // ask is how find finds this column.
 func (c columns) ask(index int) string {
-	if f, err := c.find(c.label(index)); err == nil && f.index == index {
-		return c.label(index)
+	number := strconv.Itoa(index + 1)
+	for _, way := range []string{c.label(index), number} {
+		if f, err := c.find(way); err == nil && f.index == index {
+			return way
+		}
 	}
-	return strconv.Itoa(index + 1)
+	return "column " + number
 }

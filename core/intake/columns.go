@@ -16,6 +16,7 @@ type columns struct {
 	names  []string // of the header; nil without one
 	width  int      // cells in the first row
 	guided bool     // the first row was looked at, not stated, to be no header
+	commas bool     // commas delimit them
 }
 
 // found is a column that was asked for.
@@ -84,7 +85,8 @@ func folded(name string) string {
 	return strings.ToLower(strings.Join(strings.FieldsFunc(name, isSpace), " "))
 }
 
-// find finds a column by name or else by number from 1.
+// find finds a column by name, or else by number from 1, as in "3" or
+// "column 3".
 func (c columns) find(asked string) (found, error) {
 	named := c.named(asked)
 	if len(named) == 1 {
@@ -98,7 +100,7 @@ func (c columns) find(asked string) (found, error) {
 		last := len(numbers) - 1
 		return found{}, fmt.Errorf("the name %s stands over columns %s and %s; give the number of the one you mean", quoted(asked), strings.Join(numbers[:last], ", "), numbers[last])
 	}
-	number, err := strconv.ParseUint(strings.TrimSpace(asked), 10, 31)
+	number, err := strconv.ParseUint(strings.TrimPrefix(folded(asked), "column "), 10, 31)
 	if err == nil && number >= 1 && int(number) <= c.width {
 		return found{index: int(number) - 1}, nil
 	}
@@ -116,7 +118,11 @@ func (c columns) findAll(asked []string) ([]found, error) {
 		return []found{{}}, nil
 	}
 	if len(asked) == 0 {
-		return nil, fmt.Errorf("say which column is the score; %s", c)
+		hint := ""
+		if c.commas && c.width == 2 && c.names == nil {
+			hint = "; if the comma is the decimal mark of one column, put a name above it"
+		}
+		return nil, fmt.Errorf("say which column is the score; %s%s", c, hint)
 	}
 	all := make([]found, len(asked))
 	for i, name := range asked {

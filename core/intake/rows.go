@@ -54,7 +54,7 @@ func open(source io.Reader, options Options) (*rows, error) {
 	r.csv.FieldsPerRecord = -1
 	r.csv.ReuseRecord = true
 	r.csv.TrimLeadingSpace = delimiter != '\t' // a tab would count as space
-	r.cells = cellReader{comma: commaRuleFor(delimiter), codes: parseCodes(options.Missing)}
+	r.cells = newCellReader(delimiter, options.Missing)
 	return r, r.start(options)
 }
 
@@ -71,6 +71,7 @@ func (r *rows) start(options Options) error {
 		return fmt.Errorf("line %d, the first row, has a misplaced quote, so its columns can't be told; correct it", first.line)
 	}
 	r.columns = newColumns(first.cells, options.Header, options.Scores, &r.cells)
+	r.commas = r.delimiter == ','
 	if r.names == nil {
 		r.held, r.holding = first, true
 	} else {
@@ -116,7 +117,7 @@ func (r *rows) readRow() (row, error) {
 		}
 		r.read = end
 		if end > line && r.swallowsRows(cells) {
-			return row{}, fmt.Errorf("a quote that opens in the row on line %d closes only on line %d, and the lines between look like rows of their own; close it where it belongs or take it out", line, end)
+			return row{}, fmt.Errorf("a quote that opens in the row on line %d closes only on line %d, and its lines look like rows of their own; close it where it belongs or take it out", line, end)
 		}
 		if last > 0 || r.delimiter == noDelimiter || trim(cells[0]) != "" {
 			return row{cells: cells, line: line, end: end}, nil

@@ -83,12 +83,16 @@ func (t *tally) check() error {
 		return fmt.Errorf("no usable score in column %s: there is no row below the header", quoted(t.column.Name))
 	}
 	var counts []string
+	advice := "check the column and the missing codes"
 	for _, d := range t.column.Dropped {
-		counts = append(counts, fmt.Sprintf("%d %s", d.Count, d.Reason))
+		counts = append(counts, fmt.Sprintf("%s: %d", d.Reason, d.Count))
+		if d.Reason == reasons[ambiguous] {
+			advice = "write decimals with a point"
+		}
 	}
-	rows := fmt.Sprintf("%d rows", t.column.Rows)
+	rows := fmt.Sprintf("all %d rows were", t.column.Rows)
 	if t.column.Rows == 1 {
-		rows = "1 row"
+		rows = "the only row was"
 	}
-	return fmt.Errorf("no usable score in column %s: %s, of them %s; check the column and the missing codes", quoted(t.column.Name), rows, strings.Join(counts, ", "))
+	return fmt.Errorf("no usable score in column %s: %s left out (%s); %s", quoted(t.column.Name), rows, strings.Join(counts, ", "), advice)
 }

@@ -59,7 +59,11 @@ func newPlainText(source io.Reader) (*plainText, error) {
 // Read implements io.Reader.
 func (t *plainText) Read(p []byte) (int, error) {
 	if t.err == nil && t.handed-t.rowStart > longestRow {
-		t.err = fmt.Errorf("the row that starts below line %d is longer than %d million bytes; close the quote that is open there, or check that this is a file of scores", t.rowAfter, longestRow>>20)
+		where := "the first row"
+		if t.rowAfter > 0 {
+			where = fmt.Sprintf("the row below line %d", t.rowAfter)
+		}
+		t.err = fmt.Errorf("%s is longer than %d million bytes; close the quote that is open there, or check that this is a file of scores", where, longestRow>>20)
 	}
 	if t.err != nil {
 		return 0, t.err
@@ -111,5 +115,8 @@ func (t *plainText) unifyLineEnds(p []byte) int {
 }
 
 func stopped(lines int, err error) error {
+	if lines == 0 {
+		return fmt.Errorf("reading stopped before the first line ended: %w", err)
+	}
 	return fmt.Errorf("reading stopped after line %d: %w", lines, err)
 }
