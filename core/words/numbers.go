@@ -83,6 +83,18 @@ func thousands(digits string) string {
 // of the group that a share is applied to.
 func people(x float64) string { return thousands(Number(x)) }
 
+// People says a number of people: "4,000 people", "1 person".
+func People(x float64) string {
+	if x == 1 {
+		return "1 person"
+	}
+	return people(x) + " people"
+}
+
+// Z prints how many SDs above the mean a cutoff lies, for a table: "+1.83",
+// "-1.59".
+func Z(z float64) string { return signed(z, 2) }
+
 // percent prints a number of percent as stated: 0.95 is "95%", 0.999 is "99.9%".
 func percent(p float64) string { return Number(100*p) + "%" }
 

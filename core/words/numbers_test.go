@@ -94,11 +94,18 @@ func TestCount(t *testing.T) {
 	} {
 		assert.Equal(t, expected, Count(n))
 	}
-	assert.Equal(t, "1,000.5", people(1000.5))
+	assert.Equal(t, "1,000.5 people", People(1000.5))
+	assert.Equal(t, "1 person", People(1))
 }
 
 func TestLevel(t *testing.T) {
 	for level, expected := range map[float64]string{0.95: "95%", 0.999: "99.9%", 0.9: "90%", 0.07: "7%", 0.55: "55%"} {
 		assert.Equal(t, expected, Level(level))
+	}
+}
+
+func TestZ(t *testing.T) {
+	for z, expected := range map[float64]string{1.826: "+1.83", -1.594: "-1.59", -0.001: "0.00", 12: "+12.00"} {
+		assert.Equal(t, expected, Z(z))
 	}
 }

@@ -16,25 +16,23 @@ func Tolerance(q ask.Question) string {
 	case q.TooHigh == nil && q.TooLow == nil:
 		return ""
 	case q.TooLow == nil:
-		return "at most " + limit(*q.TooHigh) + " too high; no limit on too low"
+		return "at most " + Limit(*q.TooHigh) + " too high; no limit on too low"
 	case q.TooHigh == nil:
-		return "at most " + limit(*q.TooLow) + " too low; no limit on too high"
+		return "at most " + Limit(*q.TooLow) + " too low; no limit on too high"
 	case *q.TooHigh == *q.TooLow:
-		return "at most " + limit(*q.TooHigh) + " too high or too low"
+		return "at most " + Limit(*q.TooHigh) + " too high or too low"
 	}
-	return "at most " + limit(*q.TooHigh) + " too high or " + limit(*q.TooLow) + " too low"
+	return "at most " + Limit(*q.TooHigh) + " too high or " + Limit(*q.TooLow) + " too low"
 }
 
-// limit words a limit of the tolerance: "1 point", "20% of the count", "40
+// Limit says one side of a tolerance: "1 point", "20% of the count", "40
 // people".
-func limit(l verdict.Limit) string {
+func Limit(l verdict.Limit) string {
 	switch {
 	case l.Unit == verdict.OfCount:
 		return Number(l.Size) + "% of the count"
-	case l.Unit == verdict.Heads && l.Size == 1:
-		return "1 person"
 	case l.Unit == verdict.Heads:
-		return people(l.Size) + " people"
+		return People(l.Size)
 	case l.Size == 1:
 		return "1 point"
 	}
@@ -91,9 +89,9 @@ func heldWithin(q ask.Question) string {
 	case q.TooHigh == nil && q.TooLow == nil:
 		return ""
 	case q.TooLow == nil:
-		return "not too high by more than " + limit(*q.TooHigh)
+		return "not too high by more than " + Limit(*q.TooHigh)
 	case q.TooHigh == nil:
-		return "not too low by more than " + limit(*q.TooLow)
+		return "not too low by more than " + Limit(*q.TooLow)
 	}
 	return "within " + within(q.TooHigh, q.TooLow)
 }
@@ -101,14 +99,14 @@ func heldWithin(q ask.Question) string {
 // within names the limits that there are: "1 point too high and 2 points too low".
 func within(high, low *verdict.Limit) string {
 	if high != nil && low != nil && *high == *low {
-		return limit(*high) + " too high or too low"
+		return Limit(*high) + " too high or too low"
 	}
 	var named []string
 	if high != nil {
-		named = append(named, limit(*high)+" too high")
+		named = append(named, Limit(*high)+" too high")
 	}
 	if low != nil {
-		named = append(named, limit(*low)+" too low")
+		named = append(named, Limit(*low)+" too low")
 	}
 	return strings.Join(named, " and ")
 }
@@ -128,7 +126,7 @@ func failedBy(q ask.Question, f ask.Finding) string {
 	if at, known := edge(q, *passed); known && printAlike(*nearest, at) {
 		by = "just over " // else "too high by 1 point: too high by more than 1 point"
 	}
-	return direction + " by " + by + limit(*passed)
+	return direction + " by " + by + Limit(*passed)
 }
 
 // printAlike is true where a gap is printed with the digits of a limit.
@@ -174,19 +172,19 @@ func Settle(f ask.Finding) string {
 	if f.PeopleToSettle == nil {
 		return "no realistic number of people would settle it"
 	}
-	more := roundUp(*f.PeopleToSettle)
 	noun := "people"
-	if more == 1 {
+	if *f.PeopleToSettle == 1 {
 		noun = "person"
 	}
-	return "about " + Count(more) + " more " + noun + " would settle it if the gap is as estimated (an 80% chance)"
+	return "about " + SettleNumber(*f.PeopleToSettle) + " more " + noun + " would settle it if the gap is as estimated (an 80% chance)"
 }
 
-// roundUp keeps three significant digits, never fewer people than n.
-func roundUp(n int) int {
+// SettleNumber prints how many more people would settle a verdict, rounded up
+// to three significant digits: "1,250".
+func SettleNumber(more int) string {
 	unit := 1
-	for n/unit >= 1000 {
+	for more/unit >= 1000 {
 		unit *= 10
 	}
-	return (n + unit - 1) / unit * unit
+	return Count((more + unit - 1) / unit * unit)
 }
