@@ -11,6 +11,7 @@ require (
 	github.com/gobwas/httphead v0.1.0 // indirect
 	github.com/gobwas/pool v0.2.1 // indirect
 	github.com/gobwas/ws v1.4.0 // indirect
+	github.com/google/uuid v1.3.0 // indirect
 	github.com/inconshreveable/mousetrap v1.1.0 // indirect
 	github.com/maxence-charriere/go-app/v9 v9.8.0 // indirect
 	github.com/spf13/cobra v1.10.2 // indirect

@@ -1,0 +1,102 @@
+package main
+
+import (
+	"bytes"
+	"context"
+	"encoding/json"
+	"errors"
+	"slices"
+	"strings"
+
+	"tailgap/core/ask"
+	"tailgap/core/demo"
+	"tailgap/core/intake"
+	"tailgap/core/sample"
+)
+
+// bench is the worker's side of the work, without the browser: it holds one
+// file, reads it as a question wants it, and answers.
+type bench struct {
+	name string
+	data []byte
+	demo bool
+
+	read   intake.Options // how the sample was read; its scores are nil when nothing was
+	sample sample.Sample
+}
+
+// hold puts a file on the bench in place of the one before.
+func (b *bench) hold(name string, data []byte) { *b = bench{name: name, data: data} }
+
+// serve does what a request asks and says how it went; long work says its
+// progress through post on the way.
+func (b *bench) serve(r request, post func(reply)) reply {
+	return guarded(r.ID, r.Kind, func() (any, error) {
+		if r.Demo && !b.demo {
+			b.hold(demo.Name, demo.CSV())
+			b.demo = true
+		}
+		switch r.Kind {
+		case askColumns:
+			return intake.Columns(b.source(), r.Header)
+		case askAnswer:
+			return b.answer(r, post)
+		}
+		return nil, errors.New("the page asked for something that its worker doesn't know")
+	})
+}
+
+func (b *bench) source() intake.Source {
+	return intake.Source{Name: b.name, Reader: bytes.NewReader(b.data)}
+}
+
+func (b *bench) answer(r request, post func(reply)) (ask.Answer, error) {
+	if r.Question == nil {
+		return ask.Answer{}, errors.New("the page asked without a question")
+	}
+	question := *r.Question
+	question.Workers = 1 // a browser gives a worker one thread
+	options := intake.Options{Scores: question.Scores, Missing: question.Missing, Header: question.Header}
+	if err := b.readAs(options); err != nil {
+		return ask.Answer{}, err
+	}
+	return ask.Judge(context.Background(), question, b.sample, tellProgress(r.ID, post))
+}
+
+// readAs reads the file, unless it was read in the same way before.
+func (b *bench) readAs(options intake.Options) error {
+	if b.read.Scores != nil && slices.Equal(b.read.Scores, options.Scores) &&
+		slices.Equal(b.read.Missing, options.Missing) && b.read.Header == options.Header {
+		return nil
+	}
+	read, err := intake.Read([]intake.Source{b.source()}, options)
+	if err != nil {
+		return err
+	}
+	read.Demo = b.demo
+	b.sample, b.read = read, options
+	return nil
+}
+
+// tellProgress posts at most a hundred times: every message costs the page
+// some of its time.
+func tellProgress(id int, post func(reply)) ask.Progress {
+	told := -1
+	return func(done, total int) {
+		percent := 100
+		if total > 0 {
+			percent = int(100 * float64(done) / float64(total))
+		}
+		if percent == told {
+			return
+		}
+		told = percent
+		data, err := json.Marshal(progress{Done: done, Total: total})
+		if err == nil {
+			post(reply{ID: id, Kind: sayProgress, Data: data})
+		}
+	}
+}
+
+// shortName is a file's name without its folders.
+func shortName(path string) string { return path[strings.LastIndexAny(path, `/\`)+1:] }

@@ -1,0 +1,135 @@
+package main
+
+import (
+	"math"
+	"slices"
+
+	"github.com/maxence-charriere/go-app/v9/pkg/app"
+
+	"tailgap/core/ask"
+	"tailgap/core/cutoff"
+	"tailgap/core/figure"
+	"tailgap/core/words"
+)
+
+// cards are the findings, each hanging under its cutoff's grip. Where they
+// don't fit into one row they stand in a grid, in the order of the cutoffs.
+func (s *sheet) cards(q ask.Question, r *ask.Result) app.UI {
+	if len(r.Cutoffs) == 0 {
+		return app.Div().ID("cards").Class("cards").Body(
+			app.P().Class("none").Text("Name a cutoff in the question to see what the curve makes of it."),
+		)
+	}
+	column := float64(s.width)
+	frame := figure.SweepFrame(*r, s.options("sweep"))
+	grips := make([]float64, len(r.Cutoffs))
+	for i, f := range r.Cutoffs {
+		grips[i] = math.Min(math.Max(frame.X(middle(f.Cutoff)), frame.Left), frame.Right)
+	}
+	var left []float64
+	if s.width >= stacked {
+		left = hang(grips, column)
+	}
+	if left == nil {
+		return app.Div().ID("cards").Class("cards", "grid").Body(
+			app.Range(r.Cutoffs).Slice(func(i int) app.UI { return s.card(q, r.Cutoffs[i], i) }),
+		)
+	}
+	return app.Div().ID("cards").Class("cards").Body(
+		app.Raw(ties(grips, left, column, s.selected)),
+		app.Div().Class("row").Body(s.row(q, r, left)...),
+	)
+}
+
+// row hangs the cards from left to right, each with its distance to the one
+// before. The policy lets no style attribute in: the loader sets data-at.
+func (s *sheet) row(q ask.Question, r *ask.Result, left []float64) []app.UI {
+	order := make([]int, len(left))
+	for i := range order {
+		order[i] = i
+	}
+	slices.SortStableFunc(order, func(a, b int) int { return int(math.Copysign(1, left[a]-left[b])) })
+	row := make([]app.UI, len(left))
+	end := 0.0
+	for rank, i := range order {
+		row[rank] = s.card(q, r.Cutoffs[i], i).DataSet("at", exact(left[i]-end)+"px")
+		end = left[i] + cardWidth
+	}
+	return row
+}
+
+// middle is the score under which a cutoff's card hangs.
+func middle(c cutoff.Cutoff) float64 {
+	if c.Side == cutoff.Stretch {
+		return c.At/2 + c.To/2
+	}
+	return c.At
+}
+
+// card is what was found at one cutoff.
+func (s *sheet) card(q ask.Question, f ask.Finding, i int) app.HTMLArticle {
+	class := "card"
+	if i == s.selected {
+		class += " selected"
+	}
+	if f.Verdict != nil {
+		class += " " + *f.Verdict
+	}
+	return app.Article().Class(class).DataSet("cutoff", f.Cutoff.String()).Body(
+		app.H3().Body(
+			app.Button().Type("button").Class("pick").Text(words.Capital(f.Cutoff.Words())).
+				Aria("pressed", i == s.selected).
+				OnClick(s.act("card-"+itoa(i), func(app.Context, app.Event) { s.pick(i) })),
+		),
+		shares(f),
+		gapLines(q, f),
+		verdictLines(q, f),
+		when(f.HalfStep != nil, func() app.UI { return app.P().Class("soft").Text(words.OtherReading(q, f)) }),
+		app.Range(f.Notes).Slice(func(i int) app.UI { return app.P().Class("note").Text(words.Line(words.Capital(f.Notes[i]))) }),
+	)
+}
+
+func shares(f ask.Finding) app.UI {
+	return app.P().Class("shares").Body(
+		shown("curve_share", f.CurveShare, words.Share(f.CurveShare)).Class("curve"),
+		app.Span().Text("by the curve"),
+		shown("counted_share", f.CountedShare, words.Share(f.CountedShare)).Class("count"),
+		app.Span().Body(
+			app.Text("counted: "),
+			shown("counted", float64(f.Counted), words.Count(f.Counted)),
+		),
+	)
+}
+
+// gapLines are the gap with its interval, in points, as a ratio and in people.
+func gapLines(q ask.Question, f ask.Finding) app.UI {
+	return app.P().Class("gap").Body(
+		app.Strong().Body(shown("gap_points", f.GapPoints, words.Capital(words.Gap(f.GapPoints)))),
+		interval(words.Limits(f.Reading)),
+		when(f.Ratio != nil, func() app.UI {
+			return app.Span().Class("line").Body(shown("ratio", *f.Ratio, words.Capital(words.Ratio(f))))
+		}),
+		when(f.Heads != nil, func() app.UI {
+			return app.Span().Class("line").Body(
+				shown("heads.gap", f.Heads.Gap, words.Capital(words.Heads(q, f))),
+				interval(words.HeadLimits(f)),
+			)
+		}),
+	)
+}
+
+func interval(limits string) app.UI {
+	return when(limits != "", func() app.UI { return app.Span().Class("soft").Text(" (" + limits + ")") })
+}
+
+func verdictLines(q ask.Question, f ask.Finding) app.UI {
+	return when(f.Verdict != nil, func() app.UI {
+		return app.P().Class("said").Body(
+			shownText("verdict", *f.Verdict, *f.Verdict).Class("verdict"),
+			app.Text(" "+words.Capital(words.Reason(q, f))),
+			when(words.Settle(f) != "", func() app.UI {
+				return app.Span().Class("line soft").Text(words.Capital(words.Settle(f)) + ".")
+			}),
+		)
+	})
+}

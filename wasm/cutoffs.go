@@ -1,0 +1,159 @@
+package main
+
+import (
+	"slices"
+	"strconv"
+	"strings"
+
+	"github.com/maxence-charriere/go-app/v9/pkg/app"
+
+	"tailgap/core/cutoff"
+	"tailgap/core/words"
+)
+
+// draft is what an open editor knows that the question can't hold yet.
+type draft struct {
+	side  *cutoff.Side // of the cutoff being edited
+	given bool         // a given curve, before its mean and SD are both there
+	mean  string
+	sd    string
+	unit  string // of the limit being edited, before its size is there
+}
+
+// sides in the order in which they are offered.
+var sides = []cutoff.Side{cutoff.AtMost, cutoff.Below, cutoff.AtLeast, cutoff.Above, cutoff.Stretch}
+
+// atCutoff is the place of a cutoff in the sentence.
+func atCutoff(i int) place { return place("cutoff-" + strconv.Itoa(i)) }
+
+// cutoff is which cutoff the place is of; -1 for another place.
+func (at place) cutoff() int {
+	if text, ok := strings.CutPrefix(string(at), "cutoff-"); ok {
+		if i, err := strconv.Atoi(text); err == nil {
+			return i
+		}
+	}
+	return -1
+}
+
+// cutoffSlots are the cutoffs in the sentence, and the slot that adds one.
+func (s *sheet) cutoffSlots() []app.UI {
+	cutoffs := s.desk.question.Cutoffs
+	var parts []app.UI
+	for i, c := range cutoffs {
+		switch {
+		case i > 0 && i == len(cutoffs)-1:
+			parts = append(parts, app.Text(" and "))
+		case i > 0:
+			parts = append(parts, app.Text(", "))
+		}
+		parts = append(parts, s.slot(atCutoff(i), c.Words(), s.cutoffEditor(i)))
+	}
+	add := "at a cutoff you name"
+	if len(cutoffs) > 0 {
+		parts = append(parts, app.Text(" "))
+		add = "add a cutoff"
+	}
+	return append(parts, s.slot(atAdd, add, s.addEditor))
+}
+
+// cutoffEditor changes or removes the i-th cutoff.
+func (s *sheet) cutoffEditor(i int) func() app.UI {
+	return func() app.UI {
+		c, at := s.desk.question.Cutoffs[i], atCutoff(i)
+		remove := app.Button().Type("button").ID("remove-" + string(at)).Text("Remove").
+			OnClick(s.act("remove-"+string(at), func(ctx app.Context, _ app.Event) { s.removeCutoff(ctx, i) }))
+		return app.Span().Class("fields").Body(append(s.cutoffFields(at, &c), remove)...)
+	}
+}
+
+func (s *sheet) addEditor() app.UI {
+	return app.Span().Class("fields").Body(s.cutoffFields(atAdd, nil)...)
+}
+
+// cutoffFields are the side and the number or numbers of a cutoff, nil for a
+// new one.
+func (s *sheet) cutoffFields(at place, c *cutoff.Cutoff) []app.UI {
+	side := cutoff.AtLeast
+	from, to := "", ""
+	if c != nil {
+		side, from = c.Side, plain(c.At)
+		if c.Side == cutoff.Stretch {
+			to = plain(c.To)
+		}
+	}
+	if s.draft.side != nil {
+		side = *s.draft.side
+	}
+	id := string(at)
+	changed := func(name string) (app.EventHandler, any) {
+		return s.act(name+id, func(ctx app.Context, _ app.Event) { s.cutoffTyped(ctx, at) })
+	}
+	choose := app.Select().ID("side-"+id).Aria("label", "Which people").OnChange(changed("side-")).Body(
+		app.Range(sides).Slice(func(i int) app.UI {
+			return app.Option().Value(sides[i].String()).Text(words.SideName(sides[i])).Selected(sides[i] == side)
+		}),
+	)
+	first := app.Input().ID("from-"+id).Class("figure").Aria("label", "Cutoff").Attr("inputmode", "text").
+		AutoComplete(false).Value(from).OnChange(changed("from-"))
+	if side != cutoff.Stretch {
+		return []app.UI{choose, first}
+	}
+	second := app.Input().ID("to-"+id).Class("figure").Aria("label", "Upper end").
+		AutoComplete(false).Value(to).OnChange(changed("to-"))
+	return []app.UI{choose, first, app.Text("and"), second}
+}
+
+// cutoffTyped takes in what now stands in the fields of a cutoff. Someone may
+// also write a whole cutoff, such as >=50, into the number's field.
+func (s *sheet) cutoffTyped(ctx app.Context, at place) {
+	var side cutoff.Side
+	if err := side.UnmarshalText([]byte(valueOf("side-" + string(at)))); err != nil {
+		return
+	}
+	s.draft.side = &side
+	from, to := valueOf("from-"+string(at)), valueOf("to-"+string(at))
+	if from == "" || (side == cutoff.Stretch && to == "") {
+		return // not finished
+	}
+	c, err := cutoff.Parse(from)
+	switch {
+	case err == nil:
+		s.draft.side = &c.Side
+	case side == cutoff.Stretch:
+		c, err = cutoff.Parse(from + ".." + to)
+	default:
+		c, err = cutoff.Parse(side.String() + from)
+	}
+	s.putCutoff(ctx, at, c, err)
+}
+
+// putCutoff puts a cutoff in its place in the question, or at its end.
+func (s *sheet) putCutoff(ctx app.Context, at place, c cutoff.Cutoff, err error) {
+	q := s.desk.question
+	q.Cutoffs = slices.Clone(q.Cutoffs)
+	i := at.cutoff()
+	if i < 0 || i >= len(q.Cutoffs) {
+		i = len(q.Cutoffs)
+		q.Cutoffs = append(q.Cutoffs, c)
+	}
+	q.Cutoffs[i] = c
+	if !s.change(at, q, err) {
+		return
+	}
+	s.pick(i)
+	if at == atAdd {
+		s.close(ctx)
+	}
+}
+
+func (s *sheet) removeCutoff(ctx app.Context, i int) {
+	q := s.desk.question
+	q.Cutoffs = slices.Delete(slices.Clone(q.Cutoffs), i, i+1)
+	s.close(ctx)
+	s.change(atAdd, q, nil)
+	s.pick(max(0, i-1))
+}
+
+// pick takes a cutoff in hand and shows the sweep that it lies on.
+func (s *sheet) pick(i int) { s.selected, s.side = i, nil }

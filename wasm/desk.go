@@ -1,0 +1,275 @@
+package main
+
+import (
+	"time"
+
+	"tailgap/core/ask"
+	"tailgap/core/demo"
+	"tailgap/core/intake"
+)
+
+// place is a part of the page where something can be wrong.
+type place string
+
+// The places; each cutoff has its own, made by atCutoff.
+const (
+	atData  place = "data"
+	atCurve place = "curve"
+	atMore  place = "more"
+	atHigh  place = "too-high"
+	atLow   place = "too-low"
+	atHeads place = "heads"
+	atAdd   place = "add"
+	atWork  place = "work"
+	atAway  place = "take-away"
+)
+
+// patience is how long a question that was overtaken may still run before
+// its worker is stopped: most answers are there sooner than a new worker.
+const patience = 250 * time.Millisecond
+
+// data is what the question is asked of.
+type data struct {
+	name    string
+	demo    bool
+	file    *file           // nil for the demo
+	columns []intake.Column // nil until the worker has said
+}
+
+// job is what the worker is doing.
+type job struct {
+	id       int
+	kind     string
+	version  int   // of the question it answers
+	opens    *data // the data it looks at, for askColumns
+	progress progress
+}
+
+// desk is the page's state and its conversation with the worker, without any
+// element of the page. Its methods are called on the page's one thread.
+type desk struct {
+	start func(receive func(reply)) thread    // starts a worker
+	soon  func(do func())                     // does something on the page's thread
+	after func(wait time.Duration, do func()) // likewise, later
+
+	question ask.Question
+	data     data
+	version  int // counts the changes of question and data
+
+	answer     *ask.Answer
+	answeredAs int    // the version that the answer answers
+	answerData string // the name of the data it is about
+
+	trouble map[place]string
+	running *job
+	waiting bool // the question has changed since the worker began
+	stopped bool // the person has stopped the work
+
+	worker thread
+	holds  *file // the file the worker has
+	lastID int
+}
+
+// newDesk has the demo on it, asked its own question.
+func newDesk() *desk {
+	return &desk{
+		question: demo.Question(), data: data{name: demo.Name, demo: true},
+		trouble: map[place]string{},
+	}
+}
+
+// old is true when what is shown answers an earlier question, or other data.
+func (d *desk) old() bool { return d.answer != nil && d.answeredAs != d.version }
+
+// ready is true when there is something to ask.
+func (d *desk) ready() bool { return len(d.question.Scores) > 0 }
+
+// change puts another question on the desk and asks it.
+func (d *desk) change(question ask.Question) {
+	d.question = question
+	d.version++
+	d.ask()
+}
+
+// ask asks the question as it stands, once the worker is free. A question
+// that can't be answered, whatever the data, is not sent.
+func (d *desk) ask() {
+	d.stopped = false
+	delete(d.trouble, atWork)
+	if !d.ready() {
+		d.drop()
+		return
+	}
+	if err := d.question.Check(); err != nil {
+		d.trouble[atWork] = sentence(err)
+		d.drop()
+		return
+	}
+	if d.running == nil {
+		d.send(job{kind: askAnswer, version: d.version})
+		return
+	}
+	if d.waiting {
+		return
+	}
+	d.waiting = true
+	overtaken := d.running
+	d.after(patience, func() {
+		if d.running == overtaken && d.waiting {
+			d.drop()
+			d.ask()
+		}
+	})
+}
+
+// cancel stops the work; what was answered last stays.
+func (d *desk) cancel() {
+	if d.running != nil && d.running.kind == askAnswer {
+		d.drop()
+		d.stopped = true
+	}
+}
+
+// drop ends what is running, and its worker with it.
+func (d *desk) drop() {
+	d.waiting = false
+	if d.running == nil {
+		return
+	}
+	d.running = nil
+	d.worker.stop()
+	d.worker, d.holds = nil, nil
+}
+
+// send gives the worker a job, starting one first if there is none.
+func (d *desk) send(j job) {
+	of := d.data
+	if j.opens != nil {
+		of = *j.opens
+	}
+	if d.worker == nil {
+		d.worker = d.start(func(r reply) { d.soon(func() { d.heard(r) }) })
+	}
+	d.lastID++
+	j.id = d.lastID
+	r := request{ID: j.id, Kind: j.kind, Name: of.name, Demo: of.demo, Header: d.question.Header}
+	if j.kind == askAnswer {
+		question := d.question
+		r.Question = &question
+	}
+	with := of.file
+	if with == d.holds {
+		with = nil
+	}
+	d.holds = of.file
+	d.running = &j
+	d.worker.post(r, with)
+}
+
+// heard takes in what the worker says. A worker that was stopped may have
+// said something just before; its job is not the running one any more.
+func (d *desk) heard(r reply) {
+	if d.running == nil || (r.ID != d.running.id && r.Kind != sayBroken) {
+		return
+	}
+	switch r.Kind {
+	case sayProgress:
+		if p, err := decoded[progress](r); err == nil {
+			d.running.progress = p
+		}
+		return
+	case sayBroken:
+		d.drop()
+		d.trouble[atWork] = "The page's worker has stopped: " + r.Error + ". Change or ask the question again to start another."
+		return
+	}
+	done := *d.running
+	d.running = nil
+	if done.kind == askColumns {
+		d.opened(done, r)
+	} else {
+		d.answered(done, r)
+	}
+	if d.waiting && d.running == nil {
+		d.waiting = false
+		d.ask()
+	}
+}
+
+func (d *desk) answered(done job, r reply) {
+	answer, err := r.answer()
+	if err != nil {
+		if done.version == d.version {
+			d.trouble[atWork] = sentence(err)
+		}
+		return
+	}
+	d.answer, d.answeredAs, d.answerData = answer, done.version, d.data.name
+	if d.data.columns == nil {
+		d.send(job{kind: askColumns, opens: &data{name: d.data.name, demo: d.data.demo, file: d.data.file}})
+	}
+}
+
+// open looks into a file and, if it has columns, puts it on the desk in
+// place of what was there.
+func (d *desk) open(f *file) {
+	d.look(&data{name: f.name, file: f})
+}
+
+// openDemo puts the demo back on the desk with its own question.
+func (d *desk) openDemo() {
+	d.drop()
+	d.data = data{name: demo.Name, demo: true}
+	delete(d.trouble, atData)
+	d.change(demo.Question())
+}
+
+// reread looks again at the file on the desk, whose header is now read in
+// another way.
+func (d *desk) reread() {
+	again := d.data
+	d.look(&again)
+}
+
+func (d *desk) look(at *data) {
+	unanswered := d.running != nil && d.running.kind == askAnswer
+	d.drop()
+	delete(d.trouble, atData)
+	d.waiting = unanswered
+	d.send(job{kind: askColumns, opens: at})
+}
+
+func (d *desk) opened(done job, r reply) {
+	columns, err := r.columns()
+	if err != nil {
+		d.trouble[atData] = sentence(err)
+		return
+	}
+	looked := *done.opens
+	looked.columns = columns
+	same := looked.file == d.data.file && looked.demo == d.data.demo
+	d.data = looked
+	if same {
+		return
+	}
+	d.waiting = false
+	d.change(asked(ask.NewQuestion(), columns))
+}
+
+// asked is the question with the score columns that go without saying: the
+// only column, or the only one with numbers in it.
+func asked(q ask.Question, columns []intake.Column) ask.Question {
+	var numeric []intake.Column
+	for _, c := range columns {
+		if c.Numeric {
+			numeric = append(numeric, c)
+		}
+	}
+	switch {
+	case len(columns) == 1:
+		q.Scores = []string{columns[0].Ask}
+	case len(numeric) == 1:
+		q.Scores = []string{numeric[0].Ask}
+	}
+	return q
+}

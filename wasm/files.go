@@ -1,0 +1,87 @@
+package main
+
+import (
+	"github.com/maxence-charriere/go-app/v9/pkg/app"
+
+	"tailgap/core/ask"
+	"tailgap/core/words"
+)
+
+// pastedName is what pasted scores are called.
+const pastedName = "pasted scores"
+
+// listenForFiles makes the whole page a place to drop a file or paste scores.
+func (s *sheet) listenForFiles() {
+	app.Window().AddEventListener("dragover", func(_ app.Context, e app.Event) {
+		e.PreventDefault() // or the browser would leave the page for the file
+	})
+	app.Window().AddEventListener("drop", func(_ app.Context, e app.Event) {
+		e.PreventDefault()
+		carried := e.Get("dataTransfer")
+		if files := carried.Get("files"); files.Get("length").Int() > 0 {
+			s.settle(func() { s.take(files.Index(0)) })
+		} else {
+			s.settle(func() { s.takeText(carried.Call("getData", "text/plain").String()) })
+		}
+	})
+	app.Window().AddEventListener("paste", func(_ app.Context, e app.Event) {
+		if e.Get("target").Call("closest", "input, textarea").Truthy() {
+			return // the field has it
+		}
+		e.PreventDefault()
+		s.settle(func() { s.takePaste(e) })
+	})
+}
+
+// takePaste opens what the clipboard has: files, or text.
+func (s *sheet) takePaste(e app.Event) {
+	carried := e.Get("clipboardData")
+	if files := carried.Get("files"); files.Get("length").Int() > 0 {
+		s.take(files.Index(0))
+		return
+	}
+	s.takeText(carried.Call("getData", "text/plain").String())
+}
+
+// take opens a file that the browser holds.
+func (s *sheet) take(blob app.Value) {
+	name := shortName(blob.Get("name").String())
+	s.show(s.page, atData)
+	go func() {
+		copied, err := copied(blob)
+		s.desk.soon(func() {
+			if err != nil {
+				s.desk.trouble[atData] = words.Name(name) + " can't be read: " + err.Error() + "."
+				return
+			}
+			s.desk.open(&file{name: name, blob: copied})
+		})
+	}()
+}
+
+// takeText opens pasted text as a file would be opened.
+func (s *sheet) takeText(text string) {
+	if text == "" {
+		return
+	}
+	s.show(s.page, atData)
+	s.desk.open(&file{name: pastedName, blob: blobOf(text)})
+}
+
+// takeQuestion opens a question file and asks it of the data on the desk.
+func (s *sheet) takeQuestion(blob app.Value) {
+	go func() {
+		text, err := bytesOf(blob)
+		s.desk.soon(func() {
+			if err == nil {
+				var q ask.Question
+				if q, err = ask.ReadQuestion(text); err == nil {
+					s.change(atAway, q, nil)
+				}
+			}
+			if err != nil {
+				s.desk.trouble[atAway] = sentence(err)
+			}
+		})
+	}()
+}

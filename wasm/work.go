@@ -1,0 +1,64 @@
+package main
+
+import (
+	"strconv"
+
+	"github.com/maxence-charriere/go-app/v9/pkg/app"
+)
+
+// work says how the computing stands: going on, stopped, or gone wrong. What
+// is shown below it may answer an earlier question, and then it says so.
+func (s *sheet) work() app.UI {
+	d := s.desk
+	return app.Div().ID("work").Class("work").DataSet("state", s.state()).Body(
+		when(s.slow && d.running != nil, s.bar),
+		when(d.stopped, s.again),
+		trouble(d.trouble[atWork]),
+		when(d.old(), func() app.UI { return app.P().ID("old").Class("old-mark").Text(d.oldness()) }),
+	)
+}
+
+func (s *sheet) state() string {
+	switch {
+	case s.desk.running != nil:
+		return "working"
+	case s.desk.stopped:
+		return "stopped"
+	case s.desk.trouble[atWork] != "":
+		return "failed"
+	}
+	return "done"
+}
+
+func (s *sheet) bar() app.UI {
+	p := s.desk.running.progress
+	bar := app.Progress().ID("progress").Aria("label", "How much is done").Max(100)
+	if p.Total > 0 {
+		bar = bar.Value(strconv.Itoa(int(100 * float64(p.Done) / float64(p.Total))))
+	}
+	return app.P().Class("bar").Body(
+		app.Label().For("progress").Text("Working it out"),
+		bar,
+		app.Button().ID("cancel").Text("Cancel").OnClick(s.act("cancel", func(app.Context, app.Event) { s.desk.cancel() })),
+	)
+}
+
+func (s *sheet) again() app.UI {
+	return app.P().Body(
+		app.Text("Stopped. "),
+		app.Button().ID("ask-again").Text("Ask again").OnClick(s.act("ask-again", func(app.Context, app.Event) { s.desk.ask() })),
+	)
+}
+
+// oldness says what it is that is shown in place of an answer.
+func (d *desk) oldness() string {
+	if d.answerData != d.data.name {
+		return "What stands below is about " + d.answerData + ", not about the data above."
+	}
+	return "What stands below answers an earlier question, not the one above."
+}
+
+// trouble is a sentence about something that is wrong, where it is wrong.
+func trouble(text string) app.UI {
+	return when(text != "", func() app.UI { return app.P().Class("trouble").Role("alert").Text(text) })
+}
