@@ -56,20 +56,20 @@ func read(t *testing.T, path string) string {
 func TestOutHoldsWhatStdoutWould(t *testing.T) {
 	for _, format := range []string{"text", "json", "csv"} {
 		path := filepath.Join(t.TempDir(), "out")
-		said, _, status := tailgap("", "judge", "--demo", "--format", format)
-		quiet, _, statusQuiet := tailgap("", "judge", "--demo", "--format", format, "--out", path)
+		said, _, status := tailgap("", "judge", "--demo", "--replicates", "500", "--format", format)
+		quiet, _, statusQuiet := tailgap("", "judge", "--demo", "--replicates", "500", "--format", format, "--out", path)
 		assert.Equal(t, said, read(t, path))
 		assert.Empty(t, quiet)
 		assert.Equal(t, statusFails, status)
 		assert.Equal(t, statusFails, statusQuiet)
-		dash, _, _ := tailgap("", "judge", "--demo", "--format", format, "--out", "-")
+		dash, _, _ := tailgap("", "judge", "--demo", "--replicates", "500", "--format", format, "--out", "-")
 		assert.Equal(t, said, dash)
 	}
 }
 
 func TestFigure(t *testing.T) {
 	path := filepath.Join(t.TempDir(), "sweep.svg")
-	_, _, status := tailgap("", "judge", "--demo", "--figure", path)
+	_, _, status := tailgap("", "judge", "--demo", "--replicates", "500", "--figure", path)
 	assert.Equal(t, statusFails, status)
 	assert.True(t, strings.HasPrefix(read(t, path), "<svg "))
 	assert.Contains(t, read(t, path), "DEMO")
@@ -92,9 +92,9 @@ func TestWarningsGoToStderrWhereTheResultsAreForPrograms(t *testing.T) {
 func TestUnwritableOutputIsAFailure(t *testing.T) {
 	nowhere := filepath.Join(t.TempDir(), "nowhere", "out")
 	for _, args := range [][]string{
-		{"judge", "--demo", "--out", nowhere},
-		{"judge", "--demo", "--figure", nowhere},
-		{"judge", "--demo", "--save-question", nowhere},
+		{"judge", "--demo", "--replicates", "500", "--out", nowhere},
+		{"judge", "--demo", "--replicates", "500", "--figure", nowhere},
+		{"judge", "--demo", "--replicates", "500", "--save-question", nowhere},
 		{"demo", "--out", nowhere},
 	} {
 		stdout, stderr, status := tailgap("", args...)
@@ -110,7 +110,7 @@ type full struct{}
 func (full) Write([]byte) (int, error) { return 0, errors.New("no space left") }
 
 func TestFullStdoutIsAFailure(t *testing.T) {
-	for _, args := range [][]string{{"judge", "--demo"}, {"demo"}, {"version"}, {"judge", "--help"}} {
+	for _, args := range [][]string{{"judge", "--demo", "--replicates", "500"}, {"demo"}, {"version"}, {"judge", "--help"}} {
 		var stderr strings.Builder
 		assert.Equal(t, statusFailure, run(args, strings.NewReader(""), full{}, &stderr), args)
 		assert.Equal(t, "tailgap: standard output can't be written: no space left\n", stderr.String())
