@@ -51,7 +51,7 @@ func TestColumnsWithAndWithoutNames(t *testing.T) {
 
 // Asking the way a Column says leads to that column.
 func TestColumnsSayHowToAsk(t *testing.T) {
-	const text = "a,,A,b,2,a , b\n0,1,2,3,4,5,6\n"
+	const text = "a,a,A,b,2,a , b\n0,1,2,3,4,5,6\n"
 	columns, err := intake.Columns(from(text)[0], sample.HeaderYes)
 	require.NoError(t, err)
 	require.Len(t, columns, 7)

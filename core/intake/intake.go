@@ -94,7 +94,7 @@ func readSource(source io.Reader, name string, options Options, tallies []*tally
 	if tallies == nil {
 		tallies = make([]*tally, len(asked))
 		for i, a := range asked {
-			tallies[i] = &tally{column: sample.Column{Name: r.label(a.index)}, named: r.names != nil}
+			tallies[i] = &tally{column: sample.Column{Name: r.label(a.index)}}
 		}
 	}
 	for i, a := range asked {
@@ -114,9 +114,7 @@ func (r *rows) tallyAll(tallies []*tally, asked []found, name string) error {
 		}
 		return fmt.Sprintf("line %d of %s", line, name)
 	}
-	// Shifted for as long as every row has one cell more than the header.
-	shifted := slices.ContainsFunc(asked, func(f found) bool { return f.byName })
-	any := false
+	fit := fit{width: r.width}
 	for {
 		data, err := r.next()
 		if err == io.EOF {
@@ -125,16 +123,15 @@ func (r *rows) tallyAll(tallies []*tally, asked []found, name string) error {
 		if err != nil {
 			return err
 		}
-		any = true
-		shifted = shifted && len(data.cells) == r.width+1 && !isBlank(trim(data.cells[r.width]))
+		fit.add(data)
 		for i, t := range tallies {
 			if err := t.add(r, data, asked[i].index, place); err != nil {
 				return err
 			}
 		}
 	}
-	if any && shifted {
-		return fmt.Errorf("every row has %d cells but the header names %d, so it can't be told which name is over which column; add the name that is missing, or give the column's number", r.width+1, r.width)
+	if slices.ContainsFunc(asked, func(f found) bool { return f.byName }) {
+		return fit.check()
 	}
 	return nil
 }

@@ -53,6 +53,8 @@ func TestRead(t *testing.T) {
 		{name: "a line break in a cell", text: "note,score\n\"first\nsecond\",12\nnone,15\nx,?\n", ask: "score", scores: []float64{12, 15}, dropped: []sample.Dropped{left("unreadable", 1, "line 5")}},
 		{name: "a line break in a name", text: "id,\"score\n(raw)\"\n1,12\n2,?\n", ask: "Score (raw)", label: "score (raw)", scores: []float64{12}, dropped: []sample.Dropped{left("unreadable", 1, "line 4")}},
 		{name: "a row longer and a row without the last cell", text: "id,score,note\n1,12,a,b\n2,15\n", ask: "score", scores: []float64{12, 15}},
+		{name: "a delimiter at the end of every row", text: "score,age\n12,40,\n15,41,\n18,42,late\n", ask: "score", scores: []float64{12, 15, 18}},
+		{name: "a header with a name too few, by number", text: "score,age\n1,12,40\n2,15,41\n", ask: "2", label: "age", scores: []float64{12, 15}},
 		{name: "commas in the cells of a file with semicolons", text: "id;score, raw\n1;3,5\n2;4,5\n", ask: "score, raw", label: "score, raw", scores: []float64{3.5, 4.5}},
 		{name: "semicolons in some cells of a file with commas", text: "note,score\na;b,12\nc,15\n", ask: "score", scores: []float64{12, 15}},
 		{name: "a delimiter within quotes is none", text: "\"score; raw\"\n\"12\"\n\"15\"\n", label: "score; raw", scores: []float64{12, 15}},
@@ -144,9 +146,11 @@ func TestReadSeveralSources(t *testing.T) {
 		left("blank", 2, "line 3 of north.csv"), left("unreadable", 1, "line 4 of south.csv"),
 	}}}, s.Columns)
 
-	s, err = intake.Read(from("id,score\n", "1,12\n2,15\n"), intake.Options{Scores: []string{"2"}})
-	require.NoError(t, err, "one source may have no rows, or no header")
-	assert.Equal(t, []float64{12, 15}, s.Columns[0].Scores)
+	for _, sources := range [][]intake.Source{from("id,score\n", "1,12\n2,15\n"), from("1,12\n2,15\n", "id,score\n")} {
+		s, err = intake.Read(sources, intake.Options{Scores: []string{"2"}})
+		require.NoError(t, err, "one source may have no rows, or no header")
+		assert.Equal(t, []sample.Column{{Name: "score", Rows: 2, Scores: []float64{12, 15}}}, s.Columns)
+	}
 }
 
 func TestReadDemo(t *testing.T) {

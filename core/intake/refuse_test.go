@@ -72,8 +72,8 @@ func TestReadRefuses(t *testing.T) {
 			`line 1 has one cell where line 3 has 2; take out the lines above the header row`},
 		{"a title over tabs", "Results, 2024\nid\tage\tscore\n1\t40\t12\n", []string{"2"}, "", nil,
 			`line 1 has one cell where line 2 has 3; take out the lines above the header row`},
-		{"a header with a name too few", "score,age\n1,12,40\n2,15,41\n", []string{"score"}, "", nil,
-			`every row has 3 cells but the header names 2, so it can't be told which name is over which column; add the name that is missing, or give the column's number`},
+		{"a header with a name too few", "score,age\n1,12,40\n2,15,\n3,\"x\"y,\n4,18,39\n5,18,41\n", []string{"score"}, "", nil,
+			`the rows have 3 cells but the header names 2, so it can't be told which name is over which column; add the name that is missing, or give the column's number`},
 		{"an unknown header setting", "id,score\n1,12\n", []string{"score"}, "maybe", nil,
 			`the header setting "maybe" can't be read; write auto, yes or no`},
 

@@ -17,10 +17,15 @@ type tally struct {
 }
 
 // join starts a further source. A column asked for by its number must have the
-// same name in all of them.
+// same name in all sources that have names.
 func (t *tally) join(r *rows, index int) error {
 	t.comma, t.point = 0, 0
-	if name := r.label(index); t.named && r.names != nil && folded(name) != folded(t.column.Name) {
+	name := r.label(index)
+	switch {
+	case r.names == nil:
+	case !t.named:
+		t.column.Name, t.named = name, true
+	case folded(name) != folded(t.column.Name):
 		return fmt.Errorf("column %d is %s here but %s in the sources before; ask for it by its name", index+1, quoted(name), quoted(t.column.Name))
 	}
 	return nil
