@@ -113,7 +113,7 @@ func fitted() ask.Answer {
 	between := reading(-0.5, 0.2352, 0.4, -0.3, 0.9, "holds")
 	between.ZTo = some(0.11)
 	middle := heads(finding("20..25", 92, between, some(reading(-0.56, 0.28, 4.9, 4, 5.7, "fails"))), 4000)
-	middle.Notes = []string{"Only the half-step decides this verdict."}
+	middle.Notes = []string{"only the half-step decides this verdict"}
 	r.Cutoffs = []ask.Finding{low, high, middle}
 	r.Sweeps = []ask.Sweep{
 		sweep(cutoff.AtLeast, ask.Stretch{From: 14, To: 20}, ask.Stretch{From: 38, To: 38, Trivial: true}),
@@ -160,6 +160,7 @@ func halfStep() ask.Answer {
 	r := vocabulary()
 	f := finding("<=11", 38, reading(-1.6, 0.0548, -4.07, -6.3, -1.7, "unsettled"), some(reading(-1.54, 0.0618, -3.4, -5.5, -2.1, "fails")))
 	f.Reading = *f.HalfStep
+	f.Ratio = some(f.CurveShare / f.CountedShare)
 	r.Cutoffs = []ask.Finding{f}
 	r.Sweeps = []ask.Sweep{sweep(cutoff.AtMost, ask.Stretch{From: 0, To: 10, Trivial: true})}
 	r.Worst = ask.Worst{Side: cutoff.AtMost, Threshold: 30, GapPoints: -12.35}
@@ -169,7 +170,7 @@ func halfStep() ask.Answer {
 // partOfCount is a tolerance in percent of the count on a score without a
 // step, where nobody is beyond one of the cutoffs.
 func partOfCount() ask.Answer {
-	q := question(">=60.5", ">45", "<=-5", "-10..-5")
+	q := question(">=60.5", "<=4", ">45", "<=-5", "-10..-5")
 	q.Scores = []string{"form_minutes"}
 	q.TooHigh = &verdict.Limit{Size: 20, Unit: verdict.OfCount}
 	q.TooLow = q.TooHigh
@@ -180,8 +181,9 @@ func partOfCount() ask.Answer {
 	r.Warnings = []string{}
 	none := finding(">=60.5", 0, reading(4.4, 0.0000054, 0.00054, -0.31, 0.98, "unsettled"), nil)
 	none.Notes = []string{"Fewer than 10 people are at 60.5 or above."}
+	far := finding("<=4", 3, reading(-5.5, 0.00000002, -0.7537, -1.9, -0.01, "fails"), nil)
 	r.Cutoffs = []ask.Finding{
-		none,
+		none, far,
 		finding(">45", 4, reading(2.6, 0.0013, -0.87, -2.1, 0.02, "unsettled"), nil),
 		finding("<=-5", 398, reading(3.1, 0.9987, -0.13, -0.9, -0.01, "holds"), nil),
 		finding("-10..-5", 30, reading(3.1, 0.075, -0.04, -0.9, 0.8, "holds"), nil),
@@ -201,7 +203,7 @@ func hostile() ask.Answer {
 	third.Score = "a very long name of a column that goes on and on and on, \u202eback to front"
 	third.Warnings = []string{"In the column \x1b]0;title\x07 no score is usable."}
 	a := answer(q, first, second, third)
-	a.Warnings = []string{"The columns have\nodd names."}
+	a.Warnings = []string{"The columns have\nodd names.", third.Score + ": " + third.Warnings[0]} // the second is the third column's
 	a.Suppressed = []string{"nothing"}
 	return a
 }

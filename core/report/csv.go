@@ -3,6 +3,7 @@ package report
 import (
 	"bytes"
 	"encoding/csv"
+	"slices"
 
 	"tailgap/core/ask"
 )
@@ -41,7 +42,7 @@ func CSV(a ask.Answer) ([]byte, error) {
 	for _, r := range a.Results {
 		line := row{
 			Score: r.Score, Group: r.Group, Sample: r.Sample, Curve: r.Curve, Demo: a.Demo, Program: a.Program,
-			Warnings: append(append([]string{}, a.Warnings...), r.Warnings...), Question: a.Question,
+			Warnings: slices.Concat(general(a), r.Warnings), Question: a.Question,
 		}
 		findings := r.Cutoffs
 		for i := range max(1, len(findings)) {

@@ -1,6 +1,7 @@
 package report
 
 import (
+	"slices"
 	"strings"
 	"unicode/utf8"
 
@@ -20,7 +21,7 @@ func Text(a ask.Answer) string {
 		t.gap()
 	}
 	t.asked(a.Question)
-	t.list("Warning: ", a.Warnings)
+	t.list("Warning: ", general(a))
 	for _, result := range a.Results {
 		t.gap()
 		t.result(a.Question, result)
@@ -43,11 +44,23 @@ func (t *text) gap() {
 
 func (t *text) line(s string) { t.WriteString(wrapped("", "", s)) }
 
-// list writes each text as a paragraph of its own, opened with label.
+// list writes each text as a paragraph of its own, opened with label and
+// closed with a full stop.
 func (t *text) list(label string, texts []string) {
 	for _, one := range texts {
-		t.WriteString(wrapped(label, "  ", one))
+		t.WriteString(wrapped(label, "  ", strings.TrimSuffix(one, ".")+"."))
 	}
+}
+
+// general are the answer's warnings but those that a score has as its own.
+func general(a ask.Answer) []string {
+	own := map[string]bool{}
+	for _, r := range a.Results {
+		for _, warning := range r.Warnings {
+			own[warning], own[r.Score+": "+warning] = true, true
+		}
+	}
+	return slices.DeleteFunc(slices.Clone(a.Warnings), func(warning string) bool { return own[warning] })
 }
 
 // asked says what the answer is judged by.
@@ -101,7 +114,7 @@ func (t *text) findings(q ask.Question, r ask.Result) {
 func (t *text) limits(label string, r ask.Result, worded func(ask.Finding) string) {
 	var all []string
 	for _, f := range r.Cutoffs {
-		if limits := worded(f); limits != "" {
+		if limits := words.Brief(worded(f)); limits != "" {
 			all = append(all, "at "+f.Cutoff.String()+" "+limits)
 		}
 	}
@@ -146,14 +159,14 @@ func cutoffTable(q ask.Question, r ask.Result) string {
 }
 
 func judgedRow(label string, f ask.Finding, r ask.Reading) []string {
-	ratio, verdict := "none counted", ""
+	ratio, verdict := "none", ""
 	if f.Ratio != nil {
-		ratio = words.RatioNumber(*f.Ratio)
+		ratio = words.Brief(words.RatioNumber(*f.Ratio))
 	}
 	if f.Verdict != nil {
 		verdict = words.Line(*f.Verdict)
 	}
-	return []string{label, words.Share(r.CurveShare), words.Share(f.CountedShare), words.SignedGap(r.GapPoints),
+	return []string{label, words.Brief(words.Share(r.CurveShare)), words.Brief(words.Share(f.CountedShare)), words.SignedGap(r.GapPoints),
 		words.SignedLimits(r), ratio, words.SignedHeads(f), verdict}
 }
 
@@ -162,7 +175,7 @@ func otherRow(label string, f ask.Finding, r ask.Reading) []string {
 	if r.Verdict != nil {
 		verdict = "(" + words.Line(*r.Verdict) + ")"
 	}
-	return []string{label, words.Share(r.CurveShare), words.Share(f.CountedShare), words.SignedGap(r.GapPoints),
+	return []string{label, words.Brief(words.Share(r.CurveShare)), words.Brief(words.Share(f.CountedShare)), words.SignedGap(r.GapPoints),
 		words.SignedLimits(r), "", "", verdict}
 }
 

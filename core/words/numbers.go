@@ -45,6 +45,13 @@ func significantDecimals(x float64, digits int) int {
 	return max(0, digits-1-exponent)
 }
 
+// brief is shorter where a table has no room.
+var brief = strings.NewReplacer("under ", "<", "over ", ">")
+
+// Brief is a printed figure for a narrow table: "<0.0001%" for "under
+// 0.0001%".
+func Brief(figure string) string { return brief.Replace(figure) }
+
 // Number prints a score or another plain number in its shortest form: "70",
 // "25.5". Digits past the twelfth are left out: they come from adding up
 // steps, not from anybody's score.

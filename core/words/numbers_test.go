@@ -109,3 +109,11 @@ func TestZ(t *testing.T) {
 		assert.Equal(t, expected, Z(z))
 	}
 }
+
+func TestBrief(t *testing.T) {
+	for figure, expected := range map[string]string{
+		Share(1e-9): "<0.0001%", Share(1 - 1e-9): ">99.9999%", Share(0.034): "3.4%", RatioNumber(2000): ">1,000", RatioNumber(1e-6): "<0.001",
+	} {
+		assert.Equal(t, expected, Brief(figure))
+	}
+}
