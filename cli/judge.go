@@ -181,17 +181,17 @@ func (j *judging) write(answer ask.Answer) error {
 // warn repeats the warnings on stderr: text has them in it, but nobody reads
 // the other formats as they go by.
 func (j *judging) warn(answer ask.Answer) {
-	say := func(about string, warnings []string) {
-		for _, warning := range warnings {
-			fmt.Fprintf(j.stderr, "tailgap: warning: %s%s\n", about, words.Line(warning))
-		}
+	say := func(about, warning string) {
+		fmt.Fprintf(j.stderr, "tailgap: warning: %s%s\n", about, words.Line(warning))
 	}
-	say("", answer.Warnings)
+	for _, warning := range answer.Warnings { // those about one score are among them
+		say("", warning)
+	}
 	for _, result := range answer.Results {
-		name := words.Name(result.Score)
-		say(name+": ", result.Warnings)
 		for _, finding := range result.Cutoffs {
-			say(name+", "+finding.Cutoff.String()+": ", finding.Notes)
+			for _, note := range finding.Notes {
+				say(words.Name(result.Score)+", "+finding.Cutoff.String()+": ", note)
+			}
 		}
 	}
 }
