@@ -58,21 +58,21 @@ func place(stretch ask.Stretch, side cutoff.Side) string {
 // trivial words a stretch that is inside the tolerance only because there are
 // too few people beyond it, or short of it, for a miss to show in points.
 func trivial(q ask.Question, s ask.Sweep, stretch ask.Stretch) string {
-	worst, known, beyond := worstRatio(s, stretch)
-	text := place(stretch, s.Side) + ": too few people "
-	if beyond {
-		text += "here"
-	} else {
-		text += "on the other side"
+	few := fewPeople(s, stretch)
+	text := place(stretch, s.Side) + ": "
+	if q.TooHigh != nil && q.TooLow != nil {
+		text += "too few people " + few.where() + " to matter at "
+	} else { // one of the two shares may be large
+		text += "too small a share " + few.where() + " to miss by more than "
 	}
-	text += " to matter at " + within(q.TooHigh, q.TooLow)
-	if !known {
+	text += within(q.TooHigh, q.TooLow)
+	switch {
+	case !few.counted:
 		return text + "; none were counted."
-	}
-	if worst >= 5 || worst <= 0.2 {
-		text += "; the curve is " + ratio(worst)
-	} else {
-		text += "; " + ratio(worst)
+	case few.ratio >= 5 || few.ratio <= 0.2:
+		text += "; the curve is " + ratio(few.ratio)
+	default:
+		text += "; " + ratio(few.ratio)
 	}
 	if stretch.From != stretch.To {
 		text += " at worst"
@@ -80,30 +80,46 @@ func trivial(q ask.Question, s ask.Sweep, stretch ask.Stretch) string {
 	return text + "."
 }
 
-// worstRatio is the ratio of the curve's share to the counted one, furthest
-// from 1 over the stretch. Where most people are beyond the threshold
-// (beyond is false), it is the ratio of the shares on the other side. known is
-// false where nobody was counted.
-func worstRatio(s ask.Sweep, stretch ask.Stretch) (worst float64, known, beyond bool) {
-	beyond = true
+// few is what is known of the few people beyond the thresholds of a stretch,
+// or on the other side of them where most people are beyond.
+type few struct {
+	here, opposite bool    // where they are; both in a stretch that spans the middle
+	counted        bool    // anybody was counted
+	ratio          float64 // of the curve's share to the counted one, furthest from 1
+}
+
+func fewPeople(s ask.Sweep, stretch ask.Stretch) few {
+	var f few
 	furthest := -1.0
 	for i, threshold := range s.Threshold {
-		if threshold < stretch.From || threshold > stretch.To || i >= len(s.CurveShare) || i >= len(s.CountedShare) {
+		if threshold < stretch.From || threshold > stretch.To {
 			continue
 		}
 		curve, count := s.CurveShare[i], s.CountedShare[i]
-		beyond = count <= 0.5
-		if !beyond {
+		if count <= 0.5 {
+			f.here = true
+		} else {
+			f.opposite = true
 			curve, count = 1-curve, 1-count
 		}
 		if count <= 0 {
 			continue
 		}
 		if far := math.Abs(math.Log(curve / count)); far > furthest {
-			worst, known, furthest = curve/count, true, far
+			f.counted, f.ratio, furthest = true, curve/count, far
 		}
 	}
-	return worst, known, beyond
+	return f
+}
+
+func (f few) where() string {
+	switch {
+	case f.here && f.opposite:
+		return "here or on the other side"
+	case f.opposite:
+		return "on the other side"
+	}
+	return "here"
 }
 
 // Worst says where the gap is largest: "The gap is largest at 30 or above:

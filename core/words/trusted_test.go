@@ -21,7 +21,7 @@ func swept(side cutoff.Side, trusted ...ask.Stretch) ask.Sweep {
 
 func TestTrusted(t *testing.T) {
 	q := ask.NewQuestion()
-	q.TooHigh = points(1)
+	q.TooHigh, q.TooLow = points(1), points(1)
 	middle := ask.Stretch{From: 14, To: 27}
 	for _, c := range []struct {
 		name     string
@@ -37,28 +37,36 @@ func TestTrusted(t *testing.T) {
 		{"an empty tail beside a stretch", swept(cutoff.AtLeast, middle, ask.Stretch{From: 38, To: 40, Trivial: true}),
 			[]string{
 				"From 14 to 27 (at or above) the curve is within the tolerance, whatever threshold is taken.",
-				"From 38 to 40 (at or above): too few people here to matter at 1 point too high; the curve is 8 times too low at worst.",
+				"From 38 to 40 (at or above): too few people here to matter at 1 point too high or too low; the curve is 8 times too low at worst.",
 			}},
 		{"only an empty tail", swept(cutoff.Above, ask.Stretch{From: 38, To: 38, Trivial: true}),
 			[]string{
 				"Nowhere on this scale (above) where there are people enough to matter can the curve be trusted at this tolerance.",
-				"At 38 (above): too few people here to matter at 1 point too high; 80 by the curve for every 100 counted.",
+				"At 38 (above): too few people here to matter at 1 point too high or too low; 80 by the curve for every 100 counted.",
 			}},
 		{"nobody counted", swept(cutoff.AtLeast, middle, ask.Stretch{From: 40, To: 40, Trivial: true}),
 			[]string{
 				"From 14 to 27 (at or above) the curve is within the tolerance, whatever threshold is taken.",
-				"At 40 (at or above): too few people here to matter at 1 point too high; none were counted.",
+				"At 40 (at or above): too few people here to matter at 1 point too high or too low; none were counted.",
 			}},
 		{"nearly everybody", swept(cutoff.AtLeast, ask.Stretch{From: 1, To: 1, Trivial: true}, middle),
 			[]string{
-				"At 1 (at or above): too few people on the other side to matter at 1 point too high; the curve is 6 times too low.",
+				"At 1 (at or above): too few people on the other side to matter at 1 point too high or too low; the curve is 6 times too low.",
 				"From 14 to 27 (at or above) the curve is within the tolerance, whatever threshold is taken.",
+			}},
+		{"both ends", swept(cutoff.AtLeast, ask.Stretch{From: 1, To: 40, Trivial: true}),
+			[]string{
+				"Nowhere on this scale (at or above) where there are people enough to matter can the curve be trusted at this tolerance.",
+				"From 1 to 40 (at or above): too few people here or on the other side to matter at 1 point too high or too low; the curve is 8 times too low at worst.",
 			}},
 	} {
 		t.Run(c.name, func(t *testing.T) {
 			assert.Equal(t, c.expected, Trusted(q, ask.Result{}, c.sweep))
 		})
 	}
+	q.TooLow = nil
+	assert.Equal(t, "At 39 (at or above): too small a share here to miss by more than 1 point too high; the curve is 8 times too low.",
+		Trusted(q, ask.Result{}, swept(cutoff.AtLeast, ask.Stretch{From: 39, To: 39, Trivial: true}))[1])
 	assert.Empty(t, Trusted(ask.NewQuestion(), ask.Result{}, swept(cutoff.AtLeast, middle)), "no tolerance")
 }
 
