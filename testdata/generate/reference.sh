@@ -1,7 +1,7 @@
 #!/bin/sh
 # Makes the check values again. Run from testdata:
 #   sh generate/reference.sh            interval/, worked/, nist/: about 2 minutes
-#   sh generate/reference.sh all        open/ and expected/ too: about 15 minutes more
+#   sh generate/reference.sh all        open/ and expected/ too: about 8 minutes more
 # Needs R and, for python3, NumPy, SciPy and mpmath; "all" also needs the R
 # packages boot, MASS, psychotools, nortest, tseries, fBasics, e1071, jsonlite
 # and the Python package statsmodels.
