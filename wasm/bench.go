@@ -7,6 +7,7 @@ import (
 	"errors"
 	"slices"
 	"strings"
+	"time"
 
 	"tailgap/core/ask"
 	"tailgap/core/demo"
@@ -60,7 +61,7 @@ func (b *bench) answer(r request, post func(reply)) (ask.Answer, error) {
 	if err := b.readAs(options); err != nil {
 		return ask.Answer{}, err
 	}
-	return ask.Judge(context.Background(), question, b.sample, tellProgress(r.ID, post))
+	return ask.Judge(context.Background(), question, b.sample, tellProgress(r.ID, post, time.Now))
 }
 
 // readAs reads the file, unless it was read in the same way before.
@@ -78,19 +79,17 @@ func (b *bench) readAs(options intake.Options) error {
 	return nil
 }
 
-// tellProgress posts at most a hundred times: every message costs the page
-// some of its time.
-func tellProgress(id int, post func(reply)) ask.Progress {
-	told := -1
+// tellEvery is how often progress is told: each message costs the page some
+// of its time.
+const tellEvery = 100 * time.Millisecond
+
+func tellProgress(id int, post func(reply), now func() time.Time) ask.Progress {
+	told := now()
 	return func(done, total int) {
-		percent := 100
-		if total > 0 {
-			percent = int(100 * float64(done) / float64(total))
-		}
-		if percent == told {
+		if now().Sub(told) < tellEvery {
 			return
 		}
-		told = percent
+		told = now()
 		data, err := json.Marshal(progress{Done: done, Total: total})
 		if err == nil {
 			post(reply{ID: id, Kind: sayProgress, Data: data})

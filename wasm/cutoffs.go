@@ -41,20 +41,20 @@ func (s *sheet) cutoffSlots() []app.UI {
 	cutoffs := s.desk.question.Cutoffs
 	var parts []app.UI
 	for i, c := range cutoffs {
+		mark, next := "", " "
 		switch {
-		case i > 0 && i == len(cutoffs)-1:
-			parts = append(parts, app.Text(" and "))
-		case i > 0:
-			parts = append(parts, app.Text(", "))
+		case i < len(cutoffs)-2:
+			mark = ","
+		case i == len(cutoffs)-2:
+			next = " and "
 		}
-		parts = append(parts, s.slot(atCutoff(i), c.Words(), s.cutoffEditor(i)))
+		parts = append(parts, s.slot(atCutoff(i), c.Words(), mark, s.cutoffEditor(i)), app.Text(next))
 	}
 	add := "at a cutoff you name"
 	if len(cutoffs) > 0 {
-		parts = append(parts, app.Text(" "))
 		add = "add a cutoff"
 	}
-	return append(parts, s.slot(atAdd, add, s.addEditor))
+	return append(parts, s.slot(atAdd, add, ",", s.addEditor))
 }
 
 // cutoffEditor changes or removes the i-th cutoff.

@@ -129,11 +129,10 @@ var settings = []setting{
 func (s *sheet) moreEditor() app.UI {
 	q := s.desk.question
 	return app.Span().Class("settings").Body(
-		s.settingField(settings[0]), s.headerField(q),
-		s.settingField(settings[1]), s.settingField(settings[2]),
+		s.settingField(settings[0]), s.headerField(q), s.settingField(settings[1]),
+		s.settingField(settings[2]), s.settingField(settings[3]), s.settingField(settings[4]), s.settingField(settings[5]),
 		s.tick("half-step", "Judge with the half-step", q.HalfStep, func(q *ask.Question, on bool) { q.HalfStep = on }),
 		s.tick("everyone", "These are all the people: the gap is exact", q.Everyone, func(q *ask.Question, on bool) { q.Everyone = on }),
-		s.settingField(settings[3]), s.settingField(settings[4]), s.settingField(settings[5]),
 	)
 }
 

@@ -14,25 +14,25 @@ import (
 func (s *sheet) sentence() app.UI {
 	q := s.desk.question
 	parts := []app.UI{
-		app.Text("Of "), s.slot(atData, s.dataWords(), s.dataEditor),
-		app.Text(", how far is "), s.slot(atCurve, curveWords(q), s.curveEditor),
+		app.Text("Of "), s.slot(atData, s.dataWords(), ",", s.dataEditor),
+		app.Text(" how far is "), s.slot(atCurve, curveWords(q), "", s.curveEditor),
 		app.Text(" from the count "),
 	}
 	parts = append(parts, s.cutoffSlots()...)
 	parts = append(parts,
-		app.Text(", if it may be too high by "), s.slot(atHigh, limitWords(q.TooHigh), s.limitEditor(atHigh)),
-		app.Text(" and too low by "), s.slot(atLow, limitWords(q.TooLow), s.limitEditor(atLow)),
-		app.Text(", for "), s.slot(atHeads, headsWords(q), s.headsEditor),
-		app.Text("?"),
+		app.Text(" if it may be too high by "), s.slot(atHigh, limitWords(q.TooHigh), "", s.limitEditor(atHigh)),
+		app.Text(" and too low by "), s.slot(atLow, limitWords(q.TooLow), ",", s.limitEditor(atLow)),
+		app.Text(" for "), s.slot(atHeads, headsWords(q), "?", s.headsEditor),
 	)
 	return app.Section().Class("asking").Aria("label", "The question").Body(
 		app.Div().Class("question").Body(parts...),
-		app.Div().Class("small-print").Body(s.slot(atMore, moreWords(q), s.moreEditor)),
+		app.Div().Class("small-print").Body(s.slot(atMore, moreWords(q), "", s.moreEditor)),
 	)
 }
 
-// slot is one part of the sentence, with its editor below it when it is open.
-func (s *sheet) slot(at place, text string, editor func() app.UI) app.UI {
+// slot is one part of the sentence, with the mark that follows it, and below
+// them its editor when it is open.
+func (s *sheet) slot(at place, text, mark string, editor func() app.UI) app.UI {
 	id, open := string(at), s.open == at
 	return app.Span().Class("slotted").Body(
 		app.Button().Type("button").Class("slot").ID("slot-"+id).Text(text).
@@ -44,6 +44,7 @@ func (s *sheet) slot(at place, text string, editor func() app.UI) app.UI {
 					s.show(ctx, at)
 				}
 			})),
+		app.Text(mark),
 		when(open, func() app.UI {
 			return app.Span().Class("editor").ID("editor-"+id).Role("group").Aria("label", text).
 				OnKeyDown(s.act("keys-"+id, func(ctx app.Context, e app.Event) {

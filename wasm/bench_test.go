@@ -1,0 +1,122 @@
+package main
+
+import (
+	"context"
+	"encoding/json"
+	"testing"
+	"time"
+
+	"github.com/stretchr/testify/assert"
+	"github.com/stretchr/testify/require"
+
+	"tailgap/core/ask"
+	"tailgap/core/demo"
+	"tailgap/core/intake"
+)
+
+func silent(reply) {}
+
+func TestBenchAnswersAsTheCoreDoes(t *testing.T) {
+	question := demo.Question()
+	question.Replicates = 500
+	b := &bench{}
+	r := b.serve(request{ID: 7, Kind: askAnswer, Demo: true, Question: &question}, silent)
+	assert.Equal(t, 7, r.ID)
+	got, err := r.answer()
+	require.NoError(t, err)
+
+	scores, err := intake.Read([]intake.Source{b.source()}, intake.Options{Scores: question.Scores, Missing: question.Missing})
+	require.NoError(t, err)
+	scores.Demo = true
+	want, err := ask.Judge(context.Background(), question, scores, nil)
+	require.NoError(t, err)
+	wantText, err := json.Marshal(want)
+	require.NoError(t, err)
+	gotText, err := json.Marshal(got)
+	require.NoError(t, err)
+	assert.JSONEq(t, string(wantText), string(gotText))
+
+}
+
+func TestProgressIsToldNowAndThen(t *testing.T) {
+	clock := time.Unix(0, 0)
+	var said []progress
+	tell := tellProgress(7, func(r reply) {
+		assert.Equal(t, 7, r.ID)
+		assert.Equal(t, sayProgress, r.Kind)
+		p, err := decoded[progress](r)
+		require.NoError(t, err)
+		said = append(said, p)
+	}, func() time.Time { return clock })
+	for done := range 1000 { // a second of work
+		clock = clock.Add(time.Millisecond)
+		tell(done, 1000)
+	}
+	require.Len(t, said, 10)
+	assert.Equal(t, progress{99, 1000}, said[0])
+	assert.Equal(t, progress{999, 1000}, said[9])
+}
+
+func TestBenchReadsAnewOnlyWhatIsReadDifferently(t *testing.T) {
+	b := &bench{}
+	b.hold("a.csv", []byte("a,b\n1,5\n2,6\n4,7\n99,9\n"))
+	used := func(question ask.Question) int {
+		t.Helper()
+		question.Replicates = 200
+		r := b.serve(request{Kind: askAnswer, Question: &question}, silent)
+		a, err := r.answer()
+		require.NoError(t, err)
+		return a.Results[0].Sample.Used
+	}
+	q := ask.NewQuestion()
+	q.Scores = []string{"a"}
+	assert.Equal(t, 4, used(q))
+	b.data = nil // nobody should look at it again
+	assert.Equal(t, 4, used(q))
+	b.data = []byte("a,b\n1,5\n2,6\n4,7\n99,9\n")
+	q.Missing = []string{"99"}
+	assert.Equal(t, 3, used(q))
+	q.Scores = []string{"b"}
+	assert.Equal(t, 4, used(q))
+}
+
+func TestBenchFailsInSentences(t *testing.T) {
+	question := ask.NewQuestion()
+	question.Scores = []string{"c"}
+	tests := []struct {
+		name string
+		data string
+		r    request
+		want string
+	}{
+		{"no such column", "a,b\n1,2\n", request{Kind: askAnswer, Question: &question}, `there is no column "c"`},
+		{"an empty file", "", request{Kind: askColumns}, "empty"},
+		{"no question", "a\n1\n", request{Kind: askAnswer}, "without a question"},
+		{"an unknown wish", "a\n1\n", request{Kind: "dance"}, "doesn't know"},
+	}
+	for _, test := range tests {
+		t.Run(test.name, func(t *testing.T) {
+			b := &bench{}
+			b.hold("x.csv", []byte(test.data))
+			r := b.serve(test.r, silent)
+			assert.Contains(t, r.Error, test.want)
+			assert.Nil(t, r.Data)
+		})
+	}
+}
+
+func TestGuardedTurnsAPanicIntoAnError(t *testing.T) {
+	r := guarded(3, askAnswer, func() (any, error) { panic("a hole in the floor") })
+	assert.Equal(t, 3, r.ID)
+	assert.Equal(t, askAnswer, r.Kind)
+	assert.Contains(t, r.Error, "a hole in the floor")
+	assert.Nil(t, r.Data)
+	_, err := r.answer()
+	assert.ErrorContains(t, err, "a hole in the floor")
+}
+
+func TestShortName(t *testing.T) {
+	for path, want := range map[string]string{"a.csv": "a.csv", "/x/y/a.csv": "a.csv", `C:\fakepath\a.csv`: "a.csv"} {
+		assert.Equal(t, want, shortName(path))
+	}
+}
