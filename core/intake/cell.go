@@ -183,11 +183,11 @@ func isThousands(before, after string) bool {
 // parseFloat reads sign, digits, point and exponent, and none of the other
 // things that strconv takes for a number.
 func parseFloat(s string) (float64, kind) {
-	switch strings.ToLower(strings.TrimLeft(s, "+-")) {
-	case "inf", "infinity", "∞":
-		return 0, infinite
-	}
 	if strings.Trim(s, "0123456789+-.eE") != "" {
+		switch strings.ToLower(strings.TrimLeft(s, "+-")) {
+		case "inf", "infinity", "∞":
+			return 0, infinite
+		}
 		return 0, unreadable
 	}
 	x, err := strconv.ParseFloat(s, 64)
@@ -201,6 +201,9 @@ func parseFloat(s string) (float64, kind) {
 }
 
 func isBlank(cell string) bool {
+	if len(cell) > len("null") {
+		return false
+	}
 	switch strings.ToLower(cell) {
 	case "", ".", "na", "n/a", "nan", "null":
 		return true
