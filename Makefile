@@ -6,7 +6,7 @@ WASM     := GOOS=js GOARCH=wasm
 SUDO     := $(shell [ "$$(id -u)" = 0 ] || echo sudo)
 INSTALL  := $(SUDO) apt-get update && $(SUDO) apt-get install -y
 
-.PHONY: build page demo test tools lint unit wasm-test browser-test bench fuzz fmt reference clean
+.PHONY: build page demo test tools lint wasm-test bench fuzz fmt reference clean
 .DEFAULT_GOAL := build
 
 ## build: bin/tailgap, with the page in it, and dist/tailgap.html
@@ -29,7 +29,7 @@ demo: build
 
 ## test: everything; fetches what it needs, Chromium and node included
 test: tools lint build
-	$(GO) test ./...
+	$(GO) test -count=1 ./...
 	$(MAKE) wasm-test
 
 # node and Go both have to be found by what runs the tests in WebAssembly.
@@ -69,6 +69,10 @@ fuzz:
 			$(GO) test -run '^$$' -fuzz "^$$name\$$" -fuzztime $(FUZZTIME) "./$$(dirname "$$file")"; \
 		done; \
 	done
+
+## reference: recompute the published check values in testdata; needs R and Python
+reference:
+	cd testdata && sh generate/reference.sh
 
 clean:
 	rm -rf bin dist web/built/tailgap.html

@@ -20,6 +20,6 @@ tailgap on and to see the form of a file that it reads. No real person is in it.
 		ValidArgsFunction: cobra.NoFileCompletions,
 		RunE:              func(*cobra.Command, []string) error { return p.printOrWrite(out, demo.CSV()) },
 	}
-	cmd.Flags().StringVar(&out, "out", "", "write to this `FILE` instead of standard output")
+	fileFlag(cmd.Flags(), &out, "out", "write to this `FILE` instead of standard output", true)
 	return cmd
 }

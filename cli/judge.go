@@ -29,7 +29,7 @@ type judging struct {
 }
 
 func (p *program) judgeCommand() *cobra.Command {
-	j := &judging{program: p, format: "text"}
+	j := &judging{program: p}
 	cmd := &cobra.Command{
 		Use:   "judge FILE...|-|--demo",
 		Short: "Judge the normal curve at cutoffs",
@@ -62,17 +62,16 @@ func (j *judging) declare(cmd *cobra.Command) {
 	flags.SortFlags = false
 	j.question = questionFlags{cmd: cmd}
 	j.question.declare()
-	file := func(to *string, name, usage string) {
-		flags.StringVar(to, name, *to, usage)
-		flags.SetAnnotation(name, groupOf, []string{"What comes out"})
-	}
 	flags.BoolVar(&j.demo, "demo", false, "read the made-up demo data; without --score and --cutoff, ask the demo's question")
 	flags.SetAnnotation("demo", groupOf, []string{"What is read"})
-	file(&j.format, "format", "the form of the results, `text|json|csv`")
-	file(&j.out, "out", "write the results to `FILE`, whole or not at all")
-	file(&j.figure, "figure", "write a figure to `FILE.svg`")
-	file(&j.from, "question", "start from the question in `FILE`; flags that are given override its parts")
-	file(&j.save, "save-question", "write the question to `FILE`: everything that was asked, and none of the data")
+	flags.StringVar(&j.format, "format", "text", "the form of the results, `text|json|csv`")
+	fileFlag(flags, &j.out, "out", "write the results to `FILE`, whole or not at all", true)
+	fileFlag(flags, &j.figure, "figure", "write a figure to `FILE.svg`", false)
+	fileFlag(flags, &j.from, "question", "start from the question in `FILE`; flags that are given override its parts", false)
+	fileFlag(flags, &j.save, "save-question", "write the question to `FILE`: everything that was asked, and none of the data", false)
+	for _, name := range []string{"format", "out", "figure", "question", "save-question"} {
+		flags.SetAnnotation(name, groupOf, []string{"What comes out"})
+	}
 }
 
 // run reads, judges and writes, in this order: a run that goes wrong has

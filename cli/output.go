@@ -7,7 +7,21 @@ import (
 	"io"
 	"os"
 	"path/filepath"
+
+	"github.com/spf13/pflag"
 )
+
+// fileFlag declares a flag that names a file to write or read. Only where
+// streams is true may it be -, a standard stream.
+func fileFlag(flags *pflag.FlagSet, to *string, name, usage string, streams bool) {
+	flags.Func(name, usage, func(path string) error {
+		if path == "" || path == "-" && !streams {
+			return fmt.Errorf("--%s %q names no file; write the name of one", name, path)
+		}
+		*to = path
+		return nil
+	})
+}
 
 // parcel is something finished that is to be written to a file.
 type parcel struct {

@@ -26,6 +26,6 @@ by a double click, works with the network off, and keeps no score.`,
 			return p.printOrWrite(out, page)
 		},
 	}
-	cmd.Flags().StringVar(&out, "out", "", "write the page to this `FILE`; - is standard output")
+	fileFlag(cmd.Flags(), &out, "out", "write the page to this `FILE`; - is standard output", true)
 	return cmd
 }
