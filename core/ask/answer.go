@@ -15,7 +15,7 @@ type Answer struct {
 	Program    string   `json:"program"`
 	Demo       bool     `json:"demo"` // made from the made-up demo data
 	Question   Question `json:"question"`
-	Warnings   []string `json:"warnings"`
+	Warnings   []string `json:"warnings"` // of all results, each led by its score's name where there are several
 	Suppressed []string `json:"suppressed"`
 	Results    []Result `json:"results"`
 }
@@ -26,7 +26,7 @@ type Result struct {
 	Group    *string   `json:"group"`
 	Sample   Described `json:"sample"`
 	Curve    Curve     `json:"curve"`
-	Warnings []string  `json:"warnings"` // about this column; Answer.Warnings are about the whole
+	Warnings []string  `json:"warnings"`
 	Cutoffs  []Finding `json:"cutoffs"`
 	Sweeps   []Sweep   `json:"sweeps"`
 	Worst    Worst     `json:"worst"`

@@ -161,7 +161,7 @@ func TestNotes(t *testing.T) {
 	r := judge(t, q, scores)
 	assert.Contains(t, r.Cutoffs[0].Notes, "9 people were counted at 30 or above: the interval there is wide, and the ratio says little")
 	assert.Contains(t, r.Cutoffs[1].Notes, "31 is outside the scores seen (10 to 30)")
-	assert.Contains(t, r.Cutoffs[2].Notes, "0 people were counted at 8 or below: the interval there is wide, and the ratio says little")
+	assert.Contains(t, r.Cutoffs[2].Notes, "nobody was counted at 8 or below: the interval there is wide, and the ratio says little")
 	assert.NotContains(t, r.Cutoffs[3].Notes, "9 people were counted on the other side of this cutoff: the interval there is wide")
 	far := question(">=60")
 	far.TooHigh, far.TooLow = points(5), points(5)

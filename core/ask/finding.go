@@ -1,6 +1,8 @@
 package ask
 
 import (
+	"math"
+
 	"tailgap/core/cutoff"
 	"tailgap/core/resample"
 	"tailgap/core/verdict"
@@ -36,7 +38,7 @@ func (w *work) result() Result {
 	for _, sweep := range w.sweeps {
 		r.Sweeps = append(r.Sweeps, w.sweep(sweep))
 	}
-	r.Worst = worst(r.Sweeps)
+	r.Worst = worst(r.Sweeps, w.scale.Step > 0)
 	r.Warnings = w.warnings()
 	return r
 }
@@ -144,16 +146,36 @@ func extend(stretches []Stretch, at float64, trivial, goesOn bool) []Stretch {
 	return append(stretches, Stretch{From: at, To: at, Trivial: trivial})
 }
 
-func worst(sweeps []Sweep) Worst {
+// worst is the first of the largest gaps: sweeps of two sides can mirror each
+// other up to rounding.
+func worst(sweeps []Sweep, step bool) Worst {
+	const rounding = 1e-9
 	var w Worst
+	largest := -1.0
 	for _, s := range sweeps {
 		for i, points := range s.GapPoints {
-			if i == 0 && w == (Worst{}) || abs(points) > abs(w.GapPoints) {
+			if size := math.Abs(points); size > largest+rounding {
+				largest = size
 				w = Worst{Side: s.Side, Threshold: s.Threshold[i], GapPoints: points}
+				if !step {
+					w.Side = besides(s.Side, i%2 == 1)
+				}
 			}
 		}
 	}
 	return w
 }
 
-func abs(x float64) float64 { return max(x, -x) }
+// besides is the side that parts the people at the score itself, or just past
+// it, on a scale without a step, where a sweep shows both.
+func besides(side cutoff.Side, past bool) cutoff.Side {
+	switch {
+	case side.Lower() && past:
+		return cutoff.AtMost
+	case side.Lower():
+		return cutoff.Below
+	case past:
+		return cutoff.Above
+	}
+	return cutoff.AtLeast
+}

@@ -147,7 +147,7 @@ func TestSweepsOfEverySideInUse(t *testing.T) {
 			largest = math.Max(largest, math.Abs(g))
 		}
 	}
-	assert.Equal(t, largest, math.Abs(r.Worst.GapPoints))
+	assert.InDelta(t, largest, math.Abs(r.Worst.GapPoints), 1e-9)
 	assert.Equal(t, ">=", judge(t, question("16..20"), scores).Sweeps[0].Side.String(), "a stretch alone is swept as at or above")
 }
 
@@ -161,6 +161,14 @@ func TestSweepWithoutAStepShowsTheJumps(t *testing.T) {
 		assert.Greater(t, s.CountedShare[i], s.CountedShare[i+1])
 		assert.Equal(t, s.CurveShare[i], s.CurveShare[i+1])
 	}
+	worst := -1
+	for i := range s.Threshold {
+		if worst < 0 || math.Abs(s.GapPoints[i]) > math.Abs(s.GapPoints[worst])+1e-9 {
+			worst = i
+		}
+	}
+	side := []cutoff.Side{cutoff.AtLeast, cutoff.Above}[worst%2]
+	assert.Equal(t, ask.Worst{Side: side, Threshold: s.Threshold[worst], GapPoints: s.GapPoints[worst]}, r.Worst)
 }
 
 func TestSweepIsThinnedAboveAThousandThresholds(t *testing.T) {

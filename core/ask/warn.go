@@ -46,7 +46,10 @@ func verdictWord(verdict string) string {
 }
 
 func people(n int) string {
-	if n == 1 {
+	switch n {
+	case 0:
+		return "nobody was"
+	case 1:
 		return "1 person was"
 	}
 	return strconv.Itoa(n) + " people were"

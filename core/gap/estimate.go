@@ -26,13 +26,13 @@ type Estimate struct {
 	z       float64
 }
 
-// At estimates the region from power sums: those of the sample, or of a
-// resample. A fitted curve moves with the sums; a given one stays.
+// At estimates the region from the sums of the sample, or of a resample. A
+// fitted curve moves with the sums; a given one stays. This is the inner loop
+// of every answer: one exponential and one division a tail.
 func (t *Table) At(r *Region, s *Sums, in Inside) Estimate {
-	e := Estimate{N: s.N, Inside: in.K, Counted: in.K / s.N}
+	e := Estimate{N: s.N, Inside: in.K, Counted: in.K * s.perN}
 	if !t.Curve.Fitted {
-		e.z = r.lower.z
-		e.Curve = r.lower.tail
+		e.z, e.Curve = r.lower.z, r.lower.tail
 		if r.stretch {
 			e.Curve -= r.upper.tail
 		}
@@ -47,27 +47,27 @@ func (t *Table) At(r *Region, s *Sums, in Inside) Estimate {
 	}
 	// The influence of a score x on the curve's share is
 	// a(x-mean) + b((x-mean)²-M2).
-	var a, b, ghost float64
-	e.z = (r.lower.point - s.Mean) / s.SD
-	e.slope = curve.Density(e.z)
-	e.Curve = curve.UpperTail(e.z)
-	a = e.slope / s.SD
-	b = a * e.z / (2 * s.SD)
-	ghost = r.lower.ghost - s.Mean
-	g := a*ghost + b*(ghost*ghost-s.M2)
+	e.z = (r.lower.point - s.Mean) * s.perSD
+	e.Curve, e.slope = curve.Tail(e.z)
+	a := e.slope * s.perSD
+	b := a * e.z * 0.5 * s.perSD
+	ghost := r.lower.ghost - s.Mean
+	ghostSquare := ghost * ghost
 	if r.stretch {
-		z := (r.upper.point - s.Mean) / s.SD
-		e.Curve -= curve.UpperTail(z)
-		a2 := curve.Density(z) / s.SD
-		a, b = a-a2, b-a2*z/(2*s.SD)
+		z := (r.upper.point - s.Mean) * s.perSD
+		share, density := curve.Tail(z)
+		e.Curve -= share
+		a, b = a-density*s.perSD, b-density*s.perSD*z*0.5*s.perSD
 		other := r.upper.ghost - s.Mean
-		g = (a*ghost + b*(ghost*ghost-s.M2) + a*other + b*(other*other-s.M2)) / 2
+		ghost, ghostSquare = (ghost+other)/2, (ghostSquare+other*other)/2
 	}
-	e.V = s.N / (s.N - 1) * (a*a*s.M2 + 2*a*b*s.M3 + b*b*(s.M4-s.M2*s.M2))
-	first := in.S1 - in.K*s.Mean
-	second := in.S2 - 2*s.Mean*in.S1 + in.K*s.Mean*s.Mean
-	influence := a*first + b*(second-in.K*s.M2)
-	e.D = (influence+g)/(in.K+1) - (g-influence)/(s.N-in.K+1)
+	g := a*ghost + b*(ghostSquare-s.M2)
+	e.V = s.N / (s.N - 1) * (a*(a*s.M2+2*b*s.M3) + b*b*s.fourth)
+	deviations := in.S1 - in.K*s.Mean
+	squares := in.S2 - s.Mean*(in.S1+deviations)
+	influence := a*deviations + b*(squares-in.K*s.M2)
+	inside, outside := in.K+1, s.N-in.K+1
+	e.D = ((influence+g)*outside - (g-influence)*inside) / (inside * outside)
 	return e
 }
 

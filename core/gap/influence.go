@@ -9,11 +9,8 @@ import (
 // SampleSums are the power sums of the sample itself.
 func (t Table) SampleSums() Sums {
 	m := t.Moments
-	n, sd := float64(m.N), m.SD
-	return Sums{
-		N: n, Mean: 0, SD: 1,
-		M2: m.M2 / (sd * sd), M3: m.M3 / (sd * sd * sd), M4: m.M4 / (sd * sd * sd * sd),
-	}
+	sd := m.SD
+	return newSums(float64(m.N), 0, m.M2/(sd*sd), m.M3/(sd*sd*sd), m.M4/(sd*sd*sd*sd))
 }
 
 // SampleInside are the sums of the sample over a region.

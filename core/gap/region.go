@@ -84,24 +84,26 @@ func (t Table) Between(from, to Threshold) Region {
 	}
 }
 
-// Sums are power sums of a sample, or of a resample of it, in the standard
-// units of the sample; from them every share, gap and standard error follows.
+// Sums describe a sample, or a resample of it, in the standard units of the
+// sample; from them every share, gap and standard error follows.
 type Sums struct {
-	N, Mean, SD, M2, M3, M4 float64 // SD with divisor n-1, central moments with divisor n
+	N, Mean, M2, M3 float64 // central moments with divisor n
+	perSD           float64 // 1/SD, divisor n-1
+	perN            float64 // 1/n
+	fourth          float64 // M4 - M2²: n times the variance of M2
 }
 
 // NewSums turns the sums of 1, u, u², u³ and u⁴ into moments.
 func NewSums(s0, s1, s2, s3, s4 float64) Sums {
-	mean := s1 / s0
-	r2, r3, r4 := s2/s0, s3/s0, s4/s0
+	perN := 1 / s0
+	mean := s1 * perN
+	r2, r3, r4 := s2*perN, s3*perN, s4*perN
 	square := mean * mean
-	m2 := max(0, r2-square)
-	return Sums{
-		N: s0, Mean: mean, SD: math.Sqrt(m2 * s0 / (s0 - 1)),
-		M2: m2,
-		M3: r3 - 3*mean*r2 + 2*mean*square,
-		M4: r4 - 4*mean*r3 + 6*square*r2 - 3*square*square,
-	}
+	return newSums(s0, mean, max(0, r2-square), r3-3*mean*r2+2*mean*square, r4-4*mean*r3+6*square*r2-3*square*square)
+}
+
+func newSums(n, mean, m2, m3, m4 float64) Sums {
+	return Sums{N: n, Mean: mean, M2: m2, M3: m3, perSD: math.Sqrt((n - 1) / (n * m2)), perN: 1 / n, fourth: m4 - m2*m2}
 }
 
 // Inside are the sums of 1, u and u² over the people inside a region.

@@ -31,26 +31,28 @@ func (e Estimate) curveLimits(t float64) (low, high float64) {
 	return curve.UpperTail(math.Sqrt2 * math.Sinh(zeta+t*se)), curve.UpperTail(math.Sqrt2 * math.Sinh(zeta-t*se))
 }
 
-// lowerRoot and upperRoot solve (y-p)² = base + spread·y(1-y) for y.
+// lowerRoot and upperRoot solve (y-p)² = base + spread·y(1-y) for y, below
+// and above p.
 func lowerRoot(p, base, spread float64) float64 {
 	if p*p <= base {
 		return p - math.Sqrt(base)
 	}
-	return root(p, base, spread, -1)
+	return min(p, root(p, base, spread, -1))
 }
 
 func upperRoot(p, base, spread float64) float64 {
 	if (1-p)*(1-p) <= base {
 		return p + math.Sqrt(base)
 	}
-	return root(p, base, spread, +1)
+	return max(p, root(p, base, spread, +1))
 }
 
+// root solves the quadratic in y-p, which loses no digits near 0 and 1; where
+// it has no root worth the name, the spread at p itself is taken.
 func root(p, base, spread, sign float64) float64 {
-	a, b, c := 1+spread, 2*p+spread, p*p-base
-	discriminant := b*b - 4*a*c
-	if discriminant < 0 || a < 0.05 {
+	discriminant := spread*spread + 4*spread*p*(1-p) + 4*(1+spread)*base
+	if discriminant < 0 || 1+spread < 0.05 {
 		return p + sign*math.Sqrt(math.Max(0, base+spread*p*(1-p)))
 	}
-	return (b + sign*math.Sqrt(discriminant)) / (2 * a)
+	return p + (spread*(1-2*p)+sign*math.Sqrt(discriminant))/(2*(1+spread))
 }

@@ -95,6 +95,22 @@ func bca(sorted []float64, estimate, a float64) (low, high float64) {
 	return at(-z), at(z)
 }
 
+// medianBCa are the medians of the BCa limits over nine seeds. Newcomb's two
+// outliers put the upper limit on one of two atoms, about 8.6 and 9.7, by the
+// luck of the draw: R's is on the one, SciPy's on the other.
+func medianBCa(table gap.Table, region gap.Region) (low, high float64) {
+	var lows, highs []float64
+	for seed := range uint64(9) {
+		gaps := replicates(table, []gap.Region{region}, seed)[0]
+		e := table.Estimate(region)
+		l, h := bca(gaps, 100*e.Gap(1), acceleration(table, region))
+		lows, highs = append(lows, l), append(highs, h)
+	}
+	slices.Sort(lows)
+	slices.Sort(highs)
+	return lows[4], highs[4]
+}
+
 func TestResamplerAgreesWithBoot(t *testing.T) {
 	checked := 0
 	for _, path := range testdata.Expected() {
@@ -150,6 +166,9 @@ func TestResamplerAgreesWithBoot(t *testing.T) {
 					accelerated = [2]float64{-accelerated[1], -accelerated[0]}
 				}
 				low, high := bca(gaps[at], 100*e.Gap(1), acceleration(table, regions[at]))
+				if tolerance == 0.5 {
+					low, high = medianBCa(table, regions[at])
+				}
 				for _, limit := range [][2]float64{
 					{percentile[0], quantile(gaps[at], 0.025)}, {percentile[1], quantile(gaps[at], 0.975)},
 					{accelerated[0], low}, {accelerated[1], high},

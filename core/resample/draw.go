@@ -34,17 +34,32 @@ func (d drawer) draw(r *stream, into []int32) {
 		return
 	}
 	clear(into)
-	// Two draws from each 64 bits by Lemire's (2019) multiply-shift, without
-	// its rejection step: the chances of two people differ by less than
-	// n/2³², far below what any number of replicates could show.
-	n := uint64(len(d.rows))
-	for i := uint64(0); i+1 < n; i += 2 {
-		bits := r.Uint64()
-		into[d.rows[(bits>>32)*n>>32]]++
-		into[d.rows[(bits&0xffffffff)*n>>32]]++
+	if len(d.rows) <= 1<<12 {
+		d.drawRows(r, into, 16)
+	} else {
+		d.drawRows(r, into, 32)
 	}
-	if n%2 == 1 {
-		into[d.rows[(r.Uint64()>>32)*n>>32]]++
+}
+
+// drawRows draws people by Lemire's (2019) multiply-shift with rejection, so
+// that everyone has the same chance, from pieces of so many bits.
+func (d drawer) drawRows(r *stream, into []int32, bits uint) {
+	n := uint64(len(d.rows))
+	mask := uint64(1)<<bits - 1
+	reject := (mask + 1) % n
+	for left := n; ; {
+		random := r.Uint64()
+		for range 64 / bits {
+			product := (random & mask) * n
+			random >>= bits
+			if product&mask < reject {
+				continue
+			}
+			into[d.rows[product>>bits]]++
+			if left--; left == 0 {
+				return
+			}
+		}
 	}
 }
 

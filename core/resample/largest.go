@@ -1,7 +1,5 @@
 package resample
 
-import "math"
-
 // largest keeps the k largest of the values it is offered, in a buffer of
 // twice that size: when the buffer is full, the smaller half is thrown away
 // by selection. So a high quantile of many replicates needs neither all of
@@ -9,11 +7,11 @@ import "math"
 type largest struct {
 	values []float64 // at most 2k
 	k      int
-	floor  float64 // every value below it is out
+	floor  float64 // every value below it is out; values are not negative
 }
 
 func newLargest(k int) largest {
-	return largest{k: k, floor: math.Inf(-1)}
+	return largest{k: k, floor: 0}
 }
 
 func (l *largest) offer(x float64) {

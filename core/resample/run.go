@@ -112,7 +112,7 @@ func merge(plan Plan, studies []*study) Quantiles {
 				for s, each := range studies {
 					parts[s] = of(each, i, w)
 				}
-				all[i][w] = kth(parts)
+				all[i][w] = math.Sqrt(kth(parts))
 			}
 		}
 		return all

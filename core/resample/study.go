@@ -2,7 +2,6 @@ package resample
 
 import (
 	"context"
-	"math"
 
 	"tailgap/core/gap"
 )
@@ -20,8 +19,12 @@ type study struct {
 	stream    stream
 	region    []largest // by region, then weight
 	group     []largest // by group, then weight
-	sup       []float64
+	sup       []fraction
 }
+
+// fraction is a squared studentised gap, with the division left undone: most
+// are compared and forgotten.
+type fraction struct{ square, variance float64 }
 
 // target is what stays the same in every replicate of one region and weight.
 type target struct {
@@ -38,7 +41,7 @@ func newStudy(plan Plan, d drawer, estimates []gap.Estimate) *study {
 	s := &study{
 		plan: plan, drawer: d, estimates: estimates,
 		counts: make([]int32, distinct), tails: make([]gap.Inside, distinct+1),
-		powers: make([]powers, distinct), sup: make([]float64, len(plan.Weights)),
+		powers: make([]powers, distinct), sup: make([]fraction, len(plan.Weights)),
 	}
 	for i, u := range plan.Table.U {
 		s.powers[i] = powers{u, u * u, u * u * u, u * u * u * u}
@@ -79,12 +82,14 @@ func (s *study) replicate() {
 		for ; region < group[0]; region++ {
 			s.judge(region, sums)
 		}
-		clear(s.sup)
+		for w := range s.sup {
+			s.sup[w] = fraction{0, 1}
+		}
 		for ; region < group[1]; region++ {
 			s.judge(region, sums)
 		}
 		for w, largest := range s.sup {
-			s.group[g*len(s.sup)+w].offer(largest)
+			s.group[g*len(s.sup)+w].offer(largest.square / largest.variance)
 		}
 	}
 	for ; region < len(s.plan.Regions); region++ {
@@ -110,22 +115,22 @@ func (s *study) sum() gap.Sums {
 	return gap.NewSums(tail.K, tail.S1, tail.S2, s3, s4)
 }
 
-// judge records the studentised gap of one region, at each weight.
+// judge records the squared studentised gap of one region, at each weight.
 func (s *study) judge(region int, sums gap.Sums) {
 	r := &s.plan.Regions[region]
 	from, to := &s.tails[r.From], &s.tails[r.To]
 	inside := gap.Inside{K: from.K - to.K, S1: from.S1 - to.S1, S2: from.S2 - to.S2}
 	e := s.plan.Table.At(r, &sums, inside)
+	at := region * len(s.plan.Weights)
 	for w, weight := range s.plan.Weights {
-		at := region*len(s.plan.Weights) + w
-		target := &s.scale[at]
-		variance := max(e.V+e.KappaUnfloored(weight)*target.binomial, target.least)
-		t := math.Abs(e.Gap(weight)-target.gap) * math.Sqrt(e.N/variance)
-		if largest := &s.region[at]; t >= largest.floor {
-			largest.offer(t)
+		target, sup := &s.scale[at+w], &s.sup[w]
+		d := e.Gap(weight) - target.gap
+		f := fraction{d * d * e.N, max(e.V+e.KappaUnfloored(weight)*target.binomial, target.least)}
+		if kept := &s.region[at+w]; f.square >= kept.floor*f.variance {
+			kept.offer(f.square / f.variance)
 		}
-		if t > s.sup[w] {
-			s.sup[w] = t
+		if f.square*sup.variance > sup.square*f.variance {
+			*sup = f
 		}
 	}
 }

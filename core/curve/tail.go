@@ -1,0 +1,47 @@
+package curve
+
+import "math"
+
+// Tail is the share of a standard normal curve at or beyond z together with
+// its density there. Both come from one exponential, which makes this the
+// faster way where both are wanted many times over: Cody's (1969) rational
+// approximations of erf and of exp(x²)erfc(x), x = z/√2. Relative error
+// below 1e-14 for |z| < 8, below 1e-12 as far as the share can be written.
+func Tail(z float64) (share, density float64) {
+	x := z * (1 / math.Sqrt2)
+	scale := math.Exp(-0.5 * z * z)
+	density = scale * (1 / math.Sqrt(2*math.Pi))
+	size := math.Abs(x)
+	if size <= 0.46875 {
+		return 0.5 - 0.5*x*erfNearZero(x*x), density
+	}
+	if size <= 4 {
+		share = 0.5 * scale * scaledErfcMiddle(size)
+	} else {
+		share = 0.5 * scale * scaledErfcFar(size)
+	}
+	if x < 0 {
+		share = 1 - share
+	}
+	return share, density
+}
+
+// erfNearZero is erf(x)/x from y = x², for |x| <= 0.46875.
+func erfNearZero(y float64) float64 {
+	return ((((1.85777706184603153e-1*y+3.16112374387056560)*y+1.13864154151050156e2)*y+3.77485237685302021e2)*y + 3.20937758913846947e3) /
+		((((y+2.36012909523441209e1)*y+2.44024637934444173e2)*y+1.28261652607737228e3)*y + 2.84423683343917062e3)
+}
+
+// scaledErfcMiddle is exp(x²)erfc(x) for 0.46875 <= x <= 4.
+func scaledErfcMiddle(x float64) float64 {
+	return ((((((((2.15311535474403846e-8*x+5.64188496988670089e-1)*x+8.88314979438837594)*x+6.61191906371416295e1)*x+2.98635138197400131e2)*x+8.81952221241769090e2)*x+1.71204761263407058e3)*x+2.05107837782607147e3)*x + 1.23033935479799725e3) /
+		((((((((x+1.57449261107098347e1)*x+1.17693950891312499e2)*x+5.37181101862009858e2)*x+1.62138957456669019e3)*x+3.29079923573345963e3)*x+4.36261909014324716e3)*x+3.43936767414372164e3)*x + 1.23033935480374942e3)
+}
+
+// scaledErfcFar is exp(x²)erfc(x) for x >= 4.
+func scaledErfcFar(x float64) float64 {
+	y := 1 / (x * x)
+	r := y * (((((1.63153871373020978e-2*y+3.05326634961232344e-1)*y+3.60344899949804439e-1)*y+1.25781726111229246e-1)*y+1.60837851487422766e-2)*y + 6.58749161529837803e-4) /
+		(((((y+2.56852019228982242)*y+1.87295284992346725)*y+5.27905102951428412e-1)*y+6.05183413124413191e-2)*y + 2.33520497626869185e-3)
+	return (1/1.7724538509055160273 - r) / x
+}
