@@ -24,7 +24,7 @@ func TestReadCell(t *testing.T) {
 	all := func(k kind) [3]want { return [3]want{{0, k}, {0, k}, {0, k}} }
 	tests := map[string][3]want{ // under commaAmbiguous, commaDecimal, commaUnlessThousands
 		"0": one(0), "12": one(12), "-12": one(-12), "+12": one(12), "−12": one(-12), "007": one(7),
-		"-0": one(0), "-0.0": one(0), "0.5": one(.5), ".5": one(.5), "-.5": one(-.5), "5.": one(5),
+		"-0": one(0), "-0.0": one(0), "-0e5": one(0), "0.5": one(.5), ".5": one(.5), "-.5": one(-.5), "5.": one(5),
 		" 12 ": one(12), "\t12": one(12), "\u00a012\u202f": one(12), "\ufeff12\u200b": one(12), "\xa012": one(12),
 		"1e3": one(1000), "1E-2": one(.01), "2.5e+1": one(25), "1e-999": one(0),
 		"0.1": one(.1), "123456789012.345": one(123456789012.345), "999999999999999": one(999999999999999),
@@ -117,6 +117,7 @@ func TestDetectDelimiter(t *testing.T) {
 		{"\"a\"\";b\",c\n\"d;\"\"\"\"e\",f\n", true, ','},
 		{"\"a;\nb;\",c\n1,2\n", true, ','},
 		{"a,b\n5\" x;y,2\n1;2,3\n", true, ','},
+		{"a, \"x;y\"\n1, \"2;3\"\n", true, ','},
 		{"a,b\n1,2,3\n4,5,6\n", true, ','},
 		{"a;b\n1;\"2,3\n4;5", true, ';'},
 		{cut, false, ';'},

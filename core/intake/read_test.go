@@ -54,6 +54,7 @@ func TestRead(t *testing.T) {
 		{name: "a line break in a name", text: "id,\"score\n(raw)\"\n1,12\n2,?\n", ask: "Score (raw)", label: "score (raw)", scores: []float64{12}, dropped: []sample.Dropped{left("unreadable", 1, "line 4")}},
 		{name: "a row longer and a row without the last cell", text: "id,score,note\n1,12,a,b\n2,15\n", ask: "score", scores: []float64{12, 15}},
 		{name: "a delimiter at the end of every row", text: "score,age\n12,40,\n15,41,\n18,42,late\n", ask: "score", scores: []float64{12, 15, 18}},
+		{name: "most rows longer, but not all", text: "score,age\n12,40,a\n15,41\n18,42,b\n21,43,c\n", ask: "score", scores: []float64{12, 15, 18, 21}},
 		{name: "a header with a name too few, by number", text: "score,age\n1,12,40\n2,15,41\n", ask: "2", label: "age", scores: []float64{12, 15}},
 		{name: "commas in the cells of a file with semicolons", text: "id;score, raw\n1;3,5\n2;4,5\n", ask: "score, raw", label: "score, raw", scores: []float64{3.5, 4.5}},
 		{name: "semicolons in some cells of a file with commas", text: "note,score\na;b,12\nc,15\n", ask: "score", scores: []float64{12, 15}},

@@ -94,6 +94,8 @@ func TestReadRefuses(t *testing.T) {
 			`a quote that opens in the row on line 2 isn't closed properly, so that it runs together with the rows down to line 3; close it where it belongs or take it out`},
 		{"a quote that swallows a row", "id,note,score\n1,\"a,12\n2,b\",15\n3,c,18\n", []string{"score"}, "", nil,
 			`a quote that opens in the row on line 2 closes only on line 3, and its lines look like rows of their own; close it where it belongs or take it out`},
+		{"a quote that swallows a code", "id,note,score\n1,\"a,99\n2,b\",15\n", []string{"score"}, "", []string{"99"},
+			`a quote that opens in the row on line 2 closes only on line 3, and its lines look like rows of their own; close it where it belongs or take it out`},
 		{"a quote that swallows cells", "score\n\"12\n13\n14\"\n15\n", nil, "", nil,
 			`a quote that opens in the row on line 2 closes only on line 4, and its lines look like rows of their own; close it where it belongs or take it out`},
 		{"a quote in the header", "id,sc\"ore\n1,12\n", []string{"2"}, "", nil,
