@@ -65,48 +65,86 @@ func (c counting) share(score float64, after bool) float64 {
 // bin is a bar of counted scores: the share of people between two scores.
 type bin struct{ from, to, share float64 }
 
+// edge is a score at which one bar ends and the next begins; after: the
+// people just at it stand in the bar that ends there.
+type edge struct {
+	at    float64
+	after bool
+}
+
 // mostBars is how many scores are drawn one by one; more are binned.
 const mostBars = 120
 
 // bins parts the counted people into bars: one for each score of a scale with
 // a step, wider ones where there would be too many, and a histogram on a
 // scale without a step. Edges stand at round distances from the cutoff, so
-// that no bar is partly beyond it. All are width wide.
+// that no bar is partly beyond it. All bars are width wide but the last one
+// within a stretch. Empty bars are left out.
 func bins(r ask.Result, c counting, at cutoff.Cutoff, f Frame) (all []bin, width float64) {
 	if len(c.split) < 2 {
 		return nil, 1
 	}
 	first, last := c.split[0], c.split[len(c.split)-1]
-	px := f.Right - f.Left
-	if step := r.Sample.Step; step != nil {
-		width = roundUp(max(1, (last-first)/min(mostBars, px/3) / *step)) * *step
-	} else {
-		// Rice's rule for the number of bars: twice the cube root of n.
-		width = roundUp((last - first) / min(2*math.Cbrt(float64(r.Sample.Used)), px/8))
-	}
+	width = barWidth(r, last-first, f)
 	if !(width > 0) || math.IsInf(width, 0) {
 		return nil, 1
 	}
-	edge := splits(r, at)[0]
-	if edge < first || edge > last { // no bar is near it
-		edge = first
-		if r.Sample.Step == nil {
-			edge = math.Floor(first/width) * width
-		}
-	}
-	after := at.Side.Strict() && r.Sample.Step == nil
-	// One bar more on both sides: rounding, or people on the very edge, may
-	// have put somebody there. Empty bars are left out.
-	start, stop := math.Floor((first-edge)/width)-1, math.Ceil((last-edge)/width)+1
-	for i := range int(stop - start) {
-		k := start + float64(i)
-		b := bin{from: edge + k*width, to: edge + (k+1)*width}
-		b.share = c.share(b.to, after) - c.share(b.from, after)
-		if b.share > 0 {
-			all = append(all, b)
+	edges := edgesAbout(r, at, first, last, width)
+	for i := 1; i < len(edges); i++ {
+		from, to := edges[i-1], edges[i]
+		if share := c.share(to.at, to.after) - c.share(from.at, from.after); share > 0 {
+			all = append(all, bin{from.at, to.at, share})
 		}
 	}
 	return all, width
+}
+
+// barWidth is how wide the bars over a range of scores are: round, with no
+// more bars than can be told apart.
+func barWidth(r ask.Result, span float64, f Frame) float64 {
+	px := f.Right - f.Left
+	if step := r.Sample.Step; step != nil {
+		return roundUp(max(1, span/min(mostBars, px/3) / *step)) * *step
+	}
+	// Rice's rule, twice the cube root of n, says how many bars; the nearest
+	// round width may give up to 1.4 times as many.
+	return roundUp(span / min(2.8*math.Cbrt(float64(r.Sample.Used)), px/8))
+}
+
+// edgesAbout lists edges from below the first score to above the last: at
+// whole widths from where the cutoff splits the people.
+func edgesAbout(r ask.Result, c cutoff.Cutoff, first, last, width float64) []edge {
+	at := splits(r, c)
+	low, high := edge{at[0], c.Side.Strict()}, edge{at[0], c.Side.Strict()}
+	if len(at) == 2 {
+		high = edge{at[1], true} // both ends of a stretch are in it
+	}
+	if low.at < first || high.at > last { // not among the scores: no bar is near it
+		low = edge{first, false}
+		if r.Sample.Step == nil {
+			low.at = math.Floor(first/width) * width
+		}
+		high = low
+	}
+	// One bar more on both sides: rounding, or people on the very edge, may
+	// have put somebody there.
+	var edges []edge
+	for i := int((low.at-first)/width) + 2; i > 0; i-- {
+		edges = append(edges, edge{low.at - float64(i)*width, low.after})
+	}
+	edges = append(edges, low)
+	// Within a stretch what is left over joins the last bar if it is less
+	// than half a bar.
+	for i := 1; float64(i) < (high.at-low.at)/width-0.499; i++ {
+		edges = append(edges, edge{low.at + float64(i)*width, low.after})
+	}
+	if high != low {
+		edges = append(edges, high)
+	}
+	for i := range int((last-high.at)/width) + 2 {
+		edges = append(edges, edge{high.at + float64(i+1)*width, high.after})
+	}
+	return edges
 }
 
 // roundUp is the least of 1, 2, 5, 10, ... (and of 0.5, 0.2, ...) that is not

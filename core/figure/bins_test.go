@@ -67,34 +67,49 @@ func TestBarsHoldEveryone(t *testing.T) {
 		} else {
 			thresholds = sortedDistinct(scores)
 		}
-		at := cutoff.Cutoff{Side: rapid.SampledFrom(sidesInUse).Draw(t, "side"), At: rapid.SampledFrom(scores).Draw(t, "at")}
+		at := cutoff.Cutoff{Side: rapid.SampledFrom(append(sidesInUse, cutoff.Stretch)).Draw(t, "side"),
+			At: rapid.SampledFrom(scores).Draw(t, "at"), To: rapid.SampledFrom(scores).Draw(t, "to")}
+		if at.Side == cutoff.Stretch && at.To < at.At {
+			at.At, at.To = at.To, at.At
+		}
 		side := rapid.SampledFrom(sidesInUse).Draw(t, "sweep")
 		f := Frame{Left: 46, Right: rapid.Float64Range(300, 1600).Draw(t, "right"), Low: low, High: high}
 
 		bars, width := bins(r, newCounting(r, sweepOf(scores, thresholds, side, step)), at, f)
-		edge := splits(r, at)[0]
-		total, beyondIt := 0.0, 0.0
+		from, to := beyond(at, splits(r, at), Frame{Low: math.Inf(-1), High: math.Inf(1)})
+		total, within := 0.0, 0.0
 		for _, b := range bars {
-			assert.InDelta(t, width, b.to-b.from, 1e-9*(1+math.Abs(b.to)))
+			if at.Side != cutoff.Stretch {
+				assert.InDelta(t, width, b.to-b.from, 1e-9*(1+math.Abs(b.to)))
+			}
 			total += b.share
-			middle := (b.from + b.to) / 2
-			if middle < edge == at.Side.Lower() {
-				beyondIt += b.share
+			if middle := (b.from + b.to) / 2; from <= middle && middle <= to {
+				within += b.share
 			}
 		}
 		assert.InDelta(t, 1, total, 1e-9)
 		counted := 0.0
 		for _, x := range scores {
-			if x > at.At || x == at.At && at.Side == cutoff.AtLeast || x == at.At && at.Side == cutoff.Below {
+			if isBeyond(at, x) {
 				counted++
 			}
 		}
-		counted /= float64(len(scores))
-		if at.Side.Lower() {
-			counted = 1 - counted
-		}
-		assert.InDelta(t, counted, beyondIt, 1e-9)
+		assert.InDelta(t, counted/float64(len(scores)), within, 1e-9)
 	})
+}
+
+func isBeyond(c cutoff.Cutoff, x float64) bool {
+	switch c.Side {
+	case cutoff.AtLeast:
+		return x >= c.At
+	case cutoff.Above:
+		return x > c.At
+	case cutoff.AtMost:
+		return x <= c.At
+	case cutoff.Below:
+		return x < c.At
+	}
+	return x >= c.At && x <= c.To
 }
 
 func sortedDistinct(scores []float64) []float64 {
@@ -156,6 +171,20 @@ func TestSplits(t *testing.T) {
 		assert.Equal(t, want, splits(r, c), text)
 		assert.Equal(t, ends(c), splits(ask.Result{}, c), text)
 	}
+}
+
+// Both ends of a stretch are in it; a rest of less than half a bar joins the
+// bar before.
+func TestBarsOfAStretch(t *testing.T) {
+	r := ask.Result{Sample: ask.Described{Used: 8, Low: 0, High: 50}}
+	scores := []float64{0, 10, 10, 20, 23, 24, 30, 50}
+	c := newCounting(r, sweepOf(scores, []float64{0, 10, 20, 23, 24, 30, 50}, cutoff.AtLeast, 0))
+	f := Frame{Left: 50, Right: 1000}
+	bars, width := bins(r, c, cutoff.Cutoff{Side: cutoff.Stretch, At: 10, To: 24}, f)
+	assert.Equal(t, 10.0, width)
+	assert.Equal(t, []bin{{0, 10, 1.0 / 8}, {10, 24, 5.0 / 8}, {24, 34, 1.0 / 8}, {44, 54, 1.0 / 8}}, bars)
+	bars, _ = bins(r, c, cutoff.Cutoff{Side: cutoff.Stretch, At: 20, To: 20}, f)
+	assert.Contains(t, bars, bin{20, 20, 1.0 / 8}, "a stretch of a single score")
 }
 
 func TestRoundUp(t *testing.T) {

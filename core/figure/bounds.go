@@ -43,7 +43,7 @@ const farthest = 4.0
 const leastReach = 0.02
 
 // heights is the extent of a sweep's figure in points: all of the gap and
-// of the cutoffs' gaps, and of the band and the corridor what lies near.
+// of the cutoffs' gaps, and of the limits about them what lies near.
 func heights(r ask.Result, s ask.Sweep, c corridor) (low, high float64) {
 	low, high = extent(s.GapPoints)
 	for _, f := range r.Cutoffs {
@@ -52,7 +52,7 @@ func heights(r ask.Result, s ask.Sweep, c corridor) (low, high float64) {
 		}
 	}
 	base := max(leastReach, max(-low, high))
-	for _, values := range [...][]float64{s.BandLow, s.BandHigh, c.low, c.high} {
+	for _, values := range [...][]float64{s.BandLow, s.BandHigh, c.low, c.high, limits(r, s)} {
 		l, h := extent(values)
 		low = min(low, max(l, -farthest*base))
 		high = max(high, min(h, farthest*base))
@@ -60,6 +60,16 @@ func heights(r ask.Result, s ask.Sweep, c corridor) (low, high float64) {
 	// Both directions stay in sight, and nothing touches the frame.
 	span := max(high-low, leastReach)
 	return min(low, -0.06*span) - 0.06*span, max(high, 0.06*span) + 0.06*span
+}
+
+// limits are the ends of the cutoffs' intervals.
+func limits(r ask.Result, s ask.Sweep) (all []float64) {
+	for _, f := range r.Cutoffs {
+		if onSweep(f, s) && f.GapLow != nil && f.GapHigh != nil {
+			all = append(all, *f.GapLow, *f.GapHigh)
+		}
+	}
+	return all
 }
 
 // extent is the least and the greatest value, with zero among them.

@@ -19,16 +19,16 @@ type canvas struct {
 
 func (c *canvas) raw(markup string) { c.WriteString(markup) }
 
-// limit keeps coordinates printable whatever is asked for.
-const limit = 1e6
+// outermost keeps coordinates printable whatever is asked for.
+const outermost = 1e6
 
 // number prints a coordinate with at most one decimal and never "-0".
 func (c *canvas) number(x float64) {
 	switch {
-	case !(x > -limit): // NaN too
-		x = -limit
-	case x > limit:
-		x = limit
+	case !(x > -outermost): // NaN too
+		x = -outermost
+	case x > outermost:
+		x = outermost
 	}
 	tenths := int64(math.Floor(x*10 + 0.5))
 	var digits [16]byte

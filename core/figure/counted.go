@@ -20,12 +20,12 @@ func Counted(q ask.Question, r ask.Result, f ask.Finding, o Options) string {
 // countedDrawing is the plot of one cutoff's counted scores.
 type countedDrawing struct {
 	*plot
-	r     ask.Result
-	f     ask.Finding
-	bars  []bin
-	width float64 // of a bar, as a score
-	curve []point
-	words [][]span // what is written over the figure, in lines
+	r       ask.Result
+	f       ask.Finding
+	bars    []bin
+	width   float64 // of a bar, as a score
+	curve   []point
+	heading [][]span // what is written over the figure, in lines
 	// What is beyond the cutoff, by the count and by the curve.
 	countFrom, countTo, curveFrom, curveTo float64
 }
@@ -33,20 +33,8 @@ type countedDrawing struct {
 func drawCounted(q ask.Question, r ask.Result, f ask.Finding, o Options) drawing {
 	p := newPlot(r, o)
 	d := &countedDrawing{plot: p, r: r, f: f}
-	d.words = d.shares()
-	head := float64(len(d.words))*(p.size+5) + p.size + 12
-	under := axisRow + titleRow + 2
-	field := 170.0
-	if o.small() {
-		field = 130
-	}
-	if o.Height > 0 {
-		field = max(100, float64(o.Height)-head-under)
-	}
-	p.top = head
-	p.bottom = head + field
-	p.height = p.bottom + under
-
+	d.heading = d.shares()
+	p.layOut(float64(len(d.heading))*(p.size+5)+p.size+12, 170, 130, 100)
 	d.bars, d.width = bins(r, newCounting(r, sweepFor(r, f)), f.Cutoff, p.frame)
 	at := splits(r, f.Cutoff)
 	d.countFrom, d.countTo = beyond(f.Cutoff, at, p.frame)
@@ -84,7 +72,7 @@ const tallest = 3.0
 func (d *countedDrawing) scale() {
 	highest := 0.0
 	for _, b := range d.bars {
-		highest = max(highest, b.share)
+		highest = max(highest, d.heightOf(b))
 	}
 	peak := 0.0
 	const every = 3.0 // px
@@ -99,6 +87,13 @@ func (d *countedDrawing) scale() {
 		d.high = 1
 	}
 	d.curve = d.curveOver(d.frame.Low, d.frame.High, every)
+}
+
+// heightOf is a bar's height: its share, or the share it would have if it were
+// as wide as the others, so that areas can be compared. A bar of less than a
+// tenth (a short stretch, or a single score) counts as a tenth.
+func (d *countedDrawing) heightOf(b bin) float64 {
+	return b.share * d.width / max(b.to-b.from, d.width/10)
 }
 
 // density is the curve's share in a bar's width about a score.
@@ -125,15 +120,15 @@ func (d *countedDrawing) curveOver(from, to, every float64) []point {
 
 func (d *countedDrawing) draw() {
 	d.valueAxis(func(share float64) string { return words.Number(100*share) + "%" })
-	d.clip()
-	for _, b := range d.bars {
-		d.bar(b)
-	}
-	if area := d.curveOver(d.curveFrom, d.curveTo, 3); area != nil {
-		d.area("share", area, []point{{area[0].x, d.bottom}, {area[len(area)-1].x, d.bottom}})
-	}
-	d.path("gap", d.curve)
-	d.raw("</g>")
+	d.clipped(func() {
+		for _, b := range d.bars {
+			d.bar(b)
+		}
+		if area := d.curveOver(d.curveFrom, d.curveTo, 3); area != nil {
+			d.area("share", area, []point{{area[0].x, d.bottom}, {area[len(area)-1].x, d.bottom}})
+		}
+		d.path("gap", d.curve)
+	})
 	d.poles()
 	d.scoreAxis(d.r.Sample.Step, words.Name(d.r.Score), nil)
 	d.text("halo soft", "start", 4, d.top-8, d.valueTitle())
@@ -147,15 +142,15 @@ func (d *countedDrawing) bar(b bin) {
 	if d.single() && right-left >= 6 { // bars of a histogram stand side by side
 		left, right = left+0.08*(right-left), right-0.08*(right-left)
 	}
-	top := d.y(b.share)
-	from := min(max(d.frame.X(d.countFrom), left), right)
-	to := max(min(d.frame.X(d.countTo), right), left)
-	if from >= to {
-		from, to = left, left
+	if right-left < 1 {
+		left, right = left-0.5, right+0.5
 	}
-	d.rect("bar", left, top, from-left, d.bottom-top)
-	d.rect("beyond", from, top, to-from, d.bottom-top)
-	d.rect("bar", to, top, right-to, d.bottom-top)
+	top := d.y(d.heightOf(b))
+	class := "bar"
+	if middle := b.from/2 + b.to/2; d.countFrom <= middle && middle <= d.countTo {
+		class = "beyond"
+	}
+	d.rect(class, left, top, right-left, d.bottom-top)
 	d.path("skyline", []point{{left, d.bottom}, {left, top}, {right, top}, {right, d.bottom}})
 }
 
@@ -212,7 +207,7 @@ func lineWidth(line []span, size float64) float64 {
 // head writes the shares over the side of the cutoff they belong to.
 func (d *countedDrawing) head() {
 	width := 0.0
-	for _, line := range d.words {
+	for _, line := range d.heading {
 		width = max(width, lineWidth(line, d.size))
 	}
 	x, _ := d.frame.pin(d.f.Cutoff.At)
@@ -224,7 +219,7 @@ func (d *countedDrawing) head() {
 		x -= width
 	}
 	x = max(4, min(x, d.options.width()-4-width))
-	for i, line := range d.words {
+	for i, line := range d.heading {
 		d.raw("<text")
 		d.attribute("x", x)
 		d.attribute("y", float64(i)*(d.size+5)+d.size)
@@ -247,7 +242,7 @@ func (d *countedDrawing) names() {
 	f := d.frame
 	var roofs []point
 	for _, b := range d.bars {
-		y := d.y(b.share)
+		y := d.y(d.heightOf(b))
 		roofs = append(roofs, point{f.X(b.from), d.bottom}, point{f.X(b.from), y}, point{f.X(b.to), y}, point{f.X(b.to), d.bottom})
 	}
 	bars, curve := newSkyline(f, roofs), newSkyline(f, d.curve)

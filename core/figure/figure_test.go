@@ -220,3 +220,14 @@ func TestHostileNumbers(t *testing.T) {
 	read(t, figure.Counted(a.Question, a.Results[0], a.Results[0].Cutoffs[0], figure.Options{}))
 	read(t, figure.Sweep(ask.Question{}, ask.Result{}, ask.Sweep{}, figure.Options{}))
 }
+
+// On a scale without a step a stretch can be a single score, and its bar has
+// no width to speak of.
+func TestStretchOfOneScore(t *testing.T) {
+	m := recipe{name: "x", scores: []float64{1, 2.5, 2.5, 4, 7}, cutoffs: []string{"2.5..2.5"}}
+	a := m.answer()
+	d := read(t, figure.Counted(a.Question, a.Results[0], a.Results[0].Cutoffs[0], figure.Options{Width: 700}))
+	d.legible(t)
+	assert.Equal(t, 1, d.classes["beyond"])
+	assert.NotContains(t, d.raw, "1000000")
+}

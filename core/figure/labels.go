@@ -18,10 +18,10 @@ func (d *sweepDrawing) labels(underFlags float64) {
 		tooHigh, tooLow = "too high ↑", "too low ↓"
 	}
 	high, highFits := p.place(textWidth(tooHigh, d.size), d.spots(tooHigh, func(left, right float64) []float64 {
-		return []float64{d.top + d.size + 2, d.top + d.size + 12, d.y(0) - 8}
+		return []float64{d.top + d.size + 2, d.top + d.size + 12, d.top + d.size + 22, d.y(0) - 8}
 	}))
 	low, lowFits := p.place(textWidth(tooLow, d.size), d.spots(tooLow, func(left, right float64) []float64 {
-		return []float64{d.bottom - 6, d.bottom - 16, d.y(0) + d.size + 5}
+		return []float64{d.bottom - 6, d.bottom - 16, d.bottom - 26, d.y(0) + d.size + 5}
 	}))
 	if highFits && lowFits {
 		d.text("", "start", high.x, high.y, tooHigh)

@@ -27,8 +27,19 @@ func (p *plot) y(value float64) float64 {
 	return p.bottom - (value-p.low)/(p.high-p.low)*(p.bottom-p.top)
 }
 
-// clip opens a group of which only what lies in the plotted field is seen.
-func (p *plot) clip() {
+// layOut gives the plotted field its place: under a head of so many px and
+// over the axis, wide or small px high unless the options ask for a height,
+// and never less than least.
+func (p *plot) layOut(head, wide, small, least float64) {
+	under := axisRow + titleRow + 4
+	field := wide
+	if p.options.small() {
+		field = small
+	}
+	if p.options.Height > 0 {
+		field = max(least, float64(p.options.Height)-head-under)
+	}
+	p.top, p.bottom, p.height = head, head+field, head+field+under
 	p.raw(`<clipPath id="`)
 	p.escape(p.prefix + "-field")
 	p.raw(`"><rect`)
@@ -36,9 +47,16 @@ func (p *plot) clip() {
 	p.attribute("y", p.top)
 	p.attribute("width", p.frame.Right-p.frame.Left)
 	p.attribute("height", p.bottom-p.top)
-	p.raw(`/></clipPath><g clip-path="url(#`)
+	p.raw(`/></clipPath>`)
+}
+
+// clipped draws what is seen only where it lies in the plotted field.
+func (p *plot) clipped(draw func()) {
+	p.raw(`<g clip-path="url(#`)
 	p.escape(p.prefix + "-field")
 	p.raw(`)">`)
+	draw()
+	p.raw("</g>")
 }
 
 // along is the line of a value over a sweep's thresholds. On a scale with a

@@ -20,17 +20,7 @@ func drawSweep(q ask.Question, r ask.Result, s ask.Sweep, o Options) drawing {
 	p := newPlot(r, o)
 	laid, rows := flags(r, s.Side, p.frame, p.size)
 	underFlags := 4 + float64(rows)*flagRow
-	p.top = underFlags + p.size + 14
-	under := axisRow + titleRow + 6
-	field := 300.0
-	if o.small() {
-		field = 220
-	}
-	if o.Height > 0 {
-		field = max(140, float64(o.Height)-p.top-under)
-	}
-	p.bottom = p.top + field
-	p.height = p.bottom + under
+	p.layOut(underFlags+p.size+14, 300, 220, 140)
 	limits := newCorridor(q, s)
 	p.low, p.high = heights(r, s, limits)
 
@@ -77,23 +67,19 @@ func axisTitle(r ask.Result, side cutoff.Side) string {
 	}[side]
 }
 
-// field draws what lies behind the grips: corridor, grid, band, zero.
+// field draws what lies behind the grips: corridor, grid, stretches, band, zero.
 func (d *sweepDrawing) field() {
-	d.clip()
-	d.corridor()
-	d.raw("</g>")
+	d.clipped(d.corridor)
 	d.grid = d.valueAxis(signed)
-	d.raw(`<g clip-path="url(#`)
-	d.escape(d.prefix + "-field")
-	d.raw(`)">`)
-	for _, f := range d.r.Cutoffs {
-		if f.Cutoff.Side == cutoff.Stretch {
-			from, to := d.spanOf(f.Cutoff)
-			d.rect("span", from, d.top, to-from, d.bottom-d.top)
+	d.clipped(func() {
+		for _, f := range d.r.Cutoffs {
+			if f.Cutoff.Side == cutoff.Stretch {
+				from, to := d.spanOf(f.Cutoff)
+				d.rect("span", from, d.top, to-from, d.bottom-d.top)
+			}
 		}
-	}
-	d.area("band", d.bandHigh, d.bandLow)
-	d.raw("</g>")
+		d.area("band", d.bandHigh, d.bandLow)
+	})
 	d.canvas.line("zero", d.frame.Left, d.y(0), d.frame.Right, d.y(0))
 }
 

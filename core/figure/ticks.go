@@ -56,7 +56,7 @@ func scoreTicks(f Frame, step *float64, size, width float64) ([]float64, []strin
 	if width < narrow {
 		each = 50
 	}
-	for most := max(2, int((f.Right-f.Left)/each)); most > 0; most-- {
+	for most := int((f.Right-f.Left)/each) + 1; most > 0; most-- {
 		values := ticks(f.Low, f.High, most, least)
 		labels := make([]string, len(values))
 		fits, reached := true, math.Inf(-1)
