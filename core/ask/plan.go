@@ -122,15 +122,13 @@ func (w *work) planSweeps() {
 func (w *work) planGroup(grid []float64, strict bool) sweepPlan {
 	sweep := sweepPlan{group: len(w.plan.Groups)}
 	from := len(w.plan.Regions)
-	below, above := gap.Beyond(grid, w.scale.Step, w.table.Moments.SD)
-	w.planThresholds(below, strict)
+	w.planThresholds(gap.Beyond(grid, w.scale.Step), strict)
 	for _, at := range grid {
 		for _, region := range w.planThresholds([]float64{at}, strict) {
 			sweep.thresholds = append(sweep.thresholds, at)
 			sweep.regions = append(sweep.regions, region)
 		}
 	}
-	w.planThresholds(above, strict)
 	w.plan.Groups = append(w.plan.Groups, [2]int{from, len(w.plan.Regions)})
 	return sweep
 }

@@ -88,17 +88,12 @@ func thin(scores []float64, counts sample.Counts, thresholdsEach int) []float64 
 }
 
 // Beyond is where a band is also held to its promise although no one was
-// seen there: a step and then up to one SD past each end of the grid. It
-// keeps the band honest in the empty tails.
-func Beyond(grid []float64, step, sd float64) (below, above []float64) {
-	const strides = 4
-	low, high := grid[0]-step, grid[len(grid)-1]+step
-	if step > 0 {
-		below, above = append(below, low), append(above, high)
+// seen there: one step past each end of the grid. It keeps the band honest in
+// the empty tails; further steps change nothing. Without a step the grid's
+// own "just past the highest score" does the same.
+func Beyond(grid []float64, step float64) []float64 {
+	if step == 0 {
+		return nil
 	}
-	for i := 1.0; i <= strides; i++ {
-		below = append([]float64{low - i*sd/strides}, below...)
-		above = append(above, high+i*sd/strides)
-	}
-	return below, above
+	return []float64{grid[0] - step, grid[len(grid)-1] + step}
 }
