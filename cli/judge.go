@@ -97,6 +97,9 @@ func (j *judging) run(ctx context.Context, paths []string) error {
 		return err
 	}
 	progress.clear()
+	if ctx.Err() != nil {
+		return ctx.Err()
+	}
 	return j.write(answer)
 }
 

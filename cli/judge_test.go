@@ -100,7 +100,7 @@ func TestFailingGoesBeforeUnsettled(t *testing.T) {
 		{says("fails", "unsettled"), statusFails},
 	} {
 		p := &program{}
-		assert.Equal(t, c.want, p.report(context.Background(), verdicts(c.answer)))
+		assert.Equal(t, c.want, p.report(verdicts(c.answer)))
 	}
 }
 

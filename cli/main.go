@@ -51,5 +51,5 @@ func (p *program) run(ctx context.Context, args []string) (status int) {
 	root := p.root()
 	root.SetArgs(append([]string{}, args...)) // nil would mean the arguments of the process
 	err := root.ExecuteContext(ctx)
-	return p.report(ctx, errors.Join(err, p.unwritten))
+	return p.report(errors.Join(err, p.unwritten))
 }

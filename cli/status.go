@@ -47,11 +47,11 @@ func failure(cause error) error { return &ended{status: statusFailure, cause: ca
 
 // report says on stderr what went wrong, if anything did, and returns the
 // exit status. An error that says nothing of its status is about the input.
-func (p *program) report(ctx context.Context, err error) int {
+func (p *program) report(err error) int {
 	if err == nil {
 		return statusDone
 	}
-	if ctx.Err() != nil {
+	if errors.Is(err, context.Canceled) {
 		fmt.Fprintln(p.stderr, "tailgap: stopped before the answer was ready; nothing was written")
 		return statusFailure
 	}
