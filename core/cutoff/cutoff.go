@@ -37,7 +37,7 @@ func (s *Side) UnmarshalText(text []byte) error {
 			return nil
 		}
 	}
-	return fmt.Errorf("%q is not a side; a side is one of >= > <= < ..", text)
+	return fmt.Errorf("%q is not a side; a side is >=, >, <=, < or .. (a stretch)", text)
 }
 
 // Lower is true for the sides that ask about low scores.

@@ -77,7 +77,7 @@ func TestSides(t *testing.T) {
 		assert.Equal(t, want, [2]bool{side.Lower(), side.Strict()}, side)
 	}
 	var side cutoff.Side
-	assert.EqualError(t, side.UnmarshalText([]byte("!")), `"!" is not a side; a side is one of >= > <= < ..`)
+	assert.EqualError(t, side.UnmarshalText([]byte("!")), `"!" is not a side; a side is >=, >, <=, < or .. (a stretch)`)
 }
 
 // Whatever is read can be written and read again as the same, and a stretch
