@@ -27,9 +27,10 @@ demo: build
 	@echo
 	@echo "The same as a page, to open in a browser: file://$(CURDIR)/dist/tailgap.html"
 
-## test: everything; fetches what it needs, Chromium and node included
+## test: everything; fetches what it needs, Chromium and node included. One
+## package at a time: the browser's page and the resampler want all cores
 test: tools lint build
-	$(GO) test -count=1 ./...
+	$(GO) test -count=1 -p 1 ./...
 	$(MAKE) wasm-test
 
 # node and Go both have to be found by what runs the tests in WebAssembly.
