@@ -46,7 +46,7 @@ func TestScripts(t *testing.T) {
 				return
 			}
 			// One command at a time, to show no more than what differs.
-			want, got := strings.Split(string(archive.Comment), "\n\n$ "), strings.Split(replayed, "\n\n$ ")
+			want, got := strings.Split(string(archive.Comment), "\n$ "), strings.Split(replayed, "\n$ ")
 			require.Len(t, got, len(want))
 			for i := range want {
 				assert.Equal(t, want[i], got[i])
