@@ -7,6 +7,7 @@ import (
 	"fmt"
 	"io"
 	"math"
+	"strings"
 
 	"tailgap/core/cutoff"
 	"tailgap/core/sample"
@@ -19,6 +20,7 @@ const (
 	minReplicates = 200
 	maxReplicates = 1_000_000
 	maxCutoffs    = 1000
+	maxWorkers    = 1024
 )
 
 // NewQuestion returns a question with the defaults: a fitted curve, the step
@@ -39,7 +41,7 @@ func ReadQuestion(text []byte) (Question, error) {
 		Format *string `json:"format"`
 	}
 	if err := json.Unmarshal(text, &version); err != nil {
-		return Question{}, fmt.Errorf("this is not a question file: %w", err)
+		return Question{}, fmt.Errorf("this is not a question file, which is a JSON object with a format: %w", plainer(err, text))
 	}
 	if version.Format == nil || *version.Format != QuestionFormat {
 		found := "no format"
@@ -52,12 +54,30 @@ func ReadQuestion(text []byte) (Question, error) {
 	decoder := json.NewDecoder(bytes.NewReader(text))
 	decoder.DisallowUnknownFields()
 	if err := decoder.Decode(&question); err != nil {
-		return Question{}, fmt.Errorf("the question file can't be read: %w", err)
+		return Question{}, fmt.Errorf("the question file can't be read: %w", plainer(err, text))
 	}
 	if _, err := decoder.Token(); !errors.Is(err, io.EOF) {
 		return Question{}, errors.New("the question file goes on after the question; a file holds one question")
 	}
 	return question.filled(), question.Check()
+}
+
+// plainer says a JSON error in words for the person whose file it is.
+func plainer(err error, text []byte) error {
+	var syntax *json.SyntaxError
+	var kind *json.UnmarshalTypeError
+	switch {
+	case errors.As(err, &syntax):
+		return fmt.Errorf("line %d is not JSON", 1+bytes.Count(text[:min(int(syntax.Offset), len(text))], []byte("\n")))
+	case errors.As(err, &kind) && kind.Field != "":
+		return fmt.Errorf("%q can't be a %s", kind.Field, kind.Value)
+	case errors.As(err, &kind):
+		return fmt.Errorf("it holds a JSON %s", kind.Value)
+	}
+	if field, unknown := strings.CutPrefix(err.Error(), "json: unknown field "); unknown {
+		return fmt.Errorf("there is no %s in a question", field)
+	}
+	return err
 }
 
 // WriteQuestion writes the question as ReadQuestion reads it.
@@ -103,8 +123,8 @@ func (q Question) Check() error {
 	if float64(q.Replicates+1)*(1-q.Level) < 1 {
 		return fmt.Errorf("a level of %v needs more than %d replicates: ask for %.0f or more", q.Level, q.Replicates, math.Ceil(1/(1-q.Level)))
 	}
-	if q.Workers < 0 {
-		return fmt.Errorf("%d workers can't share the work; write 0 for one worker for each core", q.Workers)
+	if q.Workers < 0 || q.Workers > maxWorkers {
+		return fmt.Errorf("%d workers can't share the work; ask for 1 to %d, or 0 for one for each core", q.Workers, maxWorkers)
 	}
 	if q.Curve != nil && (!(q.Curve.SD > 0) || !finite(q.Curve.SD) || !finite(q.Curve.Mean)) {
 		return fmt.Errorf("a curve with mean %v and SD %v can't be drawn; the SD must be above zero and both must be finite", q.Curve.Mean, q.Curve.SD)

@@ -25,7 +25,7 @@ func TestQuestionsThatCantBeAnswered(t *testing.T) {
 		`199 replicates can't be used; ask for between 200 and 1000000`:                                     func(q *ask.Question) { q.Replicates = 199 },
 		`1000001 replicates can't be used; ask for between 200 and 1000000`:                                 func(q *ask.Question) { q.Replicates = 1_000_001 },
 		`a level of 0.999 needs more than 200 replicates: ask for 1000 or more`:                             func(q *ask.Question) { q.Level, q.Replicates = 0.999, 200 },
-		`-1 workers can't share the work; write 0 for one worker for each core`:                             func(q *ask.Question) { q.Workers = -1 },
+		`-1 workers can't share the work; ask for 1 to 1024, or 0 for one for each core`:                    func(q *ask.Question) { q.Workers = -1 },
 		`a curve with mean 50 and SD 0 can't be drawn; the SD must be above zero and both must be finite`:   func(q *ask.Question) { q.Curve = &curve.Given{Mean: 50} },
 		`a curve with mean +Inf and SD 1 can't be drawn; the SD must be above zero and both must be finite`: func(q *ask.Question) { q.Curve = &curve.Given{Mean: math.Inf(1), SD: 1} },
 		`the cutoff >=5 is there twice; leave one out`:                                                      func(q *ask.Question) { q.Cutoffs = append(question(">=5").Cutoffs, question(">= 5").Cutoffs...) },
@@ -82,14 +82,15 @@ func TestQuestionFiles(t *testing.T) {
 	assert.Equal(t, 10_000, short.Replicates)
 
 	for text, sentence := range map[string]string{
-		`{`:                                  `this is not a question file: unexpected end of JSON input`,
-		`[]`:                                 `this is not a question file: json: cannot unmarshal array into Go value of type struct { Format *string "json:\"format\"" }`,
+		`{`:                                  `this is not a question file, which is a JSON object with a format: line 1 is not JSON`,
+		`[]`:                                 `this is not a question file, which is a JSON object with a format: it holds a JSON array`,
 		`{"cutoffs":[]}`:                     `the question file has no format; this program reads "tailgap/question/1"`,
 		`{"format":"tailgap/question/9"}`:    `the question file has the format "tailgap/question/9"; this program reads "tailgap/question/1"`,
-		`{"format":"tailgap/question/1"} {}`: `this is not a question file: invalid character '{' after top-level value`,
-		`{"format":"tailgap/question/1","colour":1}`:         `the question file can't be read: json: unknown field "colour"`,
+		`{"format":"tailgap/question/1"} {}`: `this is not a question file, which is a JSON object with a format: line 1 is not JSON`,
+		`{"format":"tailgap/question/1","colour":1}`:         `the question file can't be read: there is no "colour" in a question`,
 		`{"format":"tailgap/question/1","cutoffs":["x"]}`:    `the question file can't be read: the cutoff "x" can't be read; write it as >=50, >50, <=20, <20 or 20..30, decimals with a point`,
 		`{"format":"tailgap/question/1","too_high":"1%"}`:    `the question file can't be read: the tolerance "1%" could mean two things; write 1pt for percentage points or 1%count for a part of the counted share`,
+		`{"format":"tailgap/question/1","level":"high"}`:     `the question file can't be read: "level" can't be a string`,
 		`{"format":"tailgap/question/1","level":1.5}`:        `the level 1.5 is not between 0 and 1; write 0.95 for 95% intervals`,
 		`{"format":"tailgap/question/1","header":"perhaps"}`: `the question file can't be read: the header setting "perhaps" can't be read; write auto, yes or no`,
 	} {

@@ -22,7 +22,7 @@ type work struct {
 	known     map[key]int
 	sweeps    []sweepPlan
 	quantiles resample.Quantiles
-	estimates []gap.Estimate
+	estimates []*gap.Estimate
 	t         float64 // Student's t at the question's level
 }
 

@@ -15,10 +15,14 @@ func (w *work) notes(c cutoff.Cutoff, f Finding) []string {
 	notes := []string{}
 	add := func(format string, values ...any) { notes = append(notes, fmt.Sprintf(format, values...)) }
 	counts := w.table.Counts
+	wide := "the interval there is wide, and the ratio says little"
+	if w.question.Everyone {
+		wide = "the ratio says little"
+	}
 	switch rest := counts.N - f.Counted; {
 	case f.Counted < gap.FewPeople:
-		add("%s counted %s: the interval there is wide, and the ratio says little", people(f.Counted), c.Words())
-	case rest < gap.FewPeople:
+		add("%s counted %s: %s", people(f.Counted), c.Words(), wide)
+	case rest < gap.FewPeople && !w.question.Everyone:
 		add("%s counted on the other side of this cutoff: the interval there is wide", people(rest))
 	}
 	for _, at := range thresholdsOf([]cutoff.Cutoff{c}) {

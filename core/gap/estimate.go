@@ -26,90 +26,56 @@ type Estimate struct {
 	z       float64
 }
 
-// At estimates the region from the sums of the sample, or of a resample. A
-// fitted curve moves with the sums; a given one stays. This is the inner loop
-// of every answer: one exponential and one division a tail.
-func (t *Table) At(r *Region, s *Sums, in Inside) Estimate {
-	e := Estimate{N: s.N, Inside: in.K, Counted: in.K * s.perN}
-	if !t.Curve.Fitted {
-		e.z, e.Curve = r.lower.z, r.lower.tail
-		if r.stretch {
-			e.Curve -= r.upper.tail
-		}
-		return e
+// Set estimates the region from the sums of the sample, or of a resample, and
+// from the curve as they make it read. Readings, one for each place where the
+// curve is read, and estimates, one for each region, are the inner loop of
+// every answer: one exponential a reading, one division an estimate.
+func (e *Estimate) Set(r *Region, s *Sums, c *Reading, in Inside) {
+	e.N, e.Inside, e.Counted = s.N, in.K, in.K*s.perN
+	e.Curve, e.V, e.slope, e.z = c.share, c.v, c.slope, c.z
+	ghost := c.influence(r.lowerGhost-s.Mean, s)
+	if r.Stretch {
+		ghost = (ghost + c.influence(r.upperGhost-s.Mean, s)) / 2
 	}
-	if s.M2 <= 0 { // a resample of one score only: its curve is a step
-		e.Curve = step(r.lower.point, s.Mean)
-		if r.stretch {
-			e.Curve -= step(r.upper.point, s.Mean)
-		}
-		return e
-	}
-	// The influence of a score x on the curve's share is
-	// a(x-mean) + b((x-mean)²-M2).
-	e.z = (r.lower.point - s.Mean) * s.perSD
-	e.Curve, e.slope = curve.Tail(e.z)
-	a := e.slope * s.perSD
-	b := a * e.z * 0.5 * s.perSD
-	ghost := r.lower.ghost - s.Mean
-	ghostSquare := ghost * ghost
-	if r.stretch {
-		z := (r.upper.point - s.Mean) * s.perSD
-		share, density := curve.Tail(z)
-		e.Curve -= share
-		a, b = a-density*s.perSD, b-density*s.perSD*z*0.5*s.perSD
-		other := r.upper.ghost - s.Mean
-		ghost, ghostSquare = (ghost+other)/2, (ghostSquare+other*other)/2
-	}
-	g := a*ghost + b*(ghostSquare-s.M2)
-	e.V = s.N / (s.N - 1) * (a*(a*s.M2+2*b*s.M3) + b*b*s.fourth)
 	deviations := in.S1 - in.K*s.Mean
 	squares := in.S2 - s.Mean*(in.S1+deviations)
-	influence := a*deviations + b*(squares-in.K*s.M2)
+	total := c.a*deviations + c.b*(squares-in.K*s.M2)
 	inside, outside := in.K+1, s.N-in.K+1
-	e.D = ((influence+g)*outside - (g-influence)*inside) / (inside * outside)
-	return e
-}
-
-func step(point, mean float64) float64 {
-	if mean >= point {
-		return 1
-	}
-	return 0
+	e.D = ((total+ghost)*outside - (ghost-total)*inside) / (inside * outside)
 }
 
 // Gap is the curve's share minus weight times the counted share. Weight 1 is
 // the gap itself; other weights judge a tolerance in percent of the count.
-func (e Estimate) Gap(weight float64) float64 { return e.Curve - weight*e.Counted }
+func (e *Estimate) Gap(weight float64) float64 { return e.Curve - weight*e.Counted }
 
 // CurveShort is the curve's share short of a tail, with all its digits where
 // the tail is nearly everything.
-func (e Estimate) CurveShort() float64 { return curve.UpperTail(-e.z) }
+func (e *Estimate) CurveShort() float64 { return curve.UpperTail(-e.z) }
 
 // Shrunk is the counted share with two made-up people inside the region and
 // two outside (Agresti & Coull 1998).
-func (e Estimate) Shrunk() float64 { return (e.Inside + 2) / (e.N + 4) }
+func (e *Estimate) Shrunk() float64 { return (e.Inside + 2) / (e.N + 4) }
 
 // Kappa is what the binomial variance of the counted share is multiplied by
 // in the variance of Gap(weight); floored so that the variance stays above zero.
-func (e Estimate) Kappa(weight float64) float64 {
+func (e *Estimate) Kappa(weight float64) float64 {
 	p := e.Shrunk()
 	return math.Max(e.KappaUnfloored(weight), -0.95*e.V/(p*(1-p)))
 }
 
 // KappaUnfloored is Kappa without its floor, as resamples use it.
-func (e Estimate) KappaUnfloored(weight float64) float64 {
+func (e *Estimate) KappaUnfloored(weight float64) float64 {
 	return weight * (weight - 2*e.D)
 }
 
 // SE is the ghost-studentised standard error of Gap(weight), a proportion.
-func (e Estimate) SE(weight float64) float64 {
+func (e *Estimate) SE(weight float64) float64 {
 	p := e.Shrunk()
 	return math.Sqrt((e.V + e.Kappa(weight)*p*(1-p)) / e.N)
 }
 
 // Few is true where fewer than ten people are inside the region, or outside it.
-func (e Estimate) Few() bool { return math.Min(e.Inside, e.N-e.Inside) < FewPeople }
+func (e *Estimate) Few() bool { return math.Min(e.Inside, e.N-e.Inside) < FewPeople }
 
 // FewPeople is the number of people below which a side of a cutoff is sparse.
 const FewPeople = 10

@@ -26,9 +26,12 @@ func (t Table) SampleInside(r Region) Inside {
 }
 
 // Estimate is the region's estimate from the sample.
-func (t Table) Estimate(r Region) Estimate {
+func (t Table) Estimate(r Region) *Estimate {
+	var e Estimate
 	sums := t.SampleSums()
-	return t.At(&r, &sums, t.SampleInside(r))
+	reading := t.ReadRegion(&r, &sums)
+	e.Set(&r, &sums, &reading, t.SampleInside(r))
+	return &e
 }
 
 // Influence is the influence function of the gap of an upper tail, one value
@@ -46,9 +49,9 @@ func (t Table) Influence(r Region) []float64 {
 			psi[i]--
 		}
 		if t.Curve.Fitted {
-			psi[i] += shareInfluence(r.lower.point, u)
-			if r.stretch {
-				psi[i] -= shareInfluence(r.upper.point, u)
+			psi[i] += shareInfluence(r.Lower.u, u)
+			if r.Stretch {
+				psi[i] -= shareInfluence(r.Upper.u, u)
 			}
 		}
 	}

@@ -44,24 +44,25 @@ func NewTable(counts sample.Counts, moments sample.Moments, c curve.Normal) Tabl
 func (t Table) standard(score float64) float64 { return (score - t.Moments.Mean) / t.Moments.SD }
 
 // Region is the set of scores whose share is asked for: an upper tail, or a
-// stretch between two thresholds. All places are in standard units.
+// stretch between two thresholds.
 type Region struct {
-	From, To int // the distinct scores inside: From <= i < To
-	lower    end
-	upper    end
-	stretch  bool
+	From, To     int // the distinct scores inside: From <= i < To
+	Lower, Upper Point
+	Stretch      bool
+	lowerGhost   float64 // where a ghost observation stands at each end, in standard units
+	upperGhost   float64
 }
 
-// end is one end of a region: where the curve is read, and where a ghost
-// observation stands.
-type end struct {
-	point, ghost float64
-	z, tail      float64 // the point's z by a given curve, and the share beyond it: they don't move with the sample
+// Point is where the curve is read for one end of a region. Points are equal
+// where their readings are.
+type Point struct {
+	u       float64 // in standard units of the sample
+	z, tail float64 // by a given curve, with the share beyond it: they don't move with the sample
 }
 
-func (t Table) end(at Threshold) end {
+func (t Table) point(at Threshold) Point {
 	z := t.Curve.Z(at.Point)
-	return end{point: t.standard(at.Point), ghost: t.standard(at.At), z: z, tail: curve.UpperTail(z)}
+	return Point{u: t.standard(at.Point), z: z, tail: curve.UpperTail(z)}
 }
 
 func (t Table) index(at Threshold) int {
@@ -73,15 +74,15 @@ func (t Table) index(at Threshold) int {
 
 // Tail is the region at and beyond a threshold.
 func (t Table) Tail(at Threshold) Region {
-	return Region{From: t.index(at), To: len(t.U), lower: t.end(at)}
+	return Region{From: t.index(at), To: len(t.U), Lower: t.point(at), lowerGhost: t.standard(at.At)}
 }
 
 // Between is the region beyond the threshold from and short of the threshold to.
 func (t Table) Between(from, to Threshold) Region {
-	return Region{
-		From: t.index(from), To: max(t.index(from), t.index(to)),
-		lower: t.end(from), upper: t.end(to), stretch: true,
-	}
+	r := t.Tail(from)
+	r.To = max(r.From, t.index(to))
+	r.Upper, r.upperGhost, r.Stretch = t.point(to), t.standard(to.At), true
+	return r
 }
 
 // Sums describe a sample, or a resample of it, in the standard units of the
@@ -90,6 +91,7 @@ type Sums struct {
 	N, Mean, M2, M3 float64 // central moments with divisor n
 	perSD           float64 // 1/SD, divisor n-1
 	perN            float64 // 1/n
+	bessel          float64 // n/(n-1)
 	fourth          float64 // M4 - M2²: n times the variance of M2
 }
 
@@ -103,7 +105,7 @@ func NewSums(s0, s1, s2, s3, s4 float64) Sums {
 }
 
 func newSums(n, mean, m2, m3, m4 float64) Sums {
-	return Sums{N: n, Mean: mean, M2: m2, M3: m3, perSD: math.Sqrt((n - 1) / (n * m2)), perN: 1 / n, fourth: m4 - m2*m2}
+	return Sums{N: n, Mean: mean, M2: m2, M3: m3, perSD: math.Sqrt((n - 1) / (n * m2)), perN: 1 / n, bessel: n / (n - 1), fourth: m4 - m2*m2}
 }
 
 // Inside are the sums of 1, u and u² over the people inside a region.

@@ -12,7 +12,7 @@ import (
 // the counted share, put together as in MOVER (Zou & Donner 2008) with the
 // covariance of the two in Kappa. They apply to tails, not to stretches; t
 // is the quantile of Student's t for the wanted level.
-func (e Estimate) ScoreLimits(weight, t float64) (low, high float64) {
+func (e *Estimate) ScoreLimits(weight, t float64) (low, high float64) {
 	curveLow, curveHigh := e.curveLimits(t)
 	spread := t * t * e.Kappa(weight) / (weight * weight * e.N)
 	below := (e.Curve - curveLow) / weight
@@ -22,7 +22,7 @@ func (e Estimate) ScoreLimits(weight, t float64) (low, high float64) {
 }
 
 // curveLimits are the limits of the curve's share alone.
-func (e Estimate) curveLimits(t float64) (low, high float64) {
+func (e *Estimate) curveLimits(t float64) (low, high float64) {
 	if e.V == 0 || e.slope == 0 {
 		return e.Curve, e.Curve
 	}

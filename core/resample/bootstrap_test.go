@@ -31,10 +31,12 @@ func replicates(table gap.Table, regions []gap.Region, seed uint64) [][]float64 
 		for range 100 {
 			s.drawer.draw(&s.stream, s.counts)
 			sums := s.sum()
+			for i := range s.points {
+				s.readings[i].Set(&table, &s.points[i], &sums)
+			}
 			for i := range regions {
-				from, to := s.tails[regions[i].From], s.tails[regions[i].To]
-				inside := gap.Inside{K: from.K - to.K, S1: from.S1 - to.S1, S2: from.S2 - to.S2}
-				e := table.At(&regions[i], &sums, inside)
+				var e gap.Estimate
+				s.estimate(&e, i, &sums)
 				gaps[i] = append(gaps[i], 100*e.Gap(1))
 			}
 		}
@@ -72,7 +74,9 @@ func acceleration(table gap.Table, region gap.Region) float64 {
 		if i >= region.From && i < region.To {
 			in = gap.Inside{K: in.K - 1, S1: in.S1 - u, S2: in.S2 - u*u}
 		}
-		e := table.At(&region, &sums, in)
+		reading := table.ReadRegion(&region, &sums)
+		var e gap.Estimate
+		e.Set(&region, &sums, &reading, in)
 		without[i] = e.Gap(1)
 		mean += float64(table.Counts.Count[i]) * without[i] / n
 	}

@@ -34,33 +34,37 @@ func (d drawer) draw(r *stream, into []int32) {
 		return
 	}
 	clear(into)
-	if len(d.rows) <= 1<<12 {
-		d.drawRows(r, into, 16)
-	} else {
-		d.drawRows(r, into, 32)
+	// Lemire's (2019) multiply-shift with rejection, so that everyone has the
+	// same chance; four draws from each 64 bits where 16 are enough for one.
+	n, left := uint32(len(d.rows)), len(d.rows)
+	if n > 1<<12 {
+		reject := uint32((1 << 32) % uint64(n))
+		for left > 0 {
+			random := r.Uint64()
+			left = d.take(random>>32, uint64(n), 32, reject, into, left)
+			left = d.take(random&0xffffffff, uint64(n), 32, reject, into, left)
+		}
+		return
+	}
+	reject := uint32((1 << 16) % n)
+	for left > 0 {
+		random := r.Uint64()
+		left = d.take(random>>48, uint64(n), 16, reject, into, left)
+		left = d.take(random>>32&0xffff, uint64(n), 16, reject, into, left)
+		left = d.take(random>>16&0xffff, uint64(n), 16, reject, into, left)
+		left = d.take(random&0xffff, uint64(n), 16, reject, into, left)
 	}
 }
 
-// drawRows draws people by Lemire's (2019) multiply-shift with rejection, so
-// that everyone has the same chance, from pieces of so many bits.
-func (d drawer) drawRows(r *stream, into []int32, bits uint) {
-	n := uint64(len(d.rows))
-	mask := uint64(1)<<bits - 1
-	reject := (mask + 1) % n
-	for left := n; ; {
-		random := r.Uint64()
-		for range 64 / bits {
-			product := (random & mask) * n
-			random >>= bits
-			if product&mask < reject {
-				continue
-			}
-			into[d.rows[product>>bits]]++
-			if left--; left == 0 {
-				return
-			}
-		}
+// take draws one person from so many random bits, unless they are rejected
+// or nobody is left to draw.
+func (d *drawer) take(random, n uint64, bits uint, reject uint32, into []int32, left int) int {
+	product := random * n
+	if uint32(product&(1<<bits-1)) < reject || left == 0 {
+		return left
 	}
+	into[d.rows[product>>bits]]++
+	return left - 1
 }
 
 // drawBinomials draws a multinomial as binomials, each conditional on those before.

@@ -101,7 +101,7 @@ func TestIntervalAgreesWithR(t *testing.T) {
 	}
 }
 
-func checkEstimate(t *testing.T, e gap.Estimate, weight float64, r row, where string) {
+func checkEstimate(t *testing.T, e *gap.Estimate, weight float64, r row, where string) {
 	t.Helper()
 	near(t, r.V, e.V, "v", where)
 	near(t, r.D, e.D, "D", where)

@@ -30,7 +30,7 @@ func StudentT(n int, level float64) float64 {
 // errors each way, q being the larger of Student's t and the quantile of the
 // studentised replicates; for a tail with fewer than ten people on either
 // side, the hull of that and the score limits.
-func IntervalOf(e gap.Estimate, weight, quantile, t float64, tail bool) Interval {
+func IntervalOf(e *gap.Estimate, weight, quantile, t float64, tail bool) Interval {
 	margin := math.Max(quantile, t) * e.SE(weight)
 	i := Interval{e.Gap(weight) - margin, e.Gap(weight) + margin}
 	if tail && e.Few() && weight > 0 {

@@ -50,13 +50,19 @@ func Run(ctx context.Context, plan Plan, progress func(done int)) (Quantiles, er
 
 	studies := make([]*study, workers)
 	finished := make(chan int, workers)
+	failed := make(chan any, workers)
 	drawer := newDrawer(plan.Table.Counts)
 	estimates := sampleEstimates(plan)
 	var next atomic.Int64
 	for w := range studies {
 		studies[w] = newStudy(plan, drawer, estimates)
 		go func() {
-			defer func() { finished <- 0 }()
+			defer func() {
+				if failure := recover(); failure != nil {
+					failed <- failure
+				}
+				finished <- 0
+			}()
 			for {
 				block := int(next.Add(1)) - 1
 				if block >= blocks {
@@ -81,14 +87,19 @@ func Run(ctx context.Context, plan Plan, progress func(done int)) (Quantiles, er
 			progress(done)
 		}
 	}
+	select {
+	case failure := <-failed:
+		panic(failure) // where the caller can recover it
+	default:
+	}
 	if err := ctx.Err(); err != nil {
 		return Quantiles{}, err
 	}
 	return merge(plan, studies), nil
 }
 
-func sampleEstimates(plan Plan) []gap.Estimate {
-	estimates := make([]gap.Estimate, len(plan.Regions))
+func sampleEstimates(plan Plan) []*gap.Estimate {
+	estimates := make([]*gap.Estimate, len(plan.Regions))
 	for i, region := range plan.Regions {
 		estimates[i] = plan.Table.Estimate(region)
 	}

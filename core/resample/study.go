@@ -11,8 +11,11 @@ import (
 type study struct {
 	plan      Plan
 	drawer    drawer
-	estimates []gap.Estimate
-	scale     []target
+	estimates []*gap.Estimate
+	targets   []target    // by region, then weight
+	points    []gap.Point // each place where the curve is read, once
+	readings  []gap.Reading
+	ends      [][2]int // by region, the places of its ends among the points
 	powers    []powers
 	counts    []int32
 	tails     []gap.Inside // sums over the distinct scores from this index up; one more entry than scores
@@ -36,7 +39,7 @@ type target struct {
 // powers of a distinct score in standard units.
 type powers struct{ u1, u2, u3, u4 float64 }
 
-func newStudy(plan Plan, d drawer, estimates []gap.Estimate) *study {
+func newStudy(plan Plan, d drawer, estimates []*gap.Estimate) *study {
 	distinct := len(plan.Table.U)
 	s := &study{
 		plan: plan, drawer: d, estimates: estimates,
@@ -51,14 +54,30 @@ func newStudy(plan Plan, d drawer, estimates []gap.Estimate) *study {
 		p := e.Shrunk()
 		for _, w := range plan.Weights {
 			se := e.SE(w)
-			s.scale = append(s.scale, target{e.Gap(w), p * (1 - p), 0.05 * e.N * se * se})
+			s.targets = append(s.targets, target{e.Gap(w), p * (1 - p), 0.05 * e.N * se * se})
 			s.region = append(s.region, newLargest(k))
 		}
 	}
+	known := map[gap.Point]int{}
+	for _, r := range plan.Regions {
+		s.ends = append(s.ends, [2]int{s.point(r.Lower, known), s.point(r.Upper, known)})
+	}
+	s.readings = make([]gap.Reading, len(s.points))
 	for range len(plan.Groups) * len(plan.Weights) {
 		s.group = append(s.group, newLargest(k))
 	}
 	return s
+}
+
+// point is the index of the point, which is added when it is new.
+func (s *study) point(p gap.Point, known map[gap.Point]int) int {
+	index, seen := known[p]
+	if !seen {
+		index = len(s.points)
+		known[p] = index
+		s.points = append(s.points, p)
+	}
+	return index
 }
 
 // block runs the replicates of one block; false when the context ended.
@@ -77,24 +96,22 @@ func (s *study) block(ctx context.Context, block, size int) bool {
 func (s *study) replicate() {
 	s.drawer.draw(&s.stream, s.counts)
 	sums := s.sum()
+	for i := range s.points {
+		s.readings[i].Set(&s.plan.Table, &s.points[i], &sums)
+	}
 	region := 0
 	for g, group := range s.plan.Groups {
-		for ; region < group[0]; region++ {
-			s.judge(region, sums)
-		}
+		s.judge(region, group[0], &sums)
 		for w := range s.sup {
 			s.sup[w] = fraction{0, 1}
 		}
-		for ; region < group[1]; region++ {
-			s.judge(region, sums)
-		}
+		s.judge(group[0], group[1], &sums)
 		for w, largest := range s.sup {
 			s.group[g*len(s.sup)+w].offer(largest.square / largest.variance)
 		}
+		region = group[1]
 	}
-	for ; region < len(s.plan.Regions); region++ {
-		s.judge(region, sums)
-	}
+	s.judge(region, len(s.plan.Regions), &sums)
 }
 
 // sum fills the tails and returns the moments of the resample.
@@ -115,22 +132,38 @@ func (s *study) sum() gap.Sums {
 	return gap.NewSums(tail.K, tail.S1, tail.S2, s3, s4)
 }
 
-// judge records the squared studentised gap of one region, at each weight.
-func (s *study) judge(region int, sums gap.Sums) {
-	r := &s.plan.Regions[region]
-	from, to := &s.tails[r.From], &s.tails[r.To]
-	inside := gap.Inside{K: from.K - to.K, S1: from.S1 - to.S1, S2: from.S2 - to.S2}
-	e := s.plan.Table.At(r, &sums, inside)
-	at := region * len(s.plan.Weights)
-	for w, weight := range s.plan.Weights {
-		target, sup := &s.scale[at+w], &s.sup[w]
-		d := e.Gap(weight) - target.gap
-		f := fraction{d * d * e.N, max(e.V+e.KappaUnfloored(weight)*target.binomial, target.least)}
-		if kept := &s.region[at+w]; f.square >= kept.floor*f.variance {
-			kept.offer(f.square / f.variance)
-		}
-		if f.square*sup.variance > sup.square*f.variance {
-			*sup = f
+// judge records the squared studentised gaps of the regions from (in) to
+// (out), at each weight.
+func (s *study) judge(from, to int, sums *gap.Sums) {
+	var e gap.Estimate
+	at := from * len(s.plan.Weights)
+	for i := from; i < to; i++ {
+		s.estimate(&e, i, sums)
+		for w, weight := range s.plan.Weights {
+			target, sup := &s.targets[at], &s.sup[w]
+			d := e.Gap(weight) - target.gap
+			f := fraction{d * d * e.N, max(e.V+e.KappaUnfloored(weight)*target.binomial, target.least)}
+			if kept := &s.region[at]; f.square >= kept.floor*f.variance {
+				kept.offer(f.square / f.variance)
+			}
+			if f.square*sup.variance > sup.square*f.variance {
+				*sup = f
+			}
+			at++
 		}
 	}
+}
+
+// estimate sets one region's estimate from the resample.
+func (s *study) estimate(e *gap.Estimate, region int, sums *gap.Sums) {
+	r, ends := &s.plan.Regions[region], s.ends[region]
+	above, beyond := &s.tails[r.From], &s.tails[r.To]
+	inside := gap.Inside{K: above.K - beyond.K, S1: above.S1 - beyond.S1, S2: above.S2 - beyond.S2}
+	if !r.Stretch {
+		e.Set(r, sums, &s.readings[ends[0]], inside)
+		return
+	}
+	reading := s.readings[ends[0]]
+	reading.Subtract(&s.readings[ends[1]], sums)
+	e.Set(r, sums, &reading, inside)
 }

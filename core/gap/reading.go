@@ -1,0 +1,62 @@
+package gap
+
+import "tailgap/core/curve"
+
+// Reading is the curve's share of a region as a sample, or a resample, makes
+// it, with what a sample's scores do to it: the influence of a score x is
+// a(x-mean) + b((x-mean)²-M2). A given curve has no influence and no variance.
+type Reading struct {
+	share, z, slope float64
+	a, b, v         float64
+}
+
+// Set reads the table's curve beyond a point. A fitted curve moves with the
+// sums; a given one stays.
+func (c *Reading) Set(t *Table, p *Point, s *Sums) {
+	switch {
+	case !t.Curve.Fitted:
+		*c = Reading{share: p.tail, z: p.z}
+	case s.M2 <= 0: // a resample of one score only: its curve is a step
+		*c = Reading{share: step(p.u, s.Mean)}
+	default:
+		c.z = (p.u - s.Mean) * s.perSD
+		c.share, c.slope = curve.Tail(c.z)
+		c.a = c.slope * s.perSD
+		c.b = 0.5 * c.a * c.z * s.perSD
+		c.v = s.variance(c.a, c.b)
+	}
+}
+
+// ReadRegion reads the curve's share of a region.
+func (t *Table) ReadRegion(r *Region, s *Sums) Reading {
+	var reading, upper Reading
+	reading.Set(t, &r.Lower, s)
+	if r.Stretch {
+		upper.Set(t, &r.Upper, s)
+		reading.Subtract(&upper, s)
+	}
+	return reading
+}
+
+// Subtract takes another reading's share away: what is left is a stretch.
+func (c *Reading) Subtract(other *Reading, s *Sums) {
+	c.share -= other.share
+	c.a -= other.a
+	c.b -= other.b
+	c.v = s.variance(c.a, c.b)
+}
+
+// influence of a score that is d from the mean.
+func (c *Reading) influence(d float64, s *Sums) float64 { return c.a*d + c.b*(d*d-s.M2) }
+
+// variance is n times the variance of the mean of a(x-mean) + b((x-mean)²-M2).
+func (s *Sums) variance(a, b float64) float64 {
+	return s.bessel * (a*(a*s.M2+2*b*s.M3) + b*b*s.fourth)
+}
+
+func step(point, mean float64) float64 {
+	if mean >= point {
+		return 1
+	}
+	return 0
+}
