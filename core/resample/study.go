@@ -142,7 +142,10 @@ func (s *study) judge(from, to int, sums *gap.Sums) {
 		for w, weight := range s.plan.Weights {
 			target, sup := &s.targets[at], &s.sup[w]
 			d := e.Gap(weight) - target.gap
-			f := fraction{d * d * e.N, max(e.V+e.KappaUnfloored(weight)*target.binomial, target.least)}
+			f := fraction{d * d * e.N, e.V + e.KappaUnfloored(weight)*target.binomial}
+			if f.variance < target.least {
+				f.variance = target.least
+			}
 			if kept := &s.region[at]; f.square >= kept.floor*f.variance {
 				kept.offer(f.square / f.variance)
 			}
