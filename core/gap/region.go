@@ -1,10 +1,3 @@
-// Package gap computes how far the curve's share is from the counted share
-// over a region of the score scale, and how uncertain that is: its influence
-// function, variance and ghost-studentised standard error.
-//
-// Everything is computed for upper tails and stretches. A lower tail is the
-// complement of an upper one: its gap is minus the upper tail's, its limits
-// are mirrored and its standard error is the same.
 package gap
 
 import (

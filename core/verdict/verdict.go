@@ -20,10 +20,10 @@ const (
 // interval, proportions.
 type Limits struct{ Gap, Low, High float64 }
 
-// Of gives the verdict; limits must return the Limits at a weight. Two
-// one-sided tests at the interval's level (Schuirmann 1987, from memory):
-// "holds" at every one of several cutoffs needs no correction (intersection-
-// union; Berger & Hsu 1996, from memory).
+// Of gives the verdict; limits must return the Limits at a weight. It is two
+// one-sided tests (Schuirmann 1987) by means of an interval; "holds" at every
+// one of several cutoffs needs no correction (intersection-union; Berger &
+// Hsu 1996).
 func Of(t Tolerance, limits func(weight float64) Limits) Verdict {
 	holds := true
 	if t.High != nil {
