@@ -1,6 +1,8 @@
 package ask
 
 import (
+	"slices"
+
 	"tailgap/core/cutoff"
 	"tailgap/core/sample"
 )
@@ -19,6 +21,21 @@ type Answer struct {
 	Suppressed []string `json:"suppressed"`
 	Results    []Result `json:"results"`
 }
+
+// General are the answer's warnings but those that a result has as its own:
+// what is left to say where the results' own have been said.
+func (a Answer) General() []string {
+	own := map[string]bool{}
+	for _, r := range a.Results {
+		for _, warning := range r.Warnings {
+			own[warning], own[r.led(warning)] = true, true
+		}
+	}
+	return slices.DeleteFunc(slices.Clone(a.Warnings), func(warning string) bool { return own[warning] })
+}
+
+// led is a warning led by the score's name, for where there are several.
+func (r Result) led(warning string) string { return r.Score + ": " + warning }
 
 // Result is the answer for one score column.
 type Result struct {

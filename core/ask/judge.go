@@ -45,7 +45,7 @@ func Judge(ctx context.Context, question Question, from sample.Sample, progress 
 		answer.Results = append(answer.Results, result)
 		for _, warning := range result.Warnings {
 			if len(from.Columns) > 1 {
-				warning = column.Name + ": " + warning
+				warning = result.led(warning)
 			}
 			answer.Warnings = append(answer.Warnings, warning)
 		}

@@ -166,6 +166,17 @@ func TestSheet(t *testing.T) {
 	}
 }
 
+func TestSheetSaysEachThingOnce(t *testing.T) {
+	a := recipes["vocabulary"].answer()
+	own := "scores pile up on multiples of 5"
+	a.Results[0].Warnings = []string{own}
+	a.Warnings = []string{a.Results[0].Score + ": " + own, "the columns have odd names"}
+	d := read(t, figure.Sheet(a))
+	for _, once := range []string{"cores pile up on multiples of 5.", "The columns have odd names.", a.Program} {
+		assert.Equal(t, 1, strings.Count(d.desc, once), once)
+	}
+}
+
 func TestSheetOfNothing(t *testing.T) {
 	read(t, figure.Sheet(ask.Answer{})).legible(t)
 }

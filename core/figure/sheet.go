@@ -1,7 +1,6 @@
 package figure
 
 import (
-	"slices"
 	"strconv"
 
 	"tailgap/core/ask"
@@ -32,10 +31,8 @@ func Sheet(a ask.Answer) string {
 		s.result(i, r)
 	}
 	s.y += 10
-	for _, text := range append(slices.Clone(a.Warnings), words.Cautions()...) {
-		s.paragraph("soft", text)
-	}
-	s.paragraph("soft", sentences(words.Method(a), a.Program))
+	s.sentences(append(a.General(), words.Cautions()...))
+	s.paragraph("soft", words.Method(a))
 	return drawing{width: sheetWidth, height: s.y + 12, title: s.title(a), description: sentences(s.said...), body: s.String()}.
 		document(Options{Width: sheetWidth, Standalone: true, Prefix: "sheet"})
 }
@@ -78,15 +75,20 @@ func (s *sheet) paragraph(class, text string) {
 	s.said = append(s.said, text)
 }
 
+// sentences writes what must be borne in mind, a paragraph for each text.
+func (s *sheet) sentences(texts []string) {
+	for _, text := range texts {
+		s.paragraph("soft", sentences(words.Capital(text)))
+	}
+}
+
 func (s *sheet) result(index int, r ask.Result) {
 	s.y += 34
 	s.text("title", "start", sheetMargin, s.y-8, words.Name(r.Score))
 	s.said = append(s.said, words.Name(r.Score))
 	s.paragraph("", sentences(words.Capital(words.Curve(r))))
 	s.paragraph("soft", sentences(words.Capital(words.Sample(r))))
-	for _, text := range r.Warnings {
-		s.paragraph("soft", text)
-	}
+	s.sentences(r.Warnings)
 	drawn := map[int]bool{}
 	for i, sweep := range r.Sweeps {
 		prefix := "sheet-" + strconv.Itoa(index) + "-" + strconv.Itoa(i)
@@ -113,9 +115,7 @@ func (s *sheet) finding(r ask.Result, f ask.Finding, prefix string) {
 	}
 	s.paragraph("soft", words.OtherReading(s.q, f))
 	s.paragraph("soft", sentences(words.Capital(words.Settle(f))))
-	for _, note := range f.Notes {
-		s.paragraph("soft", note)
-	}
+	s.sentences(f.Notes)
 	s.y += 12
 	s.place(drawCounted(s.q, r, f, Options{Width: sheetWidth - 2*sheetMargin, Selected: -1, Prefix: prefix}))
 }

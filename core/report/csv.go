@@ -42,7 +42,7 @@ func CSV(a ask.Answer) ([]byte, error) {
 	for _, r := range a.Results {
 		line := row{
 			Score: r.Score, Group: r.Group, Sample: r.Sample, Curve: r.Curve, Demo: a.Demo, Program: a.Program,
-			Warnings: slices.Concat(general(a), r.Warnings), Question: a.Question,
+			Warnings: slices.Concat(a.General(), r.Warnings), Question: a.Question,
 		}
 		findings := r.Cutoffs
 		for i := range max(1, len(findings)) {

@@ -1,7 +1,6 @@
 package report
 
 import (
-	"slices"
 	"strings"
 	"unicode/utf8"
 
@@ -21,7 +20,7 @@ func Text(a ask.Answer) string {
 		t.gap()
 	}
 	t.asked(a.Question)
-	t.list("Warning: ", general(a))
+	t.list("Warning: ", a.General())
 	for _, result := range a.Results {
 		t.gap()
 		t.result(a.Question, result)
@@ -50,17 +49,6 @@ func (t *text) list(label string, texts []string) {
 	for _, one := range texts {
 		t.WriteString(wrapped(label, "  ", strings.TrimSuffix(one, ".")+"."))
 	}
-}
-
-// general are the answer's warnings but those that a score has as its own.
-func general(a ask.Answer) []string {
-	own := map[string]bool{}
-	for _, r := range a.Results {
-		for _, warning := range r.Warnings {
-			own[warning], own[r.Score+": "+warning] = true, true
-		}
-	}
-	return slices.DeleteFunc(slices.Clone(a.Warnings), func(warning string) bool { return own[warning] })
 }
 
 // asked says what the answer is judged by.
