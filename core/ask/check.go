@@ -159,6 +159,9 @@ func (q Question) checkStakes() error {
 			return fmt.Errorf("the tolerance %s needs to know of how many people; say it with heads, such as 4000", limit)
 		}
 	}
+	if l := q.TooLow; l != nil && l.Unit == verdict.OfCount && l.Size >= 100 {
+		return fmt.Errorf("no curve is too low by more than all of the count, so %s says nothing; leave out the limit on too low, or make it smaller", l)
+	}
 	return nil
 }
 

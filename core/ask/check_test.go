@@ -17,21 +17,22 @@ import (
 func TestQuestionsThatCantBeAnswered(t *testing.T) {
 	number := func(x float64) *float64 { return &x }
 	for sentence, change := range map[string]func(q *ask.Question){
-		`the question has the format "tailgap/question/2"; this program reads "tailgap/question/1"`:         func(q *ask.Question) { q.Format = "tailgap/question/2" },
-		`the level 95 is not between 0 and 1; write 0.95 for 95% intervals`:                                 func(q *ask.Question) { q.Level = 95 },
-		`the level 0 is not between 0 and 1; write 0.95 for 95% intervals`:                                  func(q *ask.Question) { q.Level = 0 },
-		`the level 1 is not between 0 and 1; write 0.95 for 95% intervals`:                                  func(q *ask.Question) { q.Level = 1 },
-		`the level NaN is not between 0 and 1; write 0.95 for 95% intervals`:                                func(q *ask.Question) { q.Level = math.NaN() },
-		`199 replicates can't be used; ask for between 200 and 1000000`:                                     func(q *ask.Question) { q.Replicates = 199 },
-		`1000001 replicates can't be used; ask for between 200 and 1000000`:                                 func(q *ask.Question) { q.Replicates = 1_000_001 },
-		`a level of 0.999 needs more than 200 replicates: ask for 1000 or more`:                             func(q *ask.Question) { q.Level, q.Replicates = 0.999, 200 },
-		`-1 workers can't share the work; ask for 1 to 1024, or 0 for one for each core`:                    func(q *ask.Question) { q.Workers = -1 },
-		`a curve with mean 50 and SD 0 can't be drawn; the SD must be above zero and both must be finite`:   func(q *ask.Question) { q.Curve = &curve.Given{Mean: 50} },
-		`a curve with mean +Inf and SD 1 can't be drawn; the SD must be above zero and both must be finite`: func(q *ask.Question) { q.Curve = &curve.Given{Mean: math.Inf(1), SD: 1} },
-		`the cutoff >=5 is there twice; leave one out`:                                                      func(q *ask.Question) { q.Cutoffs = append(question(">=5").Cutoffs, question(">= 5").Cutoffs...) },
-		`0 heads can't be counted; say how many people the share will be applied to, a number above zero`:   func(q *ask.Question) { q.Heads = number(0) },
-		`the tolerance 40heads needs to know of how many people; say it with heads, such as 4000`:           func(q *ask.Question) { q.TooLow = &verdict.Limit{Size: 40, Unit: verdict.Heads} },
-		`the tolerance -1pt can't be used; it must be zero or more`:                                         func(q *ask.Question) { q.TooHigh = points(-1) },
+		`the question has the format "tailgap/question/2"; this program reads "tailgap/question/1"`:                                        func(q *ask.Question) { q.Format = "tailgap/question/2" },
+		`the level 95 is not between 0 and 1; write 0.95 for 95% intervals`:                                                                func(q *ask.Question) { q.Level = 95 },
+		`the level 0 is not between 0 and 1; write 0.95 for 95% intervals`:                                                                 func(q *ask.Question) { q.Level = 0 },
+		`the level 1 is not between 0 and 1; write 0.95 for 95% intervals`:                                                                 func(q *ask.Question) { q.Level = 1 },
+		`the level NaN is not between 0 and 1; write 0.95 for 95% intervals`:                                                               func(q *ask.Question) { q.Level = math.NaN() },
+		`199 replicates can't be used; ask for between 200 and 1000000`:                                                                    func(q *ask.Question) { q.Replicates = 199 },
+		`1000001 replicates can't be used; ask for between 200 and 1000000`:                                                                func(q *ask.Question) { q.Replicates = 1_000_001 },
+		`a level of 0.999 needs more than 200 replicates: ask for 1000 or more`:                                                            func(q *ask.Question) { q.Level, q.Replicates = 0.999, 200 },
+		`-1 workers can't share the work; ask for 1 to 1024, or 0 for one for each core`:                                                   func(q *ask.Question) { q.Workers = -1 },
+		`a curve with mean 50 and SD 0 can't be drawn; the SD must be above zero and both must be finite`:                                  func(q *ask.Question) { q.Curve = &curve.Given{Mean: 50} },
+		`a curve with mean +Inf and SD 1 can't be drawn; the SD must be above zero and both must be finite`:                                func(q *ask.Question) { q.Curve = &curve.Given{Mean: math.Inf(1), SD: 1} },
+		`the cutoff >=5 is there twice; leave one out`:                                                                                     func(q *ask.Question) { q.Cutoffs = append(question(">=5").Cutoffs, question(">= 5").Cutoffs...) },
+		`0 heads can't be counted; say how many people the share will be applied to, a number above zero`:                                  func(q *ask.Question) { q.Heads = number(0) },
+		`the tolerance 40heads needs to know of how many people; say it with heads, such as 4000`:                                          func(q *ask.Question) { q.TooLow = &verdict.Limit{Size: 40, Unit: verdict.Heads} },
+		`no curve is too low by more than all of the count, so 100%count says nothing; leave out the limit on too low, or make it smaller`: func(q *ask.Question) { q.TooHigh, q.TooLow = ofCount(100), ofCount(100) },
+		`the tolerance -1pt can't be used; it must be zero or more`:                                                                        func(q *ask.Question) { q.TooHigh = points(-1) },
 	} {
 		q := question()
 		change(&q)
