@@ -77,7 +77,7 @@ func reading(a *ask.Answer, r *ask.Result) app.UI {
 		app.H2().Text("What was read"),
 		when(len(r.Warnings) > 0, func() app.UI {
 			return app.Ul().Class("warnings").Aria("label", "Warnings").Body(
-				app.Range(r.Warnings).Slice(func(i int) app.UI { return app.Li().Text(words.Line(words.Capital(r.Warnings[i]))) }),
+				app.Range(r.Warnings).Slice(func(i int) app.UI { return app.Li().Text(words.Line(words.Capital(r.Warnings[i]))+".") }),
 			)
 		}),
 		app.P().ID("read").Text(strings.Join(said, " ")),
