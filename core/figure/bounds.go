@@ -16,19 +16,19 @@ func newCorridor(q ask.Question, s ask.Sweep) corridor {
 }
 
 func limitAlong(l *verdict.Limit, heads *float64, s ask.Sweep, sign float64) []float64 {
-	if l == nil || l.Unit == verdict.Heads && (heads == nil || !(*heads > 0)) {
+	if l == nil {
+		return nil
+	}
+	points, known := l.Points(heads)
+	if !known && l.Unit != verdict.OfCount {
 		return nil
 	}
 	along := make([]float64, len(s.Threshold))
 	for i := range along {
-		switch l.Unit {
-		case verdict.Points:
-			along[i] = sign * l.Size
-		case verdict.OfCount:
-			along[i] = sign * l.Size * s.CountedShare[i]
-		default:
-			along[i] = sign * 100 * l.Size / *heads
+		if !known {
+			points = l.Size * s.CountedShare[i]
 		}
+		along[i] = sign * points
 	}
 	return along
 }

@@ -2,10 +2,10 @@ package figure
 
 import (
 	"cmp"
-	"math"
 	"slices"
 
 	"tailgap/core/ask"
+	"tailgap/core/curve"
 	"tailgap/core/cutoff"
 	"tailgap/core/words"
 )
@@ -99,7 +99,7 @@ func (d *countedDrawing) heightOf(b bin) float64 {
 // density is the curve's share in a bar's width about a score.
 func (d *countedDrawing) density(score float64) float64 {
 	z := (score - d.r.Curve.Mean) / d.r.Curve.SD
-	if density := d.width / d.r.Curve.SD * math.Exp(-z*z/2) / math.Sqrt(2*math.Pi); density >= 0 {
+	if density := d.width / d.r.Curve.SD * curve.Density(z); density >= 0 {
 		return density
 	}
 	return 0 // an SD that is no SD

@@ -52,6 +52,19 @@ func ParseLimit(text string) (Limit, error) {
 	return Limit{Size: size, Unit: unit}, nil
 }
 
+// Points is the gap in percentage points at which the limit is reached, heads
+// being the number of people that limits in heads are out of; false where
+// that isn't known, and for a part of the count, which is no known gap.
+func (l Limit) Points(heads *float64) (points float64, known bool) {
+	switch {
+	case l.Unit == Points:
+		return l.Size, true
+	case l.Unit == Heads && heads != nil && *heads > 0:
+		return 100 * l.Size / *heads, true
+	}
+	return 0, false
+}
+
 // String writes the limit as ParseLimit reads it.
 func (l Limit) String() string {
 	return strconv.FormatFloat(l.Size, 'f', -1, 64) + [...]string{"pt", "%count", "heads"}[l.Unit]

@@ -42,6 +42,23 @@ func TestParseLimit(t *testing.T) {
 	}
 }
 
+func TestPoints(t *testing.T) {
+	heads, none := 4000.0, 0.0
+	for _, test := range []struct {
+		limit  string
+		heads  *float64
+		points float64
+		known  bool
+	}{
+		{"1.5pt", nil, 1.5, true}, {"40heads", &heads, 1, true}, {"40heads", nil, 0, false},
+		{"40heads", &none, 0, false}, {"20%count", &heads, 0, false},
+	} {
+		points, known := limit(t, test.limit).Points(test.heads)
+		assert.Equal(t, test.points, points, test.limit)
+		assert.Equal(t, test.known, known, test.limit)
+	}
+}
+
 func at(gap, low, high float64) func(float64) verdict.Limits {
 	return func(float64) verdict.Limits { return verdict.Limits{Gap: gap, Low: low, High: high} }
 }

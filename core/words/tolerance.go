@@ -39,18 +39,6 @@ func Limit(l verdict.Limit) string {
 	return Number(l.Size) + " points"
 }
 
-// edge is the gap in points at which a limit is reached; false for a part of
-// the count, which has no known place on the scale of gaps.
-func edge(q ask.Question, l verdict.Limit) (float64, bool) {
-	switch {
-	case l.Unit == verdict.Points:
-		return l.Size, true
-	case l.Unit == verdict.Heads && q.Heads != nil && *q.Heads > 0:
-		return 100 * l.Size / *q.Heads, true
-	}
-	return 0, false
-}
-
 // Verdict says the verdict and its reason: "fails: too high by more than 1
 // point"; empty without a tolerance.
 func Verdict(q ask.Question, f ask.Finding) string {
@@ -123,7 +111,7 @@ func failedBy(q ask.Question, f ask.Finding) string {
 		nearest = &f.GapPoints
 	}
 	by := "more than "
-	if at, known := edge(q, *passed); known && printAlike(*nearest, at) {
+	if at, known := passed.Points(q.Heads); known && printAlike(*nearest, at) {
 		by = "just over " // else "too high by 1 point: too high by more than 1 point"
 	}
 	return direction + " by " + by + Limit(*passed)
@@ -143,7 +131,7 @@ func reachedLimits(q ask.Question, f ask.Finding) (high, low *verdict.Limit) {
 		if l == nil {
 			return false
 		}
-		at, known := edge(q, *l)
+		at, known := l.Points(q.Heads)
 		if !known || f.GapLow == nil || f.GapHigh == nil {
 			return true
 		}
