@@ -75,10 +75,14 @@ func (w *work) warnings() []string {
 		add("scores pile up on multiples of %s: %.0f%% of the people are there; a cutoff on or beside such a score moves many people at once", number(spacing), 100*share)
 	}
 	if outside := outside(counts, w.scale); outside > 0 {
-		add("%d scores are outside the stated range %s to %s; they were used as they are", outside, number(w.scale.Low), number(w.scale.High))
+		used := "they were used as they are"
+		if outside == 1 {
+			used = "it was used as it is"
+		}
+		add("%s outside the stated range %s to %s; %s", scores(outside), number(w.scale.Low), number(w.scale.High), used)
 	}
 	if off := w.scale.OffStep(); off > 0 {
-		add("%d scores are not a whole number of steps of %s from the lowest score; check the step", off, number(w.scale.Step))
+		add("%s not a whole number of steps of %s from the lowest score; check the step", scores(off), number(w.scale.Step))
 	}
 	if w.scale.Low == 0 && counts.Min() >= 0 && m.Mean < 2*m.SD {
 		add("the mean is less than 2 SD above 0, the lowest score there can be: the scores are skewed, and the curve puts people below 0")
@@ -97,6 +101,13 @@ func extremes(n int) string {
 		return "single most extreme score"
 	}
 	return strconv.Itoa(n) + " most extreme scores"
+}
+
+func scores(n int) string {
+	if n == 1 {
+		return "1 score is"
+	}
+	return strconv.Itoa(n) + " scores are"
 }
 
 func outside(counts sample.Counts, scale sample.Scale) int {

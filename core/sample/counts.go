@@ -28,10 +28,10 @@ func Count(scores []float64) Counts {
 	return table
 }
 
-// Min and Max are the lowest and highest score seen; the table must not be empty.
+// Min is the lowest score seen; the table must not be empty.
 func (c Counts) Min() float64 { return c.Score[0] }
 
-// Max is the highest score seen.
+// Max is the highest score seen; the table must not be empty.
 func (c Counts) Max() float64 { return c.Score[len(c.Score)-1] }
 
 // IndexAtLeast is the index of the first distinct score >= threshold;
