@@ -61,7 +61,7 @@ func (s Scale) Attainable(score float64) bool {
 		return true
 	}
 	steps := (score - s.origin) / s.Step
-	return math.Abs(steps-math.Round(steps)) < 1e-6
+	return math.Abs(steps-math.Round(steps)) < noiseOf(math.Max(math.Abs(score), math.Abs(s.origin))/s.Step, 1e-6)
 }
 
 // AtOrAbove is the lowest attainable score at or above x, and AtOrBelow the
@@ -120,15 +120,32 @@ func detectStep(counts Counts, sd float64) float64 {
 	return step
 }
 
-// wholeIn is true when every score is a whole number of 1/unit.
+// wholeIn is true when every score is a whole number of 1/unit. Scores that
+// differ by more than noise but are near the same whole number are none.
 func wholeIn(scores []float64, unit float64) bool {
+	before := math.NaN()
 	for _, score := range scores {
 		scaled := score * unit
-		if math.Abs(scaled) > 1<<52 || math.Abs(scaled-math.Round(scaled)) > 1e-9*math.Max(1, math.Abs(scaled)) {
+		noise := noiseOf(scaled, 1e-9)
+		if math.Abs(scaled) > 1<<52 || math.Abs(scaled-math.Round(scaled)) > noise {
 			return false
 		}
+		if math.Round(scaled) == math.Round(before) && scaled-before > 4*epsilon*math.Abs(scaled) {
+			return false
+		}
+		before = scaled
 	}
-	return true
+	return math.Round(before) != math.Round(scores[0]*unit)
+}
+
+// epsilon is the distance from 1 to the next number.
+const epsilon = 0x1p-52
+
+// noiseOf is how far a whole number computed from numbers up to the given
+// size may be off: the least that is asked, or some roundings of that size,
+// and never enough to take what isn't whole for it.
+func noiseOf(size, least float64) float64 {
+	return math.Min(math.Max(least, 4*epsilon*math.Abs(size)), 1e-3)
 }
 
 func commonDivisor(a, b float64) float64 {

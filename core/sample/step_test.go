@@ -1,7 +1,9 @@
 package sample_test
 
 import (
+	"fmt"
 	"math"
+	"strconv"
 	"testing"
 
 	"github.com/stretchr/testify/assert"
@@ -47,7 +49,12 @@ func TestStepDetection(t *testing.T) {
 		{"halves", []float64{0.5, 1, 1.5, 3}, 0.1},
 		{"noise of a sum", []float64{0.1 + 0.2, 0.5, 0.7}, 0.1},
 		{"thirds", []float64{1.0 / 3, 2.0 / 3, 1, 2}, 0},
+		{"noise beside the number itself", []float64{0.1 + 0.2, 0.3, 0.5, 0.7}, 0.1},
 		{"a step far below the SD", []float64{0, 1000, 50, 333}, 0},
+		{"tiny scores, all near 0", []float64{1e-12, 2e-12, 7e-12}, 0},
+		{"hundredths of large numbers", []float64{1.7e9, 1.7e9 + 0.01, 1.7e9 + 0.05, 1.7e9 + 0.11}, 0.01},
+		{"large whole numbers", []float64{1e15, 1e15 + 1, 1e15 + 4}, 1},
+		{"nothing but noise", []float64{1, 1 + 0x1p-52}, 0},
 	}
 	for _, test := range tests {
 		assert.Equal(t, test.step, scaleOf(test.scores, sample.StepChoice{}, nil).Step, test.name)
@@ -66,6 +73,19 @@ func TestScaleAsStated(t *testing.T) {
 	none := scaleOf([]float64{3, 4, 6}, sample.StepChoice{None: true}, nil)
 	assert.Zero(t, none.Step)
 	assert.Equal(t, 4.2, none.AtOrAbove(4.2))
+}
+
+// Far from zero a score has fewer binary digits left for its decimals.
+func TestStepsOfLargeNumbers(t *testing.T) {
+	scores := make([]float64, 60)
+	for i := range scores {
+		scores[i], _ = strconv.ParseFloat(fmt.Sprintf("1700000000.%02d", i), 64)
+	}
+	s := scaleOf(scores, sample.StepChoice{}, nil)
+	assert.Equal(t, 0.01, s.Step)
+	assert.Zero(t, s.OffStep())
+	assert.True(t, s.Attainable(1700000000.37))
+	assert.False(t, s.Attainable(1700000000.375))
 }
 
 // On any decimal step, attainable scores are what a person would write.
