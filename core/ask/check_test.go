@@ -2,6 +2,7 @@ package ask_test
 
 import (
 	"context"
+	"encoding/json"
 	"math"
 	"testing"
 
@@ -12,6 +13,7 @@ import (
 	"tailgap/core/curve"
 	"tailgap/core/sample"
 	"tailgap/core/verdict"
+	"tailgap/testdata"
 )
 
 func TestQuestionsThatCantBeAnswered(t *testing.T) {
@@ -63,6 +65,41 @@ func TestSamplesThatCantBeJudged(t *testing.T) {
 	}
 	_, err := ask.Judge(context.Background(), question(), sample.Sample{}, nil)
 	assert.EqualError(t, err, "there is no score to judge; choose a column")
+}
+
+// Far from all scores, or on a scale of one giant step, there are answers
+// still: nobody is there, by the curve or by the count.
+func TestCutoffsFarOut(t *testing.T) {
+	scores := testdata.Open("mathexam", "tests")
+	for _, change := range []func(q *ask.Question){
+		func(q *ask.Question) {},
+		func(q *ask.Question) { q.Curve = &curve.Given{Mean: 20, SD: 5} },
+		func(q *ask.Question) { q.Step, q.HalfStep = sample.StepChoice{Size: 1e300}, true },
+		func(q *ask.Question) { q.Range = &sample.Range{Low: -1e307, High: 1e307} },
+	} {
+		q := question(">=1e300", "<-1e300", "-1e300..1e300")
+		q.TooHigh, q.TooLow = points(1), ofCount(20)
+		change(&q)
+		r := judge(t, q, scores)
+		_, err := json.Marshal(r)
+		assert.NoError(t, err, "no number is NaN or infinite")
+		for i, share := range []float64{0, 0, 1} {
+			assert.Equal(t, share, r.Cutoffs[i].WithoutHalfStep.CurveShare)
+			assert.Equal(t, share, r.Cutoffs[i].CountedShare)
+		}
+	}
+	for sentence, change := range map[string]func(q *ask.Question){
+		"the cutoff <50 is too many SDs from the curve's mean to compute with; check it, the curve and the step": func(q *ask.Question) { q.Curve = &curve.Given{Mean: 20, SD: 1e-320} },
+		"the steps of 1e-09 on the scale of score are too many to count; check the step and the range": func(q *ask.Question) {
+			q.Step, q.Range = sample.StepChoice{Size: 1e-9}, &sample.Range{Low: 0, High: 1e300}
+		},
+		"the steps of 1e-320 on the scale of score are too many to count; check the step and the range": func(q *ask.Question) { q.Step.Size = 1e-320 },
+	} {
+		q := question("<50")
+		change(&q)
+		_, err := ask.Judge(context.Background(), q, of(scores), nil)
+		assert.EqualError(t, err, sentence)
+	}
 }
 
 func TestQuestionFiles(t *testing.T) {

@@ -1,6 +1,9 @@
 package ask
 
 import (
+	"fmt"
+	"math"
+
 	"tailgap/core/curve"
 	"tailgap/core/cutoff"
 	"tailgap/core/gap"
@@ -42,7 +45,7 @@ type sweepPlan struct {
 }
 
 // newWork plans the judging of one column; it refuses a column that has no
-// spread.
+// spread, a scale of too many steps and a cutoff at which no curve can be read.
 func newWork(question Question, column sample.Column) (*work, error) {
 	counts := sample.Count(column.Scores)
 	moments, err := describe(column.Name, counts)
@@ -65,12 +68,20 @@ func newWork(question Question, column sample.Column) (*work, error) {
 		known:     map[key]int{},
 		t:         resample.StudentT(counts.N, question.Level),
 	}
+	if !w.countable() {
+		return nil, fmt.Errorf("the steps of %v on the scale of %s are too many to count; check the step and the range", w.scale.Step, column.Name)
+	}
 	w.halfStep = question.HalfStep && w.scale.Step > 0
 	w.planSweeps()
 	for _, c := range question.Cutoffs {
-		w.region(c, false)
-		if w.scale.Step > 0 {
-			w.region(c, true)
+		for _, halfStep := range []bool{false, true} {
+			if halfStep && w.scale.Step == 0 {
+				continue
+			}
+			if !w.readable(c, halfStep) {
+				return nil, fmt.Errorf("the cutoff %s is too many SDs from the curve's mean to compute with; check it, the curve and the step", shortened(c))
+			}
+			w.region(c, halfStep)
 		}
 	}
 	w.plan.Table = w.table
@@ -78,6 +89,30 @@ func newWork(question Question, column sample.Column) (*work, error) {
 	w.plan.Level, w.plan.Replicates = question.Level, question.Replicates
 	w.plan.Seed, w.plan.Workers = question.Seed, question.Workers
 	return w, nil
+}
+
+// countable is true where a float64 can number every step of the scale.
+func (w *work) countable() bool {
+	low, high := math.Min(w.scale.Low, w.table.Counts.Min()), math.Max(w.scale.High, w.table.Counts.Max())
+	return w.scale.Step == 0 || (high-low)/w.scale.Step < 1<<53
+}
+
+// readable is true where the cutoff has a z that can be written.
+func (w *work) readable(c cutoff.Cutoff, halfStep bool) bool {
+	for _, end := range gap.Ends(w.scale, c, halfStep) {
+		if !finite(w.table.Curve.Z(end.Point)) {
+			return false
+		}
+	}
+	return true
+}
+
+func shortened(c cutoff.Cutoff) string {
+	text := c.String()
+	if len(text) > 40 {
+		return text[:40] + "…"
+	}
+	return text
 }
 
 // region is the index of the cutoff's region, planned if it is new.

@@ -34,7 +34,13 @@ func NewTable(counts sample.Counts, moments sample.Moments, c curve.Normal) Tabl
 	return t
 }
 
-func (t Table) standard(score float64) float64 { return (score - t.Moments.Mean) / t.Moments.SD }
+// farthest is the standard score that stands for all beyond it: the curve's
+// share there is none or all, in every resample, and squares stay finite.
+const farthest = 1e30
+
+func (t Table) standard(score float64) float64 {
+	return math.Max(-farthest, math.Min(farthest, (score-t.Moments.Mean)/t.Moments.SD))
+}
 
 // Region is the set of scores whose share is asked for: an upper tail, or a
 // stretch between two thresholds.
