@@ -75,7 +75,9 @@ func TestCutoffsFarOut(t *testing.T) {
 		func(q *ask.Question) {},
 		func(q *ask.Question) { q.Curve = &curve.Given{Mean: 20, SD: 5} },
 		func(q *ask.Question) { q.Step, q.HalfStep = sample.StepChoice{Size: 1e300}, true },
-		func(q *ask.Question) { q.Step, q.Range = sample.StepChoice{None: true}, &sample.Range{Low: -1e307, High: 1e307} },
+		func(q *ask.Question) {
+			q.Step, q.Range = sample.StepChoice{None: true}, &sample.Range{Low: -1e307, High: 1e307}
+		},
 	} {
 		q := question(">=1e300", "<-1e300", "-1e300..1e300")
 		q.TooHigh, q.TooLow = points(1), ofCount(20)

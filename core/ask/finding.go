@@ -112,7 +112,7 @@ func (w *work) sweep(plan sweepPlan) Sweep {
 	if !w.tolerance.None() {
 		out.Trusted = []Stretch{}
 	}
-	trustedBefore := false
+	unbroken := false // every threshold since the last of the side's own was trusted
 	for i, at := range plan.thresholds {
 		s := shown{w, plan.regions[i], true, plan.side.Lower()}
 		out.CurveShare = append(out.CurveShare, s.curveShare())
@@ -126,14 +126,24 @@ func (w *work) sweep(plan sweepPlan) Sweep {
 			out.BandLow = append(out.BandLow, toPoints(simultaneous.Low))
 			out.BandHigh = append(out.BandHigh, toPoints(simultaneous.High))
 		}
-		trusted := !w.tolerance.None() && s.decide(band) == verdict.Holds
-		if trusted {
+		switch {
+		case w.tolerance.None() || s.decide(band) != verdict.Holds:
+			unbroken = false
+		case w.own(plan.side, i):
 			trivial := w.tolerance.Trivial(s.curveShare(), s.countedShare())
-			out.Trusted = extend(out.Trusted, at, trivial, trustedBefore)
+			out.Trusted = extend(out.Trusted, at, trivial, unbroken)
+			unbroken = true
 		}
-		trustedBefore = trusted
 	}
 	return out
+}
+
+// own is true where the i-th threshold of a sweep parts the people as the side
+// does. On a scale without a step every second one parts them on the other
+// side of the score, and a stretch must not begin or end there: what holds
+// above 29 need not hold at 29 or above.
+func (w *work) own(side cutoff.Side, i int) bool {
+	return w.scale.Step > 0 || side.Strict() == (i%2 == 1)
 }
 
 // extend adds a trusted threshold to the last stretch when it goes on, or

@@ -3,6 +3,7 @@ package ask_test
 import (
 	"context"
 	"math"
+	"slices"
 	"testing"
 
 	"github.com/stretchr/testify/assert"
@@ -221,25 +222,53 @@ func TestTrustedRange(t *testing.T) {
 	}
 }
 
-// In percent of the count the verdict is of curve - 1.2·count and
-// curve - 0.8·count, so it agrees with the ratio's limits up to the quantile.
-func TestPercentOfTheCount(t *testing.T) {
-	q := question(">=30", ">=25", ">=200")
-	q.TooHigh, q.TooLow = ofCount(10), ofCount(10)
-	r := judge(t, q, testdata.Open("pima", "bmi"))
-	for _, f := range r.Cutoffs[:2] {
-		switch {
-		case *f.RatioLow > 1.11 || *f.RatioHigh < 0.89:
-			assert.Equal(t, "fails", *f.Verdict, f.Cutoff)
-		case *f.RatioLow > 0.91 && *f.RatioHigh < 1.09:
-			assert.Equal(t, "holds", *f.Verdict, f.Cutoff)
+// Without a step a stretch begins and ends where the side itself is trusted:
+// "above 29" being inside the tolerance says nothing of "at 29 or above".
+func TestTrustedRangeWithoutAStep(t *testing.T) {
+	for _, sign := range []string{">=", ">", "<=", "<"} {
+		q := question(sign + "30")
+		q.Step, q.Everyone = sample.StepChoice{None: true}, true
+		q.TooHigh, q.TooLow = points(2), points(2)
+		s := judge(t, q, testdata.Open("mathexam", "tests")).Sweeps[0]
+		require.NotEmpty(t, s.Trusted)
+		past := s.Side.Strict()
+		for i, at := range s.Threshold {
+			if (i%2 == 1) != past {
+				continue
+			}
+			inside := math.Abs(s.GapPoints[i]) <= 2
+			within := slices.ContainsFunc(s.Trusted, func(stretch ask.Stretch) bool { return at >= stretch.From && at <= stretch.To })
+			assert.Equal(t, inside, within, "%s%v", sign, at)
 		}
 	}
+}
+
+// In percent of the count the verdict is of curve - 1.2·count and
+// curve - 0.8·count, so it agrees with the ratio's limits up to the quantile:
+// 0.88 to 1.10 and 1.43 to 2.39 here.
+func TestPercentOfTheCount(t *testing.T) {
+	scores := testdata.Open("pima", "age")
+	q := question(">=40", "<=21", ">=200")
+	verdicts := func(tooHigh, tooLow float64) []string {
+		q.TooHigh, q.TooLow = ofCount(tooHigh), ofCount(tooLow)
+		r := judge(t, q, scores)
+		return []string{*r.Cutoffs[0].Verdict, *r.Cutoffs[1].Verdict}
+	}
+	assert.Equal(t, []string{"holds", "fails"}, verdicts(20, 20))
+	assert.Equal(t, []string{"unsettled", "fails"}, verdicts(5, 20))
+	assert.Equal(t, []string{"unsettled", "fails"}, verdicts(20, 5))
+	assert.Equal(t, []string{"holds", "unsettled"}, verdicts(60, 20))
+	assert.Equal(t, []string{"holds", "holds"}, verdicts(150, 20))
+
+	r := judge(t, q, scores)
+	assert.InDelta(t, 0.88, *r.Cutoffs[0].RatioLow, 0.02)
+	assert.InDelta(t, 1.10, *r.Cutoffs[0].RatioHigh, 0.02)
+	assert.InDelta(t, 1.43, *r.Cutoffs[1].RatioLow, 0.03)
+	assert.InDelta(t, 2.39, *r.Cutoffs[1].RatioHigh, 0.08)
 	assert.Equal(t, "unsettled", *r.Cutoffs[2].Verdict, "nobody was counted there")
 	assert.Nil(t, r.Cutoffs[2].PeopleToSettle)
-	all := append([]float64{}, testdata.Open("pima", "bmi")...)
 	q.Everyone = true
-	assert.Equal(t, "fails", *judge(t, q, all).Cutoffs[2].Verdict, "when everyone was counted, nobody is nobody")
+	assert.Equal(t, "fails", *judge(t, q, scores).Cutoffs[2].Verdict, "when everyone was counted, nobody is nobody")
 }
 
 func TestHeads(t *testing.T) {
