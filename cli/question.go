@@ -95,9 +95,9 @@ func (f *questionFlags) declare() {
 	f.group = "What is at stake"
 	value(f, "tolerance", "live with a gap up to `LIMIT` either way: 1.5pt (percentage points), 20%count (part of the counted share) or 40heads (people)",
 		verdict.ParseLimit, func(q *ask.Question, v verdict.Limit) { q.TooHigh, q.TooLow = &v, &v })
-	value(f, "too-high", "live with a curve up to `LIMIT` too high; without --too-low, too low has no limit",
+	value(f, "too-high", "live with a curve up to `LIMIT` too high; a side without a limit is not judged",
 		verdict.ParseLimit, func(q *ask.Question, v verdict.Limit) { q.TooHigh = &v })
-	value(f, "too-low", "live with a curve up to `LIMIT` too low; without --too-high, too high has no limit",
+	value(f, "too-low", "live with a curve up to `LIMIT` too low; a side without a limit is not judged",
 		verdict.ParseLimit, func(q *ask.Question, v verdict.Limit) { q.TooLow = &v })
 	value(f, "heads", "apply the share to `NUMBER` people: gaps are given in people too",
 		number("heads", "4000"), func(q *ask.Question, v float64) { q.Heads = &v })
