@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"context"
 	"fmt"
+	"slices"
 
 	"github.com/spf13/cobra"
 
@@ -112,7 +113,11 @@ func (j *judging) checkUsage(paths []string) error {
 	case formats[j.format] == nil:
 		return misuse(judgeName, "the format %.40q isn't one; write text, json or csv", j.format)
 	}
-	return checkParcels(judgeName, j.parcels(nil, nil, nil), paths)
+	read := slices.Clone(paths)
+	if j.from != "" {
+		read = append(read, j.from)
+	}
+	return checkParcels(judgeName, j.parcels(nil, nil, nil), read)
 }
 
 // ask is the question: the file's, the demo's or the usual one, with what

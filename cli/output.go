@@ -108,10 +108,23 @@ func checkParcels(command string, parcels []parcel, read []string) error {
 }
 
 func sameFile(a, b string) bool {
-	if filepath.Clean(a) == filepath.Clean(b) {
+	if filepath.Clean(a) == filepath.Clean(b) || throughLinks(a) == throughLinks(b) {
 		return true
 	}
 	infoA, errA := os.Stat(a)
 	infoB, errB := os.Stat(b)
 	return errA == nil && errB == nil && os.SameFile(infoA, infoB) && infoA.Mode().IsRegular()
+}
+
+// throughLinks is the path of a file, which need not be there yet, with the
+// links in its folder's path followed.
+func throughLinks(path string) string {
+	folder, err := filepath.EvalSymlinks(filepath.Dir(path))
+	if err != nil {
+		return filepath.Clean(path)
+	}
+	if folder, err = filepath.Abs(folder); err != nil {
+		return filepath.Clean(path)
+	}
+	return filepath.Join(folder, filepath.Base(path))
 }

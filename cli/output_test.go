@@ -46,6 +46,21 @@ func TestWriteFile(t *testing.T) {
 	assert.Len(t, left, 2, "nothing half-written stays behind")
 }
 
+func TestSameFile(t *testing.T) {
+	folder := t.TempDir()
+	at := func(names ...string) string { return filepath.Join(append([]string{folder}, names...)...) }
+	require.NoError(t, os.MkdirAll(at("real"), 0o777))
+	require.NoError(t, os.Symlink("real", at("link")))
+	require.NoError(t, os.WriteFile(at("real", "there"), nil, 0o666))
+	require.NoError(t, os.Link(at("real", "there"), at("other")))
+	assert.True(t, sameFile(at("real", "there"), at("link", "there")))
+	assert.True(t, sameFile(at("real", "there"), at("other")), "two names of one file")
+	assert.True(t, sameFile(at("real", "new"), at("link", "new")), "of a file that isn't there yet")
+	assert.False(t, sameFile(at("real", "new"), at("new")))
+	assert.False(t, sameFile(at("nowhere", "new"), at("real", "new")))
+	assert.False(t, sameFile(os.DevNull, at("real", "there")))
+}
+
 func read(t *testing.T, path string) string {
 	t.Helper()
 	text, err := os.ReadFile(path)
