@@ -45,8 +45,8 @@ func scaled(whole float64, exponent int) float64 {
 }
 
 // scoreTicks are the ticks of a frame and their labels, about one for each 70
-// px (50 in a narrow figure) and never so many that labels touch. A label that would stick out of the
-// figure, which is width px wide, is empty.
+// px (50 in a narrow figure) and never so many that labels touch. A label that
+// would stick out of the figure, which is width px wide, is empty.
 func scoreTicks(f Frame, step *float64, size, width float64) ([]float64, []string) {
 	least := 0.0
 	if step != nil {

@@ -25,8 +25,8 @@ var foreign = [...]struct{ mark, message string }{
 }
 
 // plainText hands a source on as clean text: no byte order mark, line ends LF
-// or CR LF. It fails, and keeps failing, at a zero
-// byte, at a row that has no end, and where the source fails.
+// or CR LF. It fails, and keeps failing, at a zero byte, at a row that has no
+// end, and where the source fails.
 type plainText struct {
 	source  io.Reader
 	err     error

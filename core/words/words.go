@@ -1,6 +1,8 @@
 // Package words says an Answer in sentences and printed figures: every
 // number that a person reads, on the page, in the report, in a figure or in
-// the terminal, is worded here and nowhere else.
+// the terminal, is worded here and nowhere else. Only warnings and notes, which
+// are sentences in the Answer itself, are worded where they arise (core/ask),
+// and cutoffs print themselves as they are written.
 //
 // The parts of a sentence are functions of their own (Gap, Limits, Ratio,
 // Heads, Verdict), and the sentences are built from those very parts, so that
