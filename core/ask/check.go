@@ -35,8 +35,10 @@ func NewQuestion() Question {
 
 // ReadQuestion reads a question file: JSON with the version QuestionFormat.
 // What the file leaves out keeps its default. An unknown version, an unknown
-// field and a question that Check refuses are errors.
+// field, a name that is there twice and a question that Check refuses are
+// errors.
 func ReadQuestion(text []byte) (Question, error) {
+	text = bytes.TrimPrefix(text, []byte("\ufeff")) // some editors write one
 	var version struct {
 		Format *string `json:"format"`
 	}
@@ -59,6 +61,9 @@ func ReadQuestion(text []byte) (Question, error) {
 	if _, err := decoder.Token(); !errors.Is(err, io.EOF) {
 		return Question{}, errors.New("the question file goes on after the question; a file holds one question")
 	}
+	if err := strictly(text); err != nil {
+		return Question{}, fmt.Errorf("the question file can't be read: %w", err)
+	}
 	return question.filled(), question.Check()
 }
 
@@ -70,9 +75,9 @@ func plainer(err error, text []byte) error {
 	case errors.As(err, &syntax):
 		return fmt.Errorf("line %d is not JSON", 1+bytes.Count(text[:min(int(syntax.Offset), len(text))], []byte("\n")))
 	case errors.As(err, &kind) && kind.Field != "":
-		return fmt.Errorf("%q can't be a %s", kind.Field, kind.Value)
+		return fmt.Errorf("%.60q can't be %s; write %s", kind.Field, jsonWord(kind.Value), wanted(kind.Type))
 	case errors.As(err, &kind):
-		return fmt.Errorf("it holds a JSON %s", kind.Value)
+		return fmt.Errorf("it holds %s", jsonWord(kind.Value))
 	}
 	if field, unknown := strings.CutPrefix(err.Error(), "json: unknown field "); unknown {
 		return fmt.Errorf("there is no %s in a question", field)

@@ -121,18 +121,34 @@ func TestQuestionFiles(t *testing.T) {
 	assert.Equal(t, 0.95, short.Level)
 	assert.Equal(t, 10_000, short.Replicates)
 
+	for _, text := range []string{`{"format":"tailgap/question/1","level":null,"range":null,"curve":null,"cutoffs":null}`, "\ufeff" + `{"format":"tailgap/question/1"}`} {
+		usual, err := ask.ReadQuestion([]byte(text))
+		require.NoError(t, err)
+		assert.Equal(t, ask.NewQuestion(), usual)
+	}
+
 	for text, sentence := range map[string]string{
 		`{`:                                  `this is not a question file, which is a JSON object with a format: line 1 is not JSON`,
-		`[]`:                                 `this is not a question file, which is a JSON object with a format: it holds a JSON array`,
+		`[]`:                                 `this is not a question file, which is a JSON object with a format: it holds a list in brackets`,
 		`{"cutoffs":[]}`:                     `the question file has no format; this program reads "tailgap/question/1"`,
 		`{"format":"tailgap/question/9"}`:    `the question file has the format "tailgap/question/9"; this program reads "tailgap/question/1"`,
 		`{"format":"tailgap/question/1"} {}`: `this is not a question file, which is a JSON object with a format: line 1 is not JSON`,
-		`{"format":"tailgap/question/1","colour":1}`:         `the question file can't be read: there is no "colour" in a question`,
-		`{"format":"tailgap/question/1","cutoffs":["x"]}`:    `the question file can't be read: the cutoff "x" can't be read; write it as >=50, >50, <=20, <20 or 20..30, decimals with a point`,
-		`{"format":"tailgap/question/1","too_high":"1%"}`:    `the question file can't be read: the tolerance "1%" could mean two things; write 1pt for percentage points or 1%count for a part of the counted share`,
-		`{"format":"tailgap/question/1","level":"high"}`:     `the question file can't be read: "level" can't be a string`,
-		`{"format":"tailgap/question/1","level":1.5}`:        `the level 1.5 is not between 0 and 1; write 0.95 for 95% intervals`,
-		`{"format":"tailgap/question/1","header":"perhaps"}`: `the question file can't be read: the header setting "perhaps" can't be read; write auto, yes or no`,
+		`{"format":"tailgap/question/1","colour":1}`:                         `the question file can't be read: there is no "colour" in a question`,
+		`{"format":"tailgap/question/1","cutoffs":["x"]}`:                    `the question file can't be read: the cutoff "x" can't be read; write it as >=50, >50, <=20, <20 or 20..30, decimals with a point`,
+		`{"format":"tailgap/question/1","too_high":"1%"}`:                    `the question file can't be read: the tolerance "1%" could mean two things; write 1pt for percentage points or 1%count for a part of the counted share`,
+		`{"format":"tailgap/question/1","level":"high"}`:                     `the question file can't be read: "level" can't be a text in quotes; write a number`,
+		`{"format":"tailgap/question/1","step":1}`:                           `the question file can't be read: "step" can't be a number; write a text in quotes`,
+		`{"format":"tailgap/question/1","seed":-1}`:                          `the question file can't be read: "seed" can't be the number -1; write a whole number from 0 up`,
+		`{"format":"tailgap/question/1","curve":[50,10]}`:                    `the question file can't be read: "curve" can't be a list in brackets; write an object in braces`,
+		`{"format":"tailgap/question/1","scores":"vocabulary"}`:              `the question file can't be read: "scores" can't be a text in quotes; write a list in brackets`,
+		`{"format":"tailgap/question/1","everyone":{}}`:                      `the question file can't be read: "everyone" can't be an object in braces; write true or false`,
+		`{"format":"tailgap/question/1","cutoffs":[null]}`:                   `the question file can't be read: "cutoffs" holds a null; write a value, or leave it out`,
+		`{"format":"tailgap/question/1","curve":{"sd":13.1}}`:                `the question file can't be read: a given curve needs both mean and sd; without a curve it is fitted to the scores`,
+		`{"format":"tailgap/question/1","curve":{"mean":null,"sd":13.1}}`:    `the question file can't be read: "mean" holds a null; write a value, or leave it out`,
+		`{"format":"tailgap/question/1","level":0.9,"Level":0.5}`:            `the question file can't be read: "Level" is there twice in the question; leave one out`,
+		`{"format":"tailgap/question/1","curve":{"mean":1,"mean":2,"sd":1}}`: `the question file can't be read: "mean" is there twice in "curve"; leave one out`,
+		`{"format":"tailgap/question/1","level":1.5}`:                        `the level 1.5 is not between 0 and 1; write 0.95 for 95% intervals`,
+		`{"format":"tailgap/question/1","header":"perhaps"}`:                 `the question file can't be read: the header setting "perhaps" can't be read; write auto, yes or no`,
 	} {
 		_, err := ask.ReadQuestion([]byte(text))
 		assert.EqualError(t, err, sentence)
