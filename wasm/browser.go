@@ -10,9 +10,10 @@ import (
 func byID(id string) app.Value { return app.Window().GetElementByID(id) }
 
 // focusOn moves the focus to the first of the ids that is on the page, once
-// what has just changed is shown.
-func focusOn(ctx app.Context, ids ...string) {
-	ctx.Defer(func(app.Context) {
+// what has just changed is shown. It is the sheet that waits for that: the
+// element an event came from may be gone by then.
+func (s *sheet) focusOn(ids ...string) {
+	s.page.Defer(func(app.Context) {
 		for _, id := range ids {
 			if element := byID(id); element.Truthy() {
 				element.Call("focus")
@@ -24,8 +25,8 @@ func focusOn(ctx app.Context, ids ...string) {
 
 // focusInside moves the focus to the first field of an element, once it is
 // shown.
-func focusInside(ctx app.Context, id string) {
-	ctx.Defer(func(app.Context) {
+func (s *sheet) focusInside(id string) {
+	s.page.Defer(func(app.Context) {
 		field := byID(id)
 		if field.Truthy() {
 			field = field.Call("querySelector", "input:not([hidden]), select, textarea, button")

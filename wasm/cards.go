@@ -21,14 +21,15 @@ func (s *sheet) cards(q ask.Question, r *ask.Result) app.UI {
 		)
 	}
 	column := float64(s.width)
-	frame := figure.SweepFrame(*r, s.options("sweep"))
-	grips := make([]float64, len(r.Cutoffs))
+	poles := make([][]float64, len(r.Cutoffs))
+	middles := make([]float64, len(r.Cutoffs))
 	for i, f := range r.Cutoffs {
-		grips[i] = math.Min(math.Max(frame.X(middle(f.Cutoff)), frame.Left), frame.Right)
+		poles[i] = polesOf(f.Cutoff, figure.SweepFrame(*r, s.options("sweep")))
+		middles[i] = (poles[i][0] + poles[i][len(poles[i])-1]) / 2
 	}
 	var left []float64
 	if s.width >= stacked {
-		left = hang(grips, column)
+		left = hang(middles, column)
 	}
 	if left == nil {
 		return app.Div().ID("cards").Class("cards", "grid").Body(
@@ -36,7 +37,7 @@ func (s *sheet) cards(q ask.Question, r *ask.Result) app.UI {
 		)
 	}
 	return app.Div().ID("cards").Class("cards").Body(
-		app.Raw(ties(grips, left, column, s.selected)),
+		app.Raw(ties(poles, left, column, s.selected)),
 		app.Div().Class("row").Body(s.row(q, r, left)...),
 	)
 }
@@ -58,12 +59,13 @@ func (s *sheet) row(q ask.Question, r *ask.Result, left []float64) []app.UI {
 	return row
 }
 
-// middle is the score under which a cutoff's card hangs.
-func middle(c cutoff.Cutoff) float64 {
+// polesOf is where a cutoff's grip stands, in px: two places for a stretch.
+func polesOf(c cutoff.Cutoff, frame figure.Frame) []float64 {
+	at := func(score float64) float64 { return math.Min(math.Max(frame.X(score), frame.Left), frame.Right) }
 	if c.Side == cutoff.Stretch {
-		return c.At/2 + c.To/2
+		return []float64{at(c.At), at(c.To)}
 	}
-	return c.At
+	return []float64{at(c.At)}
 }
 
 // card is what was found at one cutoff.
@@ -119,14 +121,16 @@ func gapLines(q ask.Question, f ask.Finding) app.UI {
 }
 
 func interval(limits string) app.UI {
-	return when(limits != "", func() app.UI { return app.Span().Class("soft").Text(" (" + limits + ")") })
+	return when(limits != "", func() app.UI {
+		return app.Span().Body(app.Text(" "), app.Span().Class("soft interval").Text("("+limits+")"))
+	})
 }
 
 func verdictLines(q ask.Question, f ask.Finding) app.UI {
 	return when(f.Verdict != nil, func() app.UI {
 		return app.P().Class("said").Body(
 			shownText("verdict", *f.Verdict, *f.Verdict).Class("verdict"),
-			app.Text(" "+words.Capital(words.Reason(q, f))),
+			app.Text(" "+words.Capital(words.Reason(q, f))+"."),
 			when(words.Settle(f) != "", func() app.UI {
 				return app.Span().Class("line soft").Text(words.Capital(words.Settle(f)) + ".")
 			}),

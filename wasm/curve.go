@@ -22,9 +22,9 @@ func (s *sheet) curveEditor() app.UI {
 		),
 		app.Label().Body(
 			app.Input().ID("curve-given").Type("radio").Name("curve").Checked(given).
-				OnChange(s.act("curve-given", func(ctx app.Context, _ app.Event) {
+				OnChange(s.act("curve-given", func(app.Context, app.Event) {
 					s.draft.given = true
-					focusOn(ctx, "mean")
+					s.focusOn("mean")
 				})),
 			app.Text(" given, as in printed norms"),
 		),

@@ -62,7 +62,7 @@ func (s *sheet) cutoffEditor(i int) func() app.UI {
 	return func() app.UI {
 		c, at := s.desk.question.Cutoffs[i], atCutoff(i)
 		remove := app.Button().Type("button").ID("remove-" + string(at)).Text("Remove").
-			OnClick(s.act("remove-"+string(at), func(ctx app.Context, _ app.Event) { s.removeCutoff(ctx, i) }))
+			OnClick(s.act("remove-"+string(at), func(app.Context, app.Event) { s.removeCutoff(i) }))
 		return app.Span().Class("fields").Body(append(s.cutoffFields(at, &c), remove)...)
 	}
 }
@@ -87,7 +87,7 @@ func (s *sheet) cutoffFields(at place, c *cutoff.Cutoff) []app.UI {
 	}
 	id := string(at)
 	changed := func(name string) (app.EventHandler, any) {
-		return s.act(name+id, func(ctx app.Context, _ app.Event) { s.cutoffTyped(ctx, at) })
+		return s.act(name+id, func(app.Context, app.Event) { s.cutoffTyped(at) })
 	}
 	choose := app.Select().ID("side-"+id).Aria("label", "Which people").OnChange(changed("side-")).Body(
 		app.Range(sides).Slice(func(i int) app.UI {
@@ -106,7 +106,7 @@ func (s *sheet) cutoffFields(at place, c *cutoff.Cutoff) []app.UI {
 
 // cutoffTyped takes in what now stands in the fields of a cutoff. Someone may
 // also write a whole cutoff, such as >=50, into the number's field.
-func (s *sheet) cutoffTyped(ctx app.Context, at place) {
+func (s *sheet) cutoffTyped(at place) {
 	var side cutoff.Side
 	if err := side.UnmarshalText([]byte(valueOf("side-" + string(at)))); err != nil {
 		return
@@ -125,11 +125,11 @@ func (s *sheet) cutoffTyped(ctx app.Context, at place) {
 	default:
 		c, err = cutoff.Parse(side.String() + from)
 	}
-	s.putCutoff(ctx, at, c, err)
+	s.putCutoff(at, c, err)
 }
 
 // putCutoff puts a cutoff in its place in the question, or at its end.
-func (s *sheet) putCutoff(ctx app.Context, at place, c cutoff.Cutoff, err error) {
+func (s *sheet) putCutoff(at place, c cutoff.Cutoff, err error) {
 	q := s.desk.question
 	q.Cutoffs = slices.Clone(q.Cutoffs)
 	i := at.cutoff()
@@ -143,14 +143,14 @@ func (s *sheet) putCutoff(ctx app.Context, at place, c cutoff.Cutoff, err error)
 	}
 	s.pick(i)
 	if at == atAdd {
-		s.close(ctx)
+		s.close()
 	}
 }
 
-func (s *sheet) removeCutoff(ctx app.Context, i int) {
+func (s *sheet) removeCutoff(i int) {
 	q := s.desk.question
 	q.Cutoffs = slices.Delete(slices.Clone(q.Cutoffs), i, i+1)
-	s.close(ctx)
+	s.close()
 	s.change(atAdd, q, nil)
 	s.pick(max(0, i-1))
 }

@@ -46,7 +46,7 @@ func (s *sheet) takePaste(e app.Event) {
 // take opens a file that the browser holds.
 func (s *sheet) take(blob app.Value) {
 	name := shortName(blob.Get("name").String())
-	s.show(s.page, atData)
+	s.show(atData)
 	go func() {
 		copied, err := copied(blob)
 		s.desk.soon(func() {
@@ -64,7 +64,7 @@ func (s *sheet) takeText(text string) {
 	if text == "" {
 		return
 	}
-	s.show(s.page, atData)
+	s.show(atData)
 	s.desk.open(&file{name: pastedName, blob: blobOf(text)})
 }
 

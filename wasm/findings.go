@@ -69,18 +69,27 @@ func stretches(q ask.Question, r *ask.Result) app.UI {
 
 // reading is what was read and with what it was compared, with the warnings.
 func reading(a *ask.Answer, r *ask.Result) app.UI {
-	said := []string{words.Sample(*r), words.Moments(*r), words.Scale(*r), "judged against " + words.Curve(*r), words.Method(*a)}
-	for i, text := range said {
-		said[i] = words.Capital(strings.TrimSuffix(text, ".")) + "."
+	said := []struct{ term, text string }{
+		{"Scores", words.Sample(*r)}, {"Shape", words.Moments(*r)}, {"Scale", words.Scale(*r)},
+		{"Curve", words.Curve(*r)}, {"Method", words.Method(*a)},
 	}
 	return app.Section().ID("reading").Body(
 		app.H2().Text("What was read"),
 		when(len(r.Warnings) > 0, func() app.UI {
 			return app.Ul().Class("warnings").Aria("label", "Warnings").Body(
-				app.Range(r.Warnings).Slice(func(i int) app.UI { return app.Li().Text(words.Line(words.Capital(r.Warnings[i]))+".") }),
+				app.Range(r.Warnings).Slice(func(i int) app.UI {
+					return app.Li().Text(words.Line(words.Capital(r.Warnings[i])) + ".")
+				}),
 			)
 		}),
-		app.P().ID("read").Text(strings.Join(said, " ")),
+		app.Dl().Body(
+			app.Range(said).Slice(func(i int) app.UI {
+				return app.Div().Body(
+					app.Dt().Text(said[i].term),
+					app.Dd().Text(words.Capital(strings.TrimSuffix(said[i].text, "."))+"."),
+				)
+			}),
+		),
 	)
 }
 

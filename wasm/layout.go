@@ -77,19 +77,22 @@ func rising(x []float64) []float64 {
 	return fitted
 }
 
-// ties draws a line from each grip at the top to the middle of its card.
-func ties(grips, left []float64, column float64, selected int) string {
+// ties draws a line from each pole of a grip, at the top, to the middle of its
+// card.
+func ties(poles [][]float64, left []float64, column float64, selected int) string {
 	var b strings.Builder
 	px := func(x float64) string { return strconv.FormatFloat(x, 'f', 1, 64) }
 	b.WriteString(`<svg xmlns="http://www.w3.org/2000/svg" class="ties" aria-hidden="true" width="` + px(column) +
 		`" height="` + px(tieHeight) + `" viewBox="0 0 ` + px(column) + ` ` + px(tieHeight) + `">`)
-	for i, grip := range grips {
+	for i := range poles {
 		middle, class := left[i]+cardWidth/2, "tie"
 		if i == selected {
 			class = "tie selected"
 		}
-		b.WriteString(`<path class="` + class + `" d="M` + px(grip) + ` 0C` + px(grip) + ` ` + px(tieHeight*0.7) + ` ` +
-			px(middle) + ` ` + px(tieHeight*0.3) + ` ` + px(middle) + ` ` + px(tieHeight) + `"/>`)
+		for _, pole := range poles[i] {
+			b.WriteString(`<path class="` + class + `" d="M` + px(pole) + ` 0C` + px(pole) + ` ` + px(tieHeight*0.7) + ` ` +
+				px(middle) + ` ` + px(tieHeight*0.3) + ` ` + px(middle) + ` ` + px(tieHeight) + `"/>`)
+		}
 	}
 	b.WriteString(`</svg>`)
 	return b.String()

@@ -75,9 +75,9 @@ func TestRising(t *testing.T) {
 	}
 }
 
-func TestTiesRunFromEachGripToItsCard(t *testing.T) {
-	svg := ties([]float64{100, 700}, []float64{0, 600}, 1000, 1)
-	assert.Equal(t, 2, strings.Count(svg, "<path"))
+func TestTiesRunFromEachPoleToItsCard(t *testing.T) {
+	svg := ties([][]float64{{100, 140}, {700}}, []float64{0, 600}, 1000, 1)
+	assert.Equal(t, 3, strings.Count(svg, "<path"))
 	assert.Contains(t, svg, `d="M100.0 0C`)
 	assert.Contains(t, svg, "118.0 26.0")
 	assert.Equal(t, 1, strings.Count(svg, `class="tie selected"`))

@@ -26,7 +26,12 @@ func (s *sheet) sentence() app.UI {
 	)
 	return app.Section().Class("asking").Aria("label", "The question").Body(
 		app.Div().Class("question").Body(parts...),
-		app.Div().Class("small-print").Body(s.slot(atMore, moreWords(q), "", s.moreEditor)),
+		app.Div().Class("small-print").Body(
+			s.slot(atMore, moreWords(q), "", s.moreEditor),
+			when(s.desk.data.demo, func() app.UI {
+				return app.P().Text("These scores are made up. For your own, drop a file anywhere on this page, paste them, or choose a file where the question names its scores.")
+			}),
+		),
 	)
 }
 
@@ -35,28 +40,30 @@ func (s *sheet) sentence() app.UI {
 func (s *sheet) slot(at place, text, mark string, editor func() app.UI) app.UI {
 	id, open := string(at), s.open == at
 	return app.Span().Class("slotted").Body(
-		app.Button().Type("button").Class("slot").ID("slot-"+id).Text(text).
+		// Not a button element: that would stand in the sentence as one block
+		// and could not run over the end of a line.
+		app.Span().Role("button").TabIndex(0).Class("slot").ID("slot-"+id).Text(text).
 			Aria("expanded", open).Aria("controls", "editor-"+id).
-			OnClick(s.act("slot-"+id, func(ctx app.Context, _ app.Event) {
-				if s.open == at {
-					s.close(ctx)
-				} else {
-					s.show(ctx, at)
+			OnClick(s.act("slot-"+id, func(app.Context, app.Event) { s.toggle(at) })).
+			OnKeyDown(s.act("slot-key-"+id, func(_ app.Context, e app.Event) {
+				if key := e.Get("key").String(); key == "Enter" || key == " " {
+					e.PreventDefault() // or the page would scroll
+					s.toggle(at)
 				}
 			})),
 		app.Text(mark),
 		when(open, func() app.UI {
 			return app.Span().Class("editor").ID("editor-"+id).Role("group").Aria("label", text).
-				OnKeyDown(s.act("keys-"+id, func(ctx app.Context, e app.Event) {
+				OnKeyDown(s.act("keys-"+id, func(_ app.Context, e app.Event) {
 					if e.Get("key").String() == "Escape" {
-						s.close(ctx)
+						s.close()
 					}
 				})).
 				Body(
 					editor(),
 					trouble(s.desk.trouble[at]),
 					app.Button().Type("button").Class("done").Text("Done").
-						OnClick(s.act("done-"+id, func(ctx app.Context, _ app.Event) { s.close(ctx) })),
+						OnClick(s.act("done-"+id, func(app.Context, app.Event) { s.close() })),
 				)
 		}),
 		// What is wrong with a part is said beside it, also when it is closed.
@@ -64,21 +71,30 @@ func (s *sheet) slot(at place, text, mark string, editor func() app.UI) app.UI {
 	)
 }
 
+// toggle opens a slot's editor, or closes it.
+func (s *sheet) toggle(at place) {
+	if s.open == at {
+		s.close()
+		return
+	}
+	s.show(at)
+}
+
 // show opens a slot's editor and puts the focus into it.
-func (s *sheet) show(ctx app.Context, at place) {
+func (s *sheet) show(at place) {
 	if s.open == at {
 		return
 	}
 	s.forget()
 	s.open = at
-	focusInside(ctx, "editor-"+string(at))
+	s.focusInside("editor-" + string(at))
 }
 
 // close closes the open editor and goes back to its slot.
-func (s *sheet) close(ctx app.Context) {
+func (s *sheet) close() {
 	at := s.open
 	s.forget()
-	focusOn(ctx, "slot-"+string(at), "slot-"+string(atAdd))
+	s.focusOn("slot-"+string(at), "slot-"+string(atAdd))
 }
 
 // forget drops the open editor, with what was typed there and came to nothing.

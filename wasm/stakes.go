@@ -53,7 +53,7 @@ func (s *sheet) limitEditor(at place) func() app.UI {
 				}),
 			),
 			app.Button().Type("button").ID("none-"+id).Text("No limit").
-				OnClick(s.act("none-"+id, func(ctx app.Context, _ app.Event) { s.liftLimit(ctx, at) })),
+				OnClick(s.act("none-"+id, func(app.Context, app.Event) { s.liftLimit(at) })),
 		)
 	}
 }
@@ -71,11 +71,11 @@ func (s *sheet) limitTyped(at place) {
 	s.change(at, q, err)
 }
 
-func (s *sheet) liftLimit(ctx app.Context, at place) {
+func (s *sheet) liftLimit(at place) {
 	q := s.desk.question
 	*limitOf(&q, at) = nil
 	if s.change(at, q, nil) {
-		s.close(ctx)
+		s.close()
 	}
 }
 
@@ -90,9 +90,9 @@ func (s *sheet) headsEditor() app.UI {
 		app.Input().ID("heads").Class("figure").AutoComplete(false).Value(heads).
 			OnChange(s.act("heads", func(ctx app.Context, _ app.Event) { s.headsTyped(typed(ctx)) })),
 		app.Button().Type("button").ID("no-heads").Text("Shares only").
-			OnClick(s.act("no-heads", func(ctx app.Context, _ app.Event) {
+			OnClick(s.act("no-heads", func(app.Context, app.Event) {
 				if s.headsTyped("") {
-					s.close(ctx)
+					s.close()
 				}
 			})),
 	)

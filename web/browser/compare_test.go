@@ -18,11 +18,12 @@ import (
 	"tailgap/core/words"
 )
 
-// commanded is what the command answers: as the core reads it, and cutoff by
-// cutoff as plain JSON.
+// commanded is what the command answers: as the core reads it, and as plain
+// JSON; at says which of the results is looked at.
 type commanded struct {
 	ask.Answer
-	cutoffs []map[string]any // of the first result
+	plain []struct{ Cutoffs []map[string]any }
+	at    int
 }
 
 // judge asks the command.
@@ -41,7 +42,7 @@ func judge(t *testing.T, args ...string) commanded {
 		Results []struct{ Cutoffs []map[string]any }
 	}
 	require.NoError(t, json.Unmarshal(out.Bytes(), &plain))
-	return commanded{answer, plain.Results[0].Cutoffs}
+	return commanded{answer, plain.Results, 0}
 }
 
 // leaves are the values of a JSON object by their paths, without what is null.
@@ -82,12 +83,12 @@ func (p *page) all(selector string) []shownAt {
 // every text as core/words has it.
 func (p *page) shows(c commanded) {
 	p.Helper()
-	r := c.Results[0]
+	r := c.Results[c.at]
 	cards, rows := p.all("#cards article"), p.all("#table tbody tr")
 	slices.SortStableFunc(cards, func(a, b shownAt) int { return index(r, a.Cutoff) - index(r, b.Cutoff) })
 	require.Len(p, cards, len(r.Cutoffs))
 	for i, f := range r.Cutoffs {
-		exact := leaves("", c.cutoffs[i], map[string]any{})
+		exact := leaves("", c.plain[c.at].Cutoffs[i], map[string]any{})
 		assert.Equal(p, f.Cutoff.String(), cards[i].Cutoff)
 		p.holds(cards[i], exact, cardTexts(c.Question, f))
 		p.says(cards[i].Text, words.Capital(f.Cutoff.Words()), words.Limits(f.Reading), words.HeadLimits(f),
@@ -99,7 +100,7 @@ func (p *page) shows(c commanded) {
 		p.tells(mine, exact, c.Question, f)
 	}
 	reading := get[string](p, `document.querySelector("#reading").textContent`)
-	p.says(reading, words.Capital(words.Sample(r)), words.Capital(words.Moments(r)), words.Capital(words.Scale(r)), words.Curve(r), words.Method(c.Answer))
+	p.says(reading, words.Capital(words.Sample(r)), words.Capital(words.Moments(r)), words.Capital(words.Scale(r)), words.Capital(words.Curve(r)), words.Method(c.Answer))
 	for _, warning := range r.Warnings {
 		p.says(reading, words.Line(words.Capital(warning)))
 	}
