@@ -97,7 +97,8 @@ func (p *placer) place(width float64, spots []point) (point, bool) {
 }
 
 func (p *placer) free(b box, strict bool) bool {
-	if b.left < p.field.left || b.right > p.field.right || b.top < p.field.top || b.bottom > p.field.bottom {
+	inside := b.left >= p.field.left && b.right <= p.field.right && b.top >= p.field.top && b.bottom <= p.field.bottom
+	if !inside { // a spot that isn't a number is inside nothing
 		return false
 	}
 	for _, other := range p.taken {

@@ -3,6 +3,7 @@ package figure_test
 import (
 	"math"
 	"math/rand/v2"
+	"slices"
 	"strconv"
 	"testing"
 
@@ -81,7 +82,7 @@ func anyRecipe(t *rapid.T) recipe {
 	} else {
 		m.scores = draw(n, seed, func(r *rand.Rand) float64 { return scale * (1 + 0.3*r.NormFloat64()) })
 	}
-	m.scores[0] += max(1, m.step) // never all equal
+	m.scores[0] = slices.Max(m.scores) + max(1, m.step) // never all equal
 	m.tooHigh = rapid.SampledFrom([]string{"", "1pt", "20%count", "40heads", "60pt"}).Draw(t, "too high")
 	m.tooLow = rapid.SampledFrom([]string{"", "0.1pt", "100%count", "5heads"}).Draw(t, "too low")
 	unit := max(m.step, scale/100)
