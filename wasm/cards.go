@@ -28,8 +28,12 @@ func (s *sheet) cards(q ask.Question, r *ask.Result) app.UI {
 		middles[i] = (poles[i][0] + poles[i][len(poles[i])-1]) / 2
 	}
 	var left []float64
+	width, row := cardWide, "row wide"
 	if s.width >= stacked {
-		left = hang(middles, column)
+		if left = hang(middles, column, width); left == nil {
+			width, row = cardWidth, "row"
+			left = hang(middles, column, width)
+		}
 	}
 	if left == nil {
 		return app.Div().ID("cards").Class("cards", "grid").Body(
@@ -37,14 +41,14 @@ func (s *sheet) cards(q ask.Question, r *ask.Result) app.UI {
 		)
 	}
 	return app.Div().ID("cards").Class("cards").Body(
-		app.Raw(ties(poles, left, column, s.selected)),
-		app.Div().Class("row").Body(s.row(q, r, left)...),
+		app.Raw(ties(poles, left, column, width, s.selected)),
+		app.Div().Class(row).Body(s.row(q, r, left, width)...),
 	)
 }
 
 // row hangs the cards from left to right, each with its distance to the one
 // before. The policy lets no style attribute in: the loader sets data-at.
-func (s *sheet) row(q ask.Question, r *ask.Result, left []float64) []app.UI {
+func (s *sheet) row(q ask.Question, r *ask.Result, left []float64, width float64) []app.UI {
 	order := make([]int, len(left))
 	for i := range order {
 		order[i] = i
@@ -54,7 +58,7 @@ func (s *sheet) row(q ask.Question, r *ask.Result, left []float64) []app.UI {
 	end := 0.0
 	for rank, i := range order {
 		row[rank] = s.card(q, r.Cutoffs[i], i).DataSet("at", exact(left[i]-end)+"px")
-		end = left[i] + cardWidth
+		end = left[i] + width
 	}
 	return row
 }

@@ -50,7 +50,7 @@ func (s *sheet) cutoffSlots() []app.UI {
 		}
 		parts = append(parts, s.slot(atCutoff(i), c.Words(), mark, s.cutoffEditor(i)), app.Text(next))
 	}
-	add := "at a cutoff you name"
+	add := "at a cutoff (name one)"
 	if len(cutoffs) > 0 {
 		add = "add a cutoff"
 	}

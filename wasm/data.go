@@ -57,7 +57,7 @@ func (s *sheet) columnChoice() app.UI {
 		}
 		return 1
 	})
-	return app.FieldSet().Class("columns").Body(
+	return app.FieldSet().ID("columns").Class("columns").Body(
 		app.Legend().Text("The scores are in"),
 		app.Range(columns).Slice(func(i int) app.UI { return s.columnBox(columns[i]) }),
 	)

@@ -7,8 +7,8 @@ import (
 	"tailgap/core/words"
 )
 
-// pastedName is what pasted scores are called.
-const pastedName = "pasted scores"
+// pastedName is what pasted scores are called, as a file would be.
+const pastedName = "the pasted text"
 
 // listenForFiles makes the whole page a place to drop a file or paste scores.
 func (s *sheet) listenForFiles() {

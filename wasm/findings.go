@@ -55,10 +55,13 @@ func stretches(q ask.Question, r *ask.Result) app.UI {
 	for _, sweep := range r.Sweeps {
 		said = append(said, words.Trusted(q, *r, sweep)...)
 	}
-	worst := words.Worst(*r)
+	heading, worst := "Where the curve can be trusted", words.Worst(*r)
+	if len(said) == 0 {
+		heading = "Where the gap is largest"
+	}
 	return when(len(said) > 0 || worst != "", func() app.UI {
 		return app.Section().ID("stretches").Body(
-			app.H2().Text("Where the curve can be trusted"),
+			app.H2().Text(heading),
 			paragraphs(said),
 			when(worst != "", func() app.UI {
 				return app.P().Body(shown("worst", r.Worst.GapPoints, worst))

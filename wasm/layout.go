@@ -10,21 +10,22 @@ import (
 // Sizes of the cards that hang under the sweep, in px.
 const (
 	cardWidth = 236.0
+	cardWide  = 316.0 // where there is room for all of them
 	cardGap   = 22.0
 	stacked   = 700 // a narrower column stacks its cards
 	tieHeight = 26.0
 )
 
-// hang places cards of one width under their grips: as near to them as can
-// be (least squares) without overlap and within the column. It returns each
+// hang places cards of a width under their grips: as near to them as can be
+// (least squares) without overlap and within the column. It returns each
 // card's left edge, or nil when the cards don't fit into one row.
 //
 // In order of the grips this is an isotonic regression (pool adjacent
 // violators: Barlow et al. 1972) of what is left of the grips' places after
 // the room that the cards before them take.
-func hang(grips []float64, column float64) []float64 {
+func hang(grips []float64, column, width float64) []float64 {
 	n := len(grips)
-	if n == 0 || float64(n)*(cardWidth+cardGap)-cardGap > column {
+	if n == 0 || float64(n)*(width+cardGap)-cardGap > column {
 		return nil
 	}
 	order := make([]int, n)
@@ -40,13 +41,13 @@ func hang(grips []float64, column float64) []float64 {
 		}
 		return 0
 	})
-	taken := func(rank int) float64 { return float64(rank) * (cardWidth + cardGap) }
+	taken := func(rank int) float64 { return float64(rank) * (width + cardGap) }
 	wanted := make([]float64, n)
 	for rank, i := range order {
-		wanted[rank] = grips[i] - cardWidth/2 - taken(rank)
+		wanted[rank] = grips[i] - width/2 - taken(rank)
 	}
 	left := make([]float64, n)
-	last := column - cardWidth - taken(n-1) // the rightmost place, after what is taken
+	last := column - width - taken(n-1) // the rightmost place, after what is taken
 	for rank, x := range rising(wanted) {
 		left[order[rank]] = math.Min(math.Max(x, 0), last) + taken(rank)
 	}
@@ -79,13 +80,13 @@ func rising(x []float64) []float64 {
 
 // ties draws a line from each pole of a grip, at the top, to the middle of its
 // card.
-func ties(poles [][]float64, left []float64, column float64, selected int) string {
+func ties(poles [][]float64, left []float64, column, width float64, selected int) string {
 	var b strings.Builder
 	px := func(x float64) string { return strconv.FormatFloat(x, 'f', 1, 64) }
 	b.WriteString(`<svg xmlns="http://www.w3.org/2000/svg" class="ties" aria-hidden="true" width="` + px(column) +
 		`" height="` + px(tieHeight) + `" viewBox="0 0 ` + px(column) + ` ` + px(tieHeight) + `">`)
 	for i := range poles {
-		middle, class := left[i]+cardWidth/2, "tie"
+		middle, class := left[i]+width/2, "tie"
 		if i == selected {
 			class = "tie selected"
 		}

@@ -27,7 +27,7 @@ func TestHangPutsCardsUnderTheirGrips(t *testing.T) {
 	}
 	for _, test := range tests {
 		t.Run(test.name, func(t *testing.T) {
-			assert.InDeltaSlice(t, test.want, hang(test.grips, test.column), 1e-9)
+			assert.InDeltaSlice(t, test.want, hang(test.grips, test.column, cardWidth), 1e-9)
 		})
 	}
 }
@@ -35,10 +35,11 @@ func TestHangPutsCardsUnderTheirGrips(t *testing.T) {
 func TestHungCardsNeverOverlapAndStayInTheColumn(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		column := rapid.Float64Range(stacked, 1600).Draw(t, "column")
+		width := rapid.SampledFrom([]float64{cardWidth, cardWide}).Draw(t, "width")
 		grips := rapid.SliceOfN(rapid.Float64Range(0, column), 1, 8).Draw(t, "grips")
-		left := hang(grips, column)
+		left := hang(grips, column, width)
 		if left == nil {
-			if float64(len(grips))*(cardWidth+cardGap)-cardGap <= column {
+			if float64(len(grips))*(width+cardGap)-cardGap <= column {
 				t.Fatal("they fit into one row")
 			}
 			return
@@ -51,11 +52,11 @@ func TestHungCardsNeverOverlapAndStayInTheColumn(t *testing.T) {
 			}
 		}
 		sorted := slices.Sorted(slices.Values(left))
-		if sorted[0] < -1e-9 || sorted[len(sorted)-1]+cardWidth > column+1e-9 {
+		if sorted[0] < -1e-9 || sorted[len(sorted)-1]+width > column+1e-9 {
 			t.Fatal("a card leaves the column")
 		}
 		for i := 1; i < len(sorted); i++ {
-			if sorted[i]-sorted[i-1] < cardWidth+cardGap-1e-9 {
+			if sorted[i]-sorted[i-1] < width+cardGap-1e-9 {
 				t.Fatal("two cards are too near")
 			}
 		}
@@ -76,7 +77,7 @@ func TestRising(t *testing.T) {
 }
 
 func TestTiesRunFromEachPoleToItsCard(t *testing.T) {
-	svg := ties([][]float64{{100, 140}, {700}}, []float64{0, 600}, 1000, 1)
+	svg := ties([][]float64{{100, 140}, {700}}, []float64{0, 600}, 1000, cardWidth, 1)
 	assert.Equal(t, 3, strings.Count(svg, "<path"))
 	assert.Contains(t, svg, `d="M100.0 0C`)
 	assert.Contains(t, svg, "118.0 26.0")

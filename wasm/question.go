@@ -38,11 +38,17 @@ func (s *sheet) sentence() app.UI {
 // slot is one part of the sentence, with the mark that follows it, and below
 // them its editor when it is open.
 func (s *sheet) slot(at place, text, mark string, editor func() app.UI) app.UI {
-	id, open := string(at), s.open == at
+	id, open, class := string(at), s.open == at, "slot"
+	if len(text) <= 24 {
+		class += " whole" // too short to be broken over lines
+	}
+	if at == atAdd && len(s.desk.question.Cutoffs) > 0 {
+		class += " adding"
+	}
 	return app.Span().Class("slotted").Body(
 		// Not a button element: that would stand in the sentence as one block
 		// and could not run over the end of a line.
-		app.Span().Role("button").TabIndex(0).Class("slot").ID("slot-"+id).Text(text).
+		app.Span().Role("button").TabIndex(0).Class(class).ID("slot-"+id).Text(text).
 			Aria("expanded", open).Aria("controls", "editor-"+id).
 			OnClick(s.act("slot-"+id, func(app.Context, app.Event) { s.toggle(at) })).
 			OnKeyDown(s.act("slot-key-"+id, func(_ app.Context, e app.Event) {

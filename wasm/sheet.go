@@ -61,8 +61,11 @@ func (s *sheet) measure(ctx app.Context) {
 
 // settle does something to the desk and brings the rest of the sheet in line.
 func (s *sheet) settle(do func()) {
-	before, working := s.desk.answer, s.desk.running
+	before, working, from := s.desk.answer, s.desk.running, s.desk.data.file
 	do()
+	if s.desk.data.file != from && !s.desk.ready() {
+		s.focusInside("columns") // what is missing now
+	}
 	if s.desk.answer != before {
 		s.arrived()
 	}
