@@ -2,6 +2,7 @@ package figure_test
 
 import (
 	"math"
+	"strconv"
 	"strings"
 	"testing"
 
@@ -64,6 +65,19 @@ func TestEveryCutoffHasItsGrip(t *testing.T) {
 		d := read(t, figure.Sweep(a.Question, r, s, figure.Options{Width: 320, Selected: -1}))
 		assert.ElementsMatch(t, []string{"0", "1", "2", "3", "4", "5", "6", "7"}, d.cutoffs)
 	}
+}
+
+// Among very many flags some ask each other to give way in a ring; that must
+// neither keep the drawing from ending nor lose a cutoff.
+func TestManyCutoffs(t *testing.T) {
+	m := recipes["crowd"]
+	m.cutoffs = nil
+	for i := range 200 {
+		m.cutoffs = append(m.cutoffs, ">="+strconv.FormatFloat(float64(i)/2, 'f', -1, 64))
+	}
+	a := m.answer()
+	d := read(t, figure.Sweep(a.Question, a.Results[0], a.Results[0].Sweeps[0], figure.Options{Width: 960, Selected: -1}))
+	assert.Len(t, d.cutoffs, 200)
 }
 
 // A scale without a step has a jump at each score: an upright line.

@@ -29,9 +29,10 @@ const (
 	flagRow    = flagHeight + 4
 	markWidth  = 20.0 // of the field with the verdict's mark
 	flagGap    = 5.0  // between two flags of one row
+	mostRounds = 40   // of raising flags
 )
 
-func (f flag) right() float64 { return f.left + f.width }
+func (f *flag) right() float64 { return f.left + f.width }
 
 // ends are a cutoff's thresholds: one, or the two of a stretch.
 func ends(c cutoff.Cutoff) []float64 {
@@ -134,9 +135,10 @@ func turn(laid []flag) {
 func stack(laid []flag) int {
 	turn(laid)
 	rows := 0
-	// A flag goes above all flags whose poles it covers. Each round can raise
-	// a flag by one row, and no chain is longer than there are flags.
-	for range len(laid) * len(laid) {
+	// A flag goes above all flags whose poles it covers. Each round raises it
+	// by a row at least, so a chain of flags takes as many rounds as it is
+	// long; among very many flags there are rings, which would never end.
+	for range min(len(laid), mostRounds) {
 		raised := false
 		for i := range laid {
 			for j := range laid {
@@ -154,7 +156,7 @@ func stack(laid []flag) int {
 		for clear := false; !clear; {
 			clear = true
 			for j := range laid[:i] {
-				if laid[i].row == laid[j].row && laid[i].touches(laid[j]) {
+				if laid[i].row == laid[j].row && laid[i].touches(&laid[j]) {
 					laid[i].row++
 					clear = false
 				}
@@ -165,15 +167,15 @@ func stack(laid []flag) int {
 	return rows
 }
 
-func (l flag) touches(other flag) bool {
+func (l *flag) touches(other *flag) bool {
 	return l.left < other.right()+flagGap && other.left < l.right()+flagGap
 }
 
-func (l flag) covers(pole float64) bool { return l.left < pole && pole < l.right() }
+func (l *flag) covers(pole float64) bool { return l.left < pole && pole < l.right() }
 
 // mustRise tells whether flag i has to go above flag j.
 func mustRise(laid []flag, i, j int) bool {
-	a, b := laid[i], laid[j]
+	a, b := &laid[i], &laid[j]
 	if a.row > b.row || !a.touches(b) {
 		return false
 	}
