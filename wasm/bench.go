@@ -6,7 +6,6 @@ import (
 	"encoding/json"
 	"errors"
 	"slices"
-	"strings"
 	"time"
 
 	"tailgap/core/ask"
@@ -96,6 +95,3 @@ func tellProgress(id int, post func(reply), now func() time.Time) ask.Progress {
 		}
 	}
 }
-
-// shortName is a file's name without its folders.
-func shortName(path string) string { return path[strings.LastIndexAny(path, `/\`)+1:] }

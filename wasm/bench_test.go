@@ -114,9 +114,3 @@ func TestGuardedTurnsAPanicIntoAnError(t *testing.T) {
 	_, err := r.answer()
 	assert.ErrorContains(t, err, "a hole in the floor")
 }
-
-func TestShortName(t *testing.T) {
-	for path, want := range map[string]string{"a.csv": "a.csv", "/x/y/a.csv": "a.csv", `C:\fakepath\a.csv`: "a.csv"} {
-		assert.Equal(t, want, shortName(path))
-	}
-}

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"cmp"
 	"math"
 	"slices"
 
@@ -53,7 +54,7 @@ func (s *sheet) row(q ask.Question, r *ask.Result, left []float64, width float64
 	for i := range order {
 		order[i] = i
 	}
-	slices.SortStableFunc(order, func(a, b int) int { return int(math.Copysign(1, left[a]-left[b])) })
+	slices.SortFunc(order, func(a, b int) int { return cmp.Compare(left[a], left[b]) })
 	row := make([]app.UI, len(left))
 	end := 0.0
 	for rank, i := range order {
@@ -135,8 +136,8 @@ func verdictLines(q ask.Question, f ask.Finding) app.UI {
 		return app.P().Class("said").Body(
 			shownText("verdict", *f.Verdict, *f.Verdict).Class("verdict"),
 			app.Text(" "+words.Capital(words.Reason(q, f))+"."),
-			when(words.Settle(f) != "", func() app.UI {
-				return app.Span().Class("line soft").Text(words.Capital(words.Settle(f)) + ".")
+			when(words.Settle(q, f) != "", func() app.UI {
+				return app.Span().Class("line soft").Text(words.Capital(words.Settle(q, f)) + ".")
 			}),
 		)
 	})

@@ -11,15 +11,6 @@ import (
 	"tailgap/core/words"
 )
 
-// draft is what an open editor knows that the question can't hold yet.
-type draft struct {
-	side  *cutoff.Side // of the cutoff being edited
-	given bool         // a given curve, before its mean and SD are both there
-	mean  string
-	sd    string
-	unit  string // of the limit being edited, before its size is there
-}
-
 // sides in the order in which they are offered.
 var sides = []cutoff.Side{cutoff.AtMost, cutoff.Below, cutoff.AtLeast, cutoff.Above, cutoff.Stretch}
 
@@ -144,7 +135,9 @@ func (s *sheet) putCutoff(at place, c cutoff.Cutoff, err error) {
 	s.pick(i)
 	if at == atAdd {
 		s.close()
+		return
 	}
+	byID("from-"+string(at)).Set("value", plain(c.At)) // it may have held a whole cutoff
 }
 
 func (s *sheet) removeCutoff(i int) {

@@ -124,10 +124,11 @@ func (d *desk) ask() {
 
 // cancel stops the work; what was answered last stays.
 func (d *desk) cancel() {
-	if d.running != nil && d.running.kind == askAnswer {
-		d.drop()
-		d.stopped = true
+	if d.running == nil {
+		return
 	}
+	d.stopped = d.waiting || d.running.kind == askAnswer
+	d.drop()
 }
 
 // drop ends what is running, and its worker with it.

@@ -45,7 +45,7 @@ func (s *sheet) takePaste(e app.Event) {
 
 // take opens a file that the browser holds.
 func (s *sheet) take(blob app.Value) {
-	name := shortName(blob.Get("name").String())
+	name := blob.Get("name").String()
 	s.show(atData)
 	go func() {
 		copied, err := copied(blob)

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"cmp"
 	"math"
 	"slices"
 	"strconv"
@@ -32,15 +33,7 @@ func hang(grips []float64, column, width float64) []float64 {
 	for i := range order {
 		order[i] = i
 	}
-	slices.SortStableFunc(order, func(a, b int) int {
-		switch {
-		case grips[a] < grips[b]:
-			return -1
-		case grips[a] > grips[b]:
-			return 1
-		}
-		return 0
-	})
+	slices.SortStableFunc(order, func(a, b int) int { return cmp.Compare(grips[a], grips[b]) })
 	taken := func(rank int) float64 { return float64(rank) * (width + cardGap) }
 	wanted := make([]float64, n)
 	for rank, i := range order {

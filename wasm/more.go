@@ -174,9 +174,7 @@ func (s *sheet) headerField(q ask.Question) app.UI {
 func (s *sheet) headerChosen(text string) {
 	q := s.desk.question
 	err := q.Header.UnmarshalText([]byte(text))
-	if s.change(atMore, q, err) {
-		s.desk.reread()
-	}
+	s.change(atMore, q, err)
 }
 
 func (s *sheet) tick(id, label string, on bool, set func(q *ask.Question, on bool)) app.UI {

@@ -43,7 +43,7 @@ func (s *sheet) OnMount(ctx app.Context) {
 		ctx.After(wait, func(app.Context) { s.settle(do) })
 	}
 	s.listenForFiles()
-	s.desk.ask()
+	s.settle(s.desk.ask)
 	s.measure(ctx)
 }
 
@@ -70,7 +70,6 @@ func (s *sheet) settle(do func()) {
 		s.arrived()
 	}
 	if s.desk.running != working {
-		s.slow = false
 		s.watch()
 	}
 }
@@ -89,6 +88,7 @@ func (s *sheet) arrived() {
 func (s *sheet) watch() {
 	begun := s.desk.running
 	if begun == nil {
+		s.slow = false
 		return
 	}
 	s.page.After(slowAfter, func(app.Context) { s.slow = s.slow || s.desk.running == begun })

@@ -37,12 +37,14 @@ const inWorker = `
   onmessage = async first => {
     onmessage = later => early.push(later);
     globalThis.tailgapEarly = early;
+    let reason = "its program came to an end";
     try {
       const go = new Go();
-      go.run(await WebAssembly.instantiate(first.data, go.importObject));
+      await go.run(await WebAssembly.instantiate(first.data, go.importObject));
     } catch (error) {
-      postMessage(JSON.stringify({ kind: "broken", error: String(error) }));
+      reason = String(error);
     }
+    postMessage(JSON.stringify({ kind: "broken", error: reason }));
   };`;
 
 function unpack(text) {
@@ -82,6 +84,7 @@ async function start() {
 }
 
 function stop(sentence) {
+  document.getElementById("start")?.remove();
   const says = document.createElement("p");
   says.className = "trouble";
   says.setAttribute("role", "alert");

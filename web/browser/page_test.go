@@ -1,10 +1,14 @@
 package browser
 
 import (
+	"context"
+	"path/filepath"
 	"testing"
 
+	script "github.com/chromedp/cdproto/page"
 	"github.com/chromedp/chromedp"
 	"github.com/stretchr/testify/assert"
+	"github.com/stretchr/testify/require"
 )
 
 func TestPageOpensWithTheDemoWorkedOut(t *testing.T) {
@@ -137,4 +141,31 @@ func TestPageTakesAPaste(t *testing.T) {
 	p.cutoff(">=14")
 	p.settled()
 	p.shows(judge(t, fileWith(t, "pasted.tsv", pasted), "--score", "minutes", "--cutoff", ">=14"))
+}
+
+func TestPageTakesADrop(t *testing.T) {
+	p := openPage(t, 1280)
+	p.do(chromedp.Evaluate(`{ const carried = new DataTransfer();
+		carried.items.add(new File(["7\n8\n8\n9\n12\n"], "five people.txt", {type: "text/plain"}));
+		for (const type of ["dragover", "drop"]) {
+			document.querySelector("#sweep svg").dispatchEvent(new DragEvent(type, {dataTransfer: carried, bubbles: true, cancelable: true}));
+		} }`, nil))
+	p.until(`document.getElementById("slot-data").innerText.includes("five people.txt")`)
+	p.settled()
+	p.cutoff("<=8")
+	p.settled()
+	p.shows(judge(t, fileWith(t, "five people.txt", "7\n8\n8\n9\n12\n"), "--cutoff", "<=8"))
+}
+
+func TestPageSaysThatABrowserIsTooOld(t *testing.T) {
+	path, err := filepath.Abs(pageFile)
+	require.NoError(t, err)
+	p := newTab(t, "file://"+path)
+	p.do(chromedp.ActionFunc(func(ctx context.Context) error {
+		_, err := script.AddScriptToEvaluateOnNewDocument(`delete globalThis.DecompressionStream`).Do(ctx)
+		return err
+	}), chromedp.Navigate(p.file))
+	p.until(`document.querySelector(".trouble")`)
+	assert.Contains(t, get[string](p, `document.querySelector(".trouble").innerText`), "too old for this page")
+	assert.Zero(t, get[int](p, `document.querySelectorAll("#start").length`), "it doesn't go on saying that it loads")
 }
