@@ -3,7 +3,9 @@ package ask_test
 import (
 	"context"
 	"encoding/json"
+	"fmt"
 	"math"
+	"strings"
 	"testing"
 
 	"github.com/stretchr/testify/assert"
@@ -102,6 +104,25 @@ func TestCutoffsFarOut(t *testing.T) {
 		_, err := ask.Judge(context.Background(), q, of(scores), nil)
 		assert.EqualError(t, err, sentence)
 	}
+}
+
+func TestReplicatesThatFillTheMemory(t *testing.T) {
+	scores := make([]float64, 2000)
+	for i := range scores {
+		scores[i] = math.Sqrt(float64(i))
+	}
+	q := question(">=20")
+	q.TooHigh, q.TooLow = ofCount(20), ofCount(20)
+	q.Replicates, q.Level = 1_000_000, 0.5
+	_, err := ask.Judge(context.Background(), q, of(scores), nil)
+	require.ErrorContains(t, err, "1000000 replicates at a level of 0.5 take too much memory for score; ask for at most ")
+	var most int
+	_, err = fmt.Sscanf(err.Error()[strings.LastIndex(err.Error(), " "):], "%d", &most)
+	require.NoError(t, err)
+	assert.Greater(t, most, 10_000, "the usual number is never too many")
+	q.Everyone = true
+	_, err = ask.Judge(context.Background(), q, of(scores), nil)
+	assert.NoError(t, err, "there are none to keep")
 }
 
 func TestQuestionFiles(t *testing.T) {

@@ -45,7 +45,8 @@ type sweepPlan struct {
 }
 
 // newWork plans the judging of one column; it refuses a column that has no
-// spread, a scale of too many steps and a cutoff at which no curve can be read.
+// spread, a scale of too many steps, a cutoff at which no curve can be read and
+// more replicates than there is memory for.
 func newWork(question Question, column sample.Column) (*work, error) {
 	counts := sample.Count(column.Scores)
 	moments, err := describe(column.Name, counts)
@@ -88,7 +89,20 @@ func newWork(question Question, column sample.Column) (*work, error) {
 	w.plan.Weights = w.tolerance.Weights()
 	w.plan.Level, w.plan.Replicates = question.Level, question.Replicates
 	w.plan.Seed, w.plan.Workers = question.Seed, question.Workers
-	return w, nil
+	return w, w.affordable()
+}
+
+// affordable is an error where the replicates' largest gaps, which are kept
+// for every region, would fill the memory. The fewer are out of the level,
+// the fewer are kept.
+func (w *work) affordable() error {
+	const most = 1 << 28 // numbers, of eight bytes
+	kept := math.Min(1, 4*(1-w.question.Level))
+	places := float64((len(w.plan.Regions) + len(w.plan.Groups)) * len(w.plan.Weights))
+	if w.question.Everyone || places*kept*float64(w.question.Replicates) <= most {
+		return nil
+	}
+	return fmt.Errorf("%d replicates at a level of %v take too much memory for %s; ask for at most %.0f", w.question.Replicates, w.question.Level, w.column.Name, math.Floor(most/(places*kept)))
 }
 
 // countable is true where a float64 can number every step of the scale.
