@@ -93,12 +93,12 @@ func (f *questionFlags) declare() {
 		one(cutoff.Parse), func(q *ask.Question, v []cutoff.Cutoff) { q.Cutoffs = v })
 
 	f.group = "What is at stake"
-	value(f, "tolerance", "live with a gap up to `LIMIT` either way: 1.5pt (percentage points), 20%count (part of the counted share) or 40heads (people)",
-		verdict.ParseLimit, func(q *ask.Question, v verdict.Limit) { q.TooHigh, q.TooLow = &v, &v })
+	value(f, "tolerance", "live with a gap up to `LIMIT` either way: 1.5pt (percentage points), 20%count (part of the counted share), 40heads (people) or none",
+		limit, func(q *ask.Question, v *verdict.Limit) { q.TooHigh, q.TooLow = v, v })
 	value(f, "too-high", "live with a curve up to `LIMIT` too high; a side without a limit is not judged",
-		verdict.ParseLimit, func(q *ask.Question, v verdict.Limit) { q.TooHigh = &v })
+		limit, func(q *ask.Question, v *verdict.Limit) { q.TooHigh = v })
 	value(f, "too-low", "live with a curve up to `LIMIT` too low; a side without a limit is not judged",
-		verdict.ParseLimit, func(q *ask.Question, v verdict.Limit) { q.TooLow = &v })
+		limit, func(q *ask.Question, v *verdict.Limit) { q.TooLow = v })
 	value(f, "heads", "apply the share to `NUMBER` people: gaps are given in people too",
 		number("heads", "4000"), func(q *ask.Question, v float64) { q.Heads = &v })
 	yes(f, "everyone", "these are all the people there are: the gap is exact and has no interval",
@@ -158,6 +158,16 @@ func given(q *ask.Question) *curve.Given {
 }
 
 func text(s string) (string, error) { return s, nil }
+
+// limit reads a limit; none takes away the one that a question file or the
+// demo's question has.
+func limit(s string) (*verdict.Limit, error) {
+	if strings.TrimSpace(s) == "none" {
+		return nil, nil
+	}
+	v, err := verdict.ParseLimit(s)
+	return &v, err
+}
 
 func header(s string) (h sample.Header, err error) {
 	return h, h.UnmarshalText([]byte(s))

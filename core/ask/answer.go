@@ -122,6 +122,7 @@ type HeadCount struct {
 // stands twice: at the score itself and just past it, where the count jumps.
 type Sweep struct {
 	Side         cutoff.Side `json:"side"`
+	Thinned      bool        `json:"thinned"` // not every threshold of the scale was looked at
 	Threshold    []float64   `json:"threshold"`
 	CurveShare   []float64   `json:"curve_share"`
 	CountedShare []float64   `json:"counted_share"`

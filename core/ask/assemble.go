@@ -105,10 +105,13 @@ func (w *work) weightIndex(weight float64) int {
 	panic("ask: a weight that was not planned")
 }
 
-// decide gives the verdict by some limits. A tolerance in percent of the
-// count can't be judged where nobody was counted.
+// decide gives the verdict by some limits. A limit in percent of the count
+// can't be judged where nobody was counted; a limit in points can still fail.
 func (s shown) decide(limits func(weight float64) verdict.Limits) verdict.Verdict {
 	if s.tolerance.OfCount() && s.counted() == 0 && !s.question.Everyone {
+		if verdict.Of(s.tolerance.InPoints(), limits) == verdict.Fails {
+			return verdict.Fails
+		}
 		return verdict.Unsettled
 	}
 	return verdict.Of(s.tolerance, limits)

@@ -108,7 +108,7 @@ func (w *work) heads(r Reading) *HeadCount {
 
 // sweep is one side's sweep with its band and trusted range.
 func (w *work) sweep(plan sweepPlan) Sweep {
-	out := Sweep{Side: plan.side, Threshold: plan.thresholds}
+	out := Sweep{Side: plan.side, Thinned: plan.thinned, Threshold: plan.thresholds}
 	if !w.tolerance.None() {
 		out.Trusted = []Stretch{}
 	}

@@ -135,6 +135,23 @@ func TestPercentOfTheCount(t *testing.T) {
 	assert.Equal(t, "fails", *judge(t, q, scores).Cutoffs[2].Verdict, "when everyone was counted, nobody is nobody")
 }
 
+// Where nobody was counted, a limit in percent of the count can't be judged,
+// but one in points can still be passed for sure.
+func TestNobodyCountedButTooHighInPoints(t *testing.T) {
+	scores := make([]float64, 400)
+	for i := range scores {
+		scores[i] = float64(10 + 20*(i%2)) // two heaps, 10 and 30: the curve puts people above 35
+	}
+	q := question(">35")
+	q.TooHigh, q.TooLow = points(1), ofCount(20)
+	f := judge(t, q, scores).Cutoffs[0]
+	require.Zero(t, f.Counted)
+	require.Greater(t, *f.GapLow, 1.0)
+	assert.Equal(t, "fails", *f.Verdict)
+	q.TooHigh = points(50)
+	assert.Equal(t, "unsettled", *judge(t, q, scores).Cutoffs[0].Verdict)
+}
+
 func TestHeads(t *testing.T) {
 	q := question(">=24")
 	heads := 4000.0

@@ -39,6 +39,7 @@ type key struct {
 // band they share.
 type sweepPlan struct {
 	side       cutoff.Side
+	thinned    bool
 	group      int
 	thresholds []float64
 	regions    []int
@@ -152,7 +153,7 @@ func (w *work) add(ends []gap.Threshold) int {
 // at the same places share their replicates: a lower tail is the complement
 // of an upper one.
 func (w *work) planSweeps() {
-	grid := gap.Grid(w.table.Counts, w.scale, thresholdsOf(w.question.Cutoffs))
+	grid, thinned := gap.Grid(w.table.Counts, w.scale, thresholdsOf(w.question.Cutoffs))
 	planned := map[bool]sweepPlan{}
 	for _, side := range sidesOf(w.question.Cutoffs) {
 		strict := side.Strict() && w.scale.Step > 0 // without a step both kinds share one grid
@@ -161,7 +162,7 @@ func (w *work) planSweeps() {
 			sweep = w.planGroup(grid, strict)
 			planned[strict] = sweep
 		}
-		sweep.side = side
+		sweep.side, sweep.thinned = side, thinned
 		w.sweeps = append(w.sweeps, sweep)
 	}
 }

@@ -3,10 +3,10 @@ package ask
 import (
 	"fmt"
 	"math"
-	"strconv"
 
 	"tailgap/core/cutoff"
 	"tailgap/core/gap"
+	"tailgap/core/numeral"
 	"tailgap/core/sample"
 )
 
@@ -27,10 +27,10 @@ func (w *work) notes(c cutoff.Cutoff, f Finding) []string {
 	}
 	for _, at := range thresholdsOf([]cutoff.Cutoff{c}) {
 		if at < counts.Min() || at > counts.Max() {
-			add("%s is outside the scores seen (%s to %s)", number(at), number(counts.Min()), number(counts.Max()))
+			add("%s is outside the scores seen (%s to %s)", numeral.Plain(at), numeral.Plain(counts.Min()), numeral.Plain(counts.Max()))
 		}
 		if !w.scale.Attainable(at) {
-			add("%s is between two attainable scores, %s and %s", number(at), number(w.scale.AtOrBelow(at)), number(w.scale.AtOrAbove(at)))
+			add("%s is between two attainable scores, %s and %s", numeral.Plain(at), numeral.Plain(w.scale.AtOrBelow(at)), numeral.Plain(w.scale.AtOrAbove(at)))
 		}
 	}
 	if f.HalfStep != nil && f.Verdict != nil && *f.HalfStep.Verdict != *f.WithoutHalfStep.Verdict {
@@ -56,7 +56,7 @@ func people(n int) string {
 	case 1:
 		return "1 person was"
 	}
-	return strconv.Itoa(n) + " people were"
+	return numeral.Count(n) + " people were"
 }
 
 // warnings are what must be borne in mind about one column. The bounds are
@@ -66,23 +66,23 @@ func (w *work) warnings() []string {
 	add := func(format string, values ...any) { warnings = append(warnings, fmt.Sprintf(format, values...)) }
 	counts, m := w.table.Counts, w.table.Moments
 	for _, code := range sample.SuspectedCodes(counts) {
-		add("%s stands far from all other scores and looks like a missing code; if it is one, name it as missing", number(code))
+		add("%s stands far from all other scores and looks like a missing code; if it is one, name it as missing", numeral.Plain(code))
 	}
 	if share, extreme := sample.ExtremeShare(counts, m); share > 0.5 && counts.N >= 20 {
 		add("the SD is mostly the %s: %.0f%% of the sum of squares comes from there", extremes(extreme), 100*share)
 	}
 	if spacing, share := sample.Heaps(counts, m, w.scale.Step); spacing > 0 {
-		add("scores pile up on multiples of %s: %.0f%% of the people are there; a cutoff on or beside such a score moves many people at once", number(spacing), 100*share)
+		add("scores pile up on multiples of %s: %.0f%% of the people are there; a cutoff on or beside such a score moves many people at once", numeral.Plain(spacing), 100*share)
 	}
 	if outside := outside(counts, w.scale); outside > 0 {
 		used := "they were used as they are"
 		if outside == 1 {
 			used = "it was used as it is"
 		}
-		add("%s outside the stated range %s to %s; %s", scores(outside), number(w.scale.Low), number(w.scale.High), used)
+		add("%s outside the stated range %s to %s; %s", scores(outside), numeral.Plain(w.scale.Low), numeral.Plain(w.scale.High), used)
 	}
 	if off := w.scale.OffStep(); off > 0 {
-		add("%s not a whole number of steps of %s from the lowest score; check the step", scores(off), number(w.scale.Step))
+		add("%s not a whole number of steps of %s from the lowest score; check the step", scores(off), numeral.Plain(w.scale.Step))
 	}
 	if w.scale.Low == 0 && counts.Min() >= 0 && m.Mean < 2*m.SD {
 		add("the mean is less than 2 SD above 0, the lowest score there can be: the scores are skewed, and the curve puts people below 0")
@@ -100,14 +100,14 @@ func extremes(n int) string {
 	if n == 1 {
 		return "single most extreme score"
 	}
-	return strconv.Itoa(n) + " most extreme scores"
+	return numeral.Count(n) + " most extreme scores"
 }
 
 func scores(n int) string {
 	if n == 1 {
 		return "1 score is"
 	}
-	return strconv.Itoa(n) + " scores are"
+	return numeral.Count(n) + " scores are"
 }
 
 func outside(counts sample.Counts, scale sample.Scale) int {
@@ -116,5 +116,3 @@ func outside(counts sample.Counts, scale sample.Scale) int {
 	}
 	return counts.People(0, counts.IndexAtLeast(scale.Low)) + counts.People(counts.IndexAbove(scale.High), len(counts.Score))
 }
-
-func number(x float64) string { return strconv.FormatFloat(x, 'f', -1, 64) }

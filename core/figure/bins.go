@@ -169,7 +169,7 @@ func splits(r ask.Result, c cutoff.Cutoff) []float64 {
 	if r.Sample.Step == nil {
 		return at
 	}
-	step, low := *r.Sample.Step, r.Sample.Low
+	step, low := *r.Sample.Step, r.Sample.Min // steps are counted from the lowest score seen
 	for i := range at {
 		steps := (at[i] - low) / step
 		if c.Side.Strict() || i == 1 {

@@ -114,7 +114,7 @@ func (s *sheet) finding(r ask.Result, f ask.Finding, prefix string) {
 		s.paragraph("strong", sentences(words.Capital(verdict)))
 	}
 	s.paragraph("soft", words.OtherReading(s.q, f))
-	s.paragraph("soft", sentences(words.Capital(words.Settle(f))))
+	s.paragraph("soft", sentences(words.Capital(words.Settle(s.q, f))))
 	s.sentences(f.Notes)
 	s.y += 12
 	s.place(drawCounted(s.q, r, f, Options{Width: sheetWidth - 2*sheetMargin, Selected: -1, Prefix: prefix}))

@@ -22,25 +22,26 @@ const (
 // scores were seen there, and without a step every distinct score. Above
 // 1,000 thresholds (a score without a step makes two, at it and just past
 // it) 512 spaced evenly over the people, the 50 outermost on each side, and
-// the cutoffs are left.
-func Grid(counts sample.Counts, scale sample.Scale, cutoffs []float64) []float64 {
+// the cutoffs are left, and thinned says so.
+func Grid(counts sample.Counts, scale sample.Scale, cutoffs []float64) (grid []float64, thinned bool) {
 	thresholdsEach := 2
-	scores := slices.Clone(counts.Score)
+	grid = slices.Clone(counts.Score)
 	if scale.Step > 0 {
 		thresholdsEach = 1
-		scores = attainable(counts, scale)
+		grid, thinned = attainable(counts, scale)
 	}
-	if len(scores)*thresholdsEach <= mostThresholds {
-		return scores
+	if len(grid)*thresholdsEach <= mostThresholds {
+		return grid, thinned
 	}
-	scores = slices.Concat(thin(scores, counts, thresholdsEach), cutoffs)
-	slices.Sort(scores)
-	return slices.Compact(scores)
+	grid = slices.Concat(thin(grid, counts, thresholdsEach), cutoffs)
+	slices.Sort(grid)
+	return slices.Compact(grid), true
 }
 
 // attainable lists the attainable scores together with the scores seen; when
-// the scale has too many, those seen and the next attainable one after each.
-func attainable(counts sample.Counts, scale sample.Scale) []float64 {
+// the scale has too many, those seen and the next attainable one after each,
+// and thinned says so.
+func attainable(counts sample.Counts, scale sample.Scale) (scores []float64, thinned bool) {
 	low := scale.Index(scale.AtOrAbove(math.Min(scale.Low, counts.Min())))
 	high := scale.Index(scale.AtOrBelow(math.Max(scale.High, counts.Max())))
 	seen := make(map[float64]bool, len(counts.Score))
@@ -49,7 +50,7 @@ func attainable(counts sample.Counts, scale sample.Scale) []float64 {
 			seen[scale.Index(score)] = true
 		}
 	}
-	scores := slices.Clone(counts.Score)
+	scores = slices.Clone(counts.Score)
 	add := func(steps float64) {
 		if !seen[steps] {
 			seen[steps] = true
@@ -61,6 +62,7 @@ func attainable(counts sample.Counts, scale sample.Scale) []float64 {
 			add(steps)
 		}
 	} else {
+		thinned = true
 		for _, score := range counts.Score {
 			add(min(high, scale.Index(score)+1))
 		}
@@ -68,7 +70,7 @@ func attainable(counts sample.Counts, scale sample.Scale) []float64 {
 		add(high)
 	}
 	slices.Sort(scores)
-	return slices.Compact(scores)
+	return slices.Compact(scores), thinned
 }
 
 // thin keeps scores spaced evenly over the people, and the outermost ones.

@@ -100,7 +100,11 @@ func NewSums(s0, s1, s2, s3, s4 float64) Sums {
 	mean := s1 * perN
 	r2, r3, r4 := s2*perN, s3*perN, s4*perN
 	square := mean * mean
-	return newSums(s0, mean, max(0, r2-square), r3-3*mean*r2+2*mean*square, r4-4*mean*r3+6*square*r2-3*square*square)
+	m2 := r2 - square
+	if m2 < 1e-14*square { // rounding only: one score, drawn again and again
+		m2 = 0
+	}
+	return newSums(s0, mean, m2, r3-3*mean*r2+2*mean*square, r4-4*mean*r3+6*square*r2-3*square*square)
 }
 
 func newSums(n, mean, m2, m3, m4 float64) Sums {

@@ -52,13 +52,13 @@ func TestReadJSONRefuses(t *testing.T) {
 		{"a question of another version", "tailgap/question/1", "tailgap/question/9", `the answer can't be read: the question has the format "tailgap/question/9"; this program reads "tailgap/question/1"`},
 		{"no format", `"format": "tailgap/answer/1",`, "", `this is no answer this program can read: its format is "", not "tailgap/answer/1"`},
 		{"no JSON", `"program":`, `program:`, "the answer can't be read: line 3, column 3 is not JSON"},
-		{"a broken end", "]\n}\n", "]\n", "the answer can't be read: line 180, column 4 is not JSON"},
-		{"more than an answer", "]\n}\n", "]\n}\n{}", "the answer can't be read: line 182, column 1 is not JSON"},
+		{"a broken end", "]\n}\n", "]\n", "the answer can't be read: line 181, column 4 is not JSON"},
+		{"more than an answer", "]\n}\n", "]\n}\n{}", "the answer can't be read: line 183, column 1 is not JSON"},
 		{"a word for a number", `"replicates": 10000`, `"replicates": "many"`, `the answer can't be read: line 27, column 24 has a value of the wrong kind for "question.replicates"`},
 		{"a cutoff", `"cutoff": ">=30"`, `"cutoff": "over 30"`, `the answer can't be read: the cutoff "over 30" can't be read; write it as >=50, >50, <=20, <20 or 20..30, decimals with a point`},
 		{"a level", `"level": 0.95`, `"level": 95`, "the answer can't be read: the level 95 is not between 0 and 1; write 0.95 for 95% intervals"},
 		{"a short sweep", `"curve_share": [`, `"curve_share": [0.5,`, "the answer can't be read: the sweep >= has 5 thresholds but 6 of curve_share"},
-		{"a sweep of a stretch", `"side": ">=",` + "\n" + `          "threshold": [`, `"side": "..", "threshold": [`, "the answer can't be read: a sweep has the side .., which no sweep has"},
+		{"a sweep of a stretch", `"side": ">=",` + "\n" + `          "thinned"`, `"side": "..", "thinned"`, "the answer can't be read: a sweep has the side .., which no sweep has"},
 	} {
 		t.Run(c.name, func(t *testing.T) {
 			changed := strings.Replace(whole, c.old, c.new, 1)

@@ -88,7 +88,7 @@ func (t *text) findings(q ask.Question, r ask.Result) {
 		t.gap()
 		t.line(words.Sentence(q, f))
 		if f.Verdict != nil {
-			t.line(loud(*f.Verdict, words.Verdict(q, f), words.Settle(f)))
+			t.line(loud(*f.Verdict, words.Verdict(q, f), words.Settle(q, f)))
 		}
 		t.list("Note: ", f.Notes)
 	}

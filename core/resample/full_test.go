@@ -53,7 +53,7 @@ func TestWholeMethodAgreesWithNumPy(t *testing.T) {
 		table, scale := column{Dataset: want.Dataset, Column: want.Column, Step: want.Step}.table(given)
 		plan := resample.Plan{Table: table, Weights: []float64{want.Weight}, Level: want.Level, Replicates: 20_000, Seed: 5}
 		plan.Regions = []gap.Region{table.Region(gap.Ends(scale, cutoff.Cutoff{Side: want.Side, At: want.Cutoff}, want.HalfStep))}
-		grid := gap.Grid(table.Counts, scale, nil)
+		grid, _ := gap.Grid(table.Counts, scale, nil)
 		if scale.Step > 0 {
 			grid = slices.Concat([]float64{grid[0] - scale.Step}, grid, []float64{grid[len(grid)-1] + scale.Step})
 		}

@@ -1,84 +1,156 @@
 package sample
 
-import (
-	"fmt"
-	"math"
-	"strconv"
-	"strings"
+import "math"
+
+const (
+	// maxDecimals is how many decimals a recorded score is taken to have.
+	maxDecimals = 6
+	// smallestStep is the step in SDs below which there is no step worth
+	// the name: half of it moves no share by 0.1 points or more
+	// (half a step moves a share by up to 19.9·step/SD points).
+	smallestStep = 0.005
+	// fewDistinct is the number of distinct scores up to which a common
+	// divisor above the recorded unit may well be chance.
+	fewDistinct = 10
 )
 
-// StepChoice says on which step the scores stand: detected (the zero value),
-// none, or stated.
-type StepChoice struct {
-	None bool
-	Size float64 // 0: detect
+// Scale is where scores can be: the step between attainable scores and the
+// two ends.
+type Scale struct {
+	Step        float64 // 0: none
+	StepSource  string  // "stated" or "detected"
+	Low, High   float64
+	RangeSource string // "stated" or "observed"
+	origin      float64
+	offLattice  int
 }
 
-// ParseStep reads "auto", "none" or a positive number.
-func ParseStep(text string) (StepChoice, error) {
-	switch t := strings.TrimSpace(text); t {
-	case "auto":
-		return StepChoice{}, nil
-	case "none":
-		return StepChoice{None: true}, nil
-	default:
-		size, err := strconv.ParseFloat(t, 64)
-		if err != nil || !(size > 0) || math.IsInf(size, 0) {
-			return StepChoice{}, fmt.Errorf("the step %q can't be read; write auto, none or a number above zero", text)
-		}
-		return StepChoice{Size: size}, nil
+// NewScale settles the scale of a count table: step and range as stated, or
+// detected. The step is detected from the decimals of the distinct scores
+// and their common divisor; none is found when it would be below 0.005 SD.
+func NewScale(counts Counts, sd float64, step StepChoice, ends *Range) Scale {
+	s := Scale{StepSource: "stated", Low: counts.Min(), High: counts.Max(), RangeSource: "observed", origin: counts.Min()}
+	if ends != nil {
+		s.Low, s.High, s.RangeSource = ends.Low, ends.High, "stated"
 	}
-}
-
-// String writes the choice as ParseStep reads it.
-func (s StepChoice) String() string {
 	switch {
-	case s.None:
-		return "none"
-	case s.Size == 0:
-		return "auto"
+	case step.None:
+	case step.Size > 0:
+		s.Step = step.Size
+	default:
+		s.StepSource, s.Step = "detected", detectStep(counts, sd)
 	}
-	return strconv.FormatFloat(s.Size, 'f', -1, 64)
-}
-
-// MarshalText writes the choice as String does.
-func (s StepChoice) MarshalText() ([]byte, error) { return []byte(s.String()), nil }
-
-// UnmarshalText reads the choice as ParseStep does.
-func (s *StepChoice) UnmarshalText(text []byte) (err error) {
-	*s, err = ParseStep(string(text))
-	return err
-}
-
-// Range is the two ends of a scale, both in.
-type Range struct {
-	Low, High float64
-}
-
-// ParseRange reads "0:83".
-func ParseRange(text string) (Range, error) {
-	low, high, found := strings.Cut(text, ":")
-	l, errLow := strconv.ParseFloat(strings.TrimSpace(low), 64)
-	h, errHigh := strconv.ParseFloat(strings.TrimSpace(high), 64)
-	if !found || errLow != nil || errHigh != nil || math.IsInf(h-l, 0) || math.IsNaN(h-l) {
-		return Range{}, fmt.Errorf("the range %q can't be read; write it as 0:83", text)
+	if s.Step > 0 {
+		for i, score := range counts.Score {
+			if !s.Attainable(score) {
+				s.offLattice += counts.Count[i]
+			}
+		}
 	}
-	if l >= h {
-		return Range{}, fmt.Errorf("the range %q ends before it starts; write the lower end first, as in 0:83", text)
+	return s
+}
+
+// OffStep counts the people whose score is not a whole number of steps from
+// the lowest score.
+func (s Scale) OffStep() int { return s.offLattice }
+
+// Attainable is true for a score on the scale's steps, and for every score
+// on a scale without a step. The ends of the scale are not looked at.
+func (s Scale) Attainable(score float64) bool {
+	if s.Step == 0 {
+		return true
 	}
-	return Range{Low: l, High: h}, nil
+	steps := (score - s.origin) / s.Step
+	return math.Abs(steps-math.Round(steps)) < noiseOf(math.Max(math.Abs(score), math.Abs(s.origin))/s.Step, 1e-6)
 }
 
-// String writes the range as ParseRange reads it.
-func (r Range) String() string {
-	return strconv.FormatFloat(r.Low, 'f', -1, 64) + ":" + strconv.FormatFloat(r.High, 'f', -1, 64)
+// AtOrAbove is the lowest attainable score at or above x, and AtOrBelow the
+// highest at or below it; x itself on a scale without a step.
+func (s Scale) AtOrAbove(x float64) float64 {
+	if s.Attainable(x) {
+		return x
+	}
+	return s.Score(math.Ceil((x - s.origin) / s.Step))
 }
 
-// MarshalText writes the range as String does.
-func (r Range) MarshalText() ([]byte, error) { return []byte(r.String()), nil }
+// AtOrBelow is the highest attainable score at or below x.
+func (s Scale) AtOrBelow(x float64) float64 {
+	if s.Attainable(x) {
+		return x
+	}
+	return s.Score(math.Floor((x - s.origin) / s.Step))
+}
 
-// UnmarshalText reads the range as ParseRange does.
-func (r *Range) UnmarshalText(text []byte) (err error) {
-	*r, err = ParseRange(string(text))
-	return err
+// Index is the number of steps from the lowest observed score to x, rounded.
+func (s Scale) Index(x float64) float64 { return math.Round((x - s.origin) / s.Step) }
+
+// Score is the score that many steps from the lowest observed one, with the
+// noise of binary fractions rounded away (9.8, not 9.799999999999999).
+func (s Scale) Score(steps float64) float64 {
+	const tenDecimals = 1e10
+	score := s.origin + steps*s.Step
+	if rounded := math.Round(score*tenDecimals) / tenDecimals; math.Abs(rounded-score) <= 1e-9*s.Step {
+		return rounded
+	}
+	return score
+}
+
+func detectStep(counts Counts, sd float64) float64 {
+	unit := 1.0 // how many recording units go into 1
+	for decimals := 0; ; decimals++ {
+		if decimals > maxDecimals {
+			return 0
+		}
+		if wholeIn(counts.Score, unit) {
+			break
+		}
+		unit *= 10
+	}
+	divisor := 1.0
+	if len(counts.Score) >= fewDistinct {
+		divisor = 0
+		for _, score := range counts.Score[1:] {
+			divisor = commonDivisor(divisor, math.Round(score*unit)-math.Round(counts.Score[0]*unit))
+		}
+	}
+	step := divisor / unit
+	if !(step >= smallestStep*sd) {
+		return 0
+	}
+	return step
+}
+
+// wholeIn is true when every score is a whole number of 1/unit. Scores that
+// differ by more than noise but are near the same whole number are none.
+func wholeIn(scores []float64, unit float64) bool {
+	before := math.NaN()
+	for _, score := range scores {
+		scaled := score * unit
+		noise := noiseOf(scaled, 1e-9)
+		if math.Abs(scaled) > 1<<52 || math.Abs(scaled-math.Round(scaled)) > noise {
+			return false
+		}
+		if math.Round(scaled) == math.Round(before) && scaled-before > 4*epsilon*math.Abs(scaled) {
+			return false
+		}
+		before = scaled
+	}
+	return math.Round(before) != math.Round(scores[0]*unit)
+}
+
+// epsilon is the distance from 1 to the next number.
+const epsilon = 0x1p-52
+
+// noiseOf is how far a whole number computed from numbers up to the given
+// size may be off: the least that is asked, or some roundings of that size,
+// and never enough to take what isn't whole for it.
+func noiseOf(size, least float64) float64 {
+	return math.Min(math.Max(least, 4*epsilon*math.Abs(size)), 1e-3)
+}
+
+func commonDivisor(a, b float64) float64 {
+	for b != 0 {
+		a, b = b, math.Mod(a, b)
+	}
+	return a
 }

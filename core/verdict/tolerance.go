@@ -47,6 +47,17 @@ func (t Tolerance) OfCount() bool {
 	return (t.High != nil && t.High.Weight != 1) || (t.Low != nil && t.Low.Weight != 1)
 }
 
+// InPoints is the tolerance without the edges that move with the counted share.
+func (t Tolerance) InPoints() Tolerance {
+	if t.High != nil && t.High.Weight != 1 {
+		t.High = nil
+	}
+	if t.Low != nil && t.Low.Weight != 1 {
+		t.Low = nil
+	}
+	return t
+}
+
 // Weights are the weights whose limits a verdict needs, 1 first.
 func (t Tolerance) Weights() []float64 {
 	weights := []float64{1}

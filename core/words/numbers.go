@@ -4,10 +4,12 @@ import (
 	"math"
 	"strconv"
 	"strings"
+
+	"tailgap/core/numeral"
 )
 
 // unknown stands where a number should be and none is.
-const unknown = "not known"
+const unknown = numeral.Unknown
 
 // Ends of what Share prints in digits: one in a million, and all but that.
 const leastShare = 1e-6
@@ -53,42 +55,15 @@ var brief = strings.NewReplacer("under ", "<", "over ", ">")
 func Brief(figure string) string { return brief.Replace(figure) }
 
 // Number prints a score or another plain number in its shortest form: "70",
-// "25.5". Digits past the twelfth are left out: they come from adding up
-// steps, not from anybody's score.
-func Number(x float64) string {
-	if math.IsNaN(x) || math.IsInf(x, 0) {
-		return unknown
-	}
-	rounded, _ := strconv.ParseFloat(strconv.FormatFloat(x, 'e', 11, 64), 64)
-	size := math.Abs(rounded)
-	if size != 0 && (size >= 1e15 || size < 1e-6) {
-		return strconv.FormatFloat(rounded, 'g', -1, 64)
-	}
-	return strconv.FormatFloat(rounded+0, 'f', -1, 64)
-}
+// "25.5".
+func Number(x float64) string { return numeral.Plain(x) }
 
 // Count prints a whole number with thousands marked: "4,000".
-func Count(n int) string { return thousands(strconv.Itoa(n)) }
-
-// thousands marks the thousands of a number in digits, which may have a sign
-// and decimals.
-func thousands(digits string) string {
-	sign, whole, decimals := "", digits, ""
-	if strings.HasPrefix(whole, "-") {
-		sign, whole = "-", whole[1:]
-	}
-	if point := strings.IndexByte(whole, '.'); point >= 0 {
-		whole, decimals = whole[:point], whole[point:]
-	}
-	for i := len(whole) - 3; i > 0; i -= 3 {
-		whole = whole[:i] + "," + whole[i:]
-	}
-	return sign + whole + decimals
-}
+func Count(n int) string { return numeral.Count(n) }
 
 // people prints a number of people that need not be whole, such as the size
 // of the group that a share is applied to.
-func people(x float64) string { return thousands(Number(x)) }
+func people(x float64) string { return numeral.Thousands(Number(x)) }
 
 // People says a number of people: "4,000 people", "1 person".
 func People(x float64) string {
@@ -123,7 +98,7 @@ func unsigned(x float64, decimals int) string {
 	if strings.Trim(text, "0.") == "" {
 		return "under " + strconv.FormatFloat(math.Pow10(-decimals), 'f', decimals, 64)
 	}
-	return thousands(text)
+	return numeral.Thousands(text)
 }
 
 // signed prints x with its sign for a table: "+1.4", "-0.13", "0.0".
@@ -131,7 +106,7 @@ func signed(x float64, decimals int) string {
 	if math.IsNaN(x) || math.IsInf(x, 0) {
 		return unknown
 	}
-	text := thousands(strconv.FormatFloat(math.Abs(x), 'f', decimals, 64))
+	text := numeral.Thousands(strconv.FormatFloat(math.Abs(x), 'f', decimals, 64))
 	switch {
 	case strings.Trim(text, "0.") == "":
 		return text

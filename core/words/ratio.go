@@ -5,6 +5,7 @@ import (
 	"strconv"
 
 	"tailgap/core/ask"
+	"tailgap/core/numeral"
 )
 
 // Ratio says the ratio of the curve's share to the counted one: "17 by the
@@ -59,7 +60,7 @@ func RatioNumber(r float64) string {
 	case r < 0.001:
 		return "under 0.001"
 	case r >= 99.95:
-		return thousands(strconv.FormatFloat(r, 'f', 0, 64))
+		return numeral.Thousands(strconv.FormatFloat(r, 'f', 0, 64))
 	case r >= 9.995:
 		return strconv.FormatFloat(r, 'f', 1, 64)
 	case r >= 0.1:

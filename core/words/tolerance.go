@@ -150,11 +150,11 @@ func ofCount(l *verdict.Limit) bool { return l != nil && l.Unit == verdict.OfCou
 
 // Settle says how many more people would settle an unsettled verdict, that no
 // realistic number would, or that it can't be said; empty otherwise.
-func Settle(f ask.Finding) string {
+func Settle(q ask.Question, f ask.Finding) string {
 	if f.Verdict == nil || *f.Verdict != "unsettled" {
 		return ""
 	}
-	if f.PeopleToSettle == nil && f.Counted == 0 {
+	if f.PeopleToSettle == nil && f.Counted == 0 && (ofCount(q.TooHigh) || ofCount(q.TooLow)) {
 		return "how many more people would settle it can't be said"
 	}
 	if f.PeopleToSettle == nil {

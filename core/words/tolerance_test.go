@@ -65,7 +65,7 @@ func TestVerdictWhereNobodyWasCounted(t *testing.T) {
 	q.TooHigh = &verdict.Limit{Size: 20, Unit: verdict.OfCount}
 	f.Counted, f.CountedShare = 0, 0
 	assert.Equal(t, "unsettled: none were counted, so there is no count to take a part of", Verdict(q, f))
-	assert.Equal(t, "how many more people would settle it can't be said", Settle(f))
+	assert.Equal(t, "how many more people would settle it can't be said", Settle(q, f))
 }
 
 // Of an exact gap that prints like the limit it has passed, "more than" would
@@ -87,9 +87,9 @@ func TestSettle(t *testing.T) {
 	} {
 		f := seventy("unsettled")
 		f.PeopleToSettle = &more
-		assert.Equal(t, expected, Settle(f))
+		assert.Equal(t, expected, Settle(asked(), f))
 	}
-	assert.Equal(t, "no realistic number of people would settle it", Settle(seventy("unsettled")))
-	assert.Empty(t, Settle(seventy("holds")))
-	assert.Empty(t, Settle(ask.Finding{}))
+	assert.Equal(t, "no realistic number of people would settle it", Settle(asked(), seventy("unsettled")))
+	assert.Empty(t, Settle(asked(), seventy("holds")))
+	assert.Empty(t, Settle(asked(), ask.Finding{}))
 }

@@ -36,7 +36,7 @@ func Trusted(q ask.Question, r ask.Result, s ask.Sweep) []string {
 			continue
 		}
 		anywhere = true
-		sentences = append(sentences, place(stretch, s.Side)+" the curve is within the tolerance, whatever threshold is taken.")
+		sentences = append(sentences, place(stretch, s.Side)+" the curve is within the tolerance"+whatever(stretch, s)+".")
 	}
 	switch {
 	case anywhere:
@@ -46,6 +46,17 @@ func Trusted(q ask.Question, r ask.Result, s ask.Sweep) []string {
 	}
 	nowhere := "Nowhere on this scale (" + SideName(s.Side) + ") where there are people enough to matter can the curve be trusted at this tolerance."
 	return append([]string{nowhere}, sentences...)
+}
+
+// whatever says of how many thresholds a stretch is made.
+func whatever(stretch ask.Stretch, s ask.Sweep) string {
+	switch {
+	case stretch.From == stretch.To:
+		return ""
+	case s.Thinned:
+		return " at every threshold looked at"
+	}
+	return ", whatever threshold is taken"
 }
 
 func place(stretch ask.Stretch, side cutoff.Side) string {

@@ -30,8 +30,10 @@ func TestTrusted(t *testing.T) {
 	}{
 		{"a stretch", swept(cutoff.AtLeast, middle),
 			[]string{"From 14 to 27 (at or above) the curve is within the tolerance, whatever threshold is taken."}},
+		{"a thinned sweep", thinned(swept(cutoff.AtLeast, middle)),
+			[]string{"From 14 to 27 (at or above) the curve is within the tolerance at every threshold looked at."}},
 		{"one threshold", swept(cutoff.Below, ask.Stretch{From: 14, To: 14}),
-			[]string{"At 14 (below) the curve is within the tolerance, whatever threshold is taken."}},
+			[]string{"At 14 (below) the curve is within the tolerance."}},
 		{"nowhere", swept(cutoff.AtMost),
 			[]string{"Nowhere on this scale (at or below) can the curve be trusted at this tolerance."}},
 		{"an empty tail beside a stretch", swept(cutoff.AtLeast, middle, ask.Stretch{From: 38, To: 40, Trivial: true}),
@@ -79,4 +81,9 @@ func TestWorst(t *testing.T) {
 	r.Worst = ask.Worst{Side: cutoff.Below, Threshold: 12.5, GapPoints: 0.13}
 	assert.Equal(t, "The gap is largest below 12.5: too high by 0.13 points.", Worst(r))
 	assert.Empty(t, Worst(ask.Result{}), "no sweep")
+}
+
+func thinned(s ask.Sweep) ask.Sweep {
+	s.Thinned = true
+	return s
 }
