@@ -92,7 +92,7 @@ func (p *page) shows(c commanded) {
 		assert.Equal(p, f.Cutoff.String(), cards[i].Cutoff)
 		p.holds(cards[i], exact, cardTexts(c.Question, f))
 		p.says(cards[i].Text, words.Capital(f.Cutoff.Words()), words.Limits(f.Reading), words.HeadLimits(f),
-			words.Capital(words.Reason(c.Question, f)), words.Capital(words.Settle(f)), words.OtherReading(c.Question, f))
+			words.Capital(words.Reason(c.Question, f)), words.Capital(words.Settle(c.Question, f)), words.OtherReading(c.Question, f))
 		for _, note := range f.Notes {
 			p.says(cards[i].Text, words.Line(words.Capital(note)))
 		}
