@@ -233,3 +233,29 @@ func TestCancelAndProgress(t *testing.T) {
 	require.NoError(t, err)
 	assert.Equal(t, 1000, last)
 }
+
+// A stretch no wider than a rounding is not less than nothing to the curve.
+func TestANarrowStretchHasNoShareBelowNothing(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		q := question()
+		q.Everyone, q.Step = true, sample.StepChoice{None: true}
+		at := rapid.Float64Range(0, 2).Draw(t, "at")
+		q.Cutoffs = []cutoff.Cutoff{{Side: cutoff.Stretch, At: at, To: at + rapid.Float64Range(0, 1e-15).Draw(t, "width")}}
+		assert.GreaterOrEqual(t, judge(t, q, []float64{0.1, 0.2, 0.3, 0.7, 1.1, 1.2, 1.9}).Cutoffs[0].CurveShare, 0.0)
+	})
+}
+
+// With the half-step the curve puts nobody on a stretch between two attainable
+// scores, and never less than nobody.
+func TestAStretchBetweenScoresHasNoShare(t *testing.T) {
+	scores := []float64{0.1, 0.2, 0.3, 0.7, 1.1, 1.2, 1.9}
+	rapid.Check(t, func(t *rapid.T) {
+		at := float64(rapid.IntRange(0, 30).Draw(t, "score"))/10 + rapid.SampledFrom([]float64{0.03, 0.05, 0.09}).Draw(t, "past it")
+		q := question()
+		q.Step, q.HalfStep, q.Everyone = sample.StepChoice{Size: 0.1}, true, true
+		q.Cutoffs = []cutoff.Cutoff{{Side: cutoff.Stretch, At: at, To: at}}
+		f := judge(t, q, scores).Cutoffs[0]
+		assert.Zero(t, f.CurveShare)
+		assert.Zero(t, f.GapPoints)
+	})
+}

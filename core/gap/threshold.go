@@ -26,7 +26,11 @@ func Split(scale sample.Scale, at float64, strict, halfStep bool) Threshold {
 // a stretch.
 func Ends(scale sample.Scale, c cutoff.Cutoff, halfStep bool) []Threshold {
 	if c.Side == cutoff.Stretch {
-		return []Threshold{Split(scale, c.At, false, halfStep), Split(scale, c.To, true, halfStep)}
+		from, to := Split(scale, c.At, false, halfStep), Split(scale, c.To, true, halfStep)
+		if halfStep && scale.AtOrAbove(c.At) > scale.AtOrBelow(c.To) {
+			to.Point = from.Point // midway between the same two attainable scores, but for rounding
+		}
+		return []Threshold{from, to}
 	}
 	return []Threshold{Split(scale, c.At, c.Side.Strict(), halfStep)}
 }
