@@ -106,6 +106,16 @@ func TestCutoffsFarOut(t *testing.T) {
 	}
 }
 
+// With two distinct scores there is a threshold at which both move the curve's
+// share alike: its variance is 0 there, or a rounding below.
+func TestTwoScoresOfOneInfluence(t *testing.T) {
+	q := question()
+	q.HalfStep, q.Range = true, &sample.Range{Low: -100000.00018667625, High: -99999.99971988852}
+	r := judge(t, q, []float64{-99999.999999, -99999.999999, -99999.999999, -99999.999901})
+	_, err := json.Marshal(r)
+	assert.NoError(t, err)
+}
+
 func TestReplicatesThatFillTheMemory(t *testing.T) {
 	scores := make([]float64, 2000)
 	for i := range scores {

@@ -50,8 +50,9 @@ func (c *Reading) Subtract(other *Reading, s *Sums) {
 func (c *Reading) influence(d float64, s *Sums) float64 { return c.a*d + c.b*(d*d-s.M2) }
 
 // variance is n times the variance of the mean of a(x-mean) + b((x-mean)²-M2).
+// It is 0 where two scores have the same influence, and below by rounding only.
 func (s *Sums) variance(a, b float64) float64 {
-	return s.bessel * (a*(a*s.M2+2*b*s.M3) + b*b*s.fourth)
+	return max(0, s.bessel*(a*(a*s.M2+2*b*s.M3)+b*b*s.fourth))
 }
 
 func step(point, mean float64) float64 {
