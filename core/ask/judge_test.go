@@ -259,3 +259,21 @@ func TestAStretchBetweenScoresHasNoShare(t *testing.T) {
 		assert.Zero(t, f.GapPoints)
 	})
 }
+
+// Where the gap's interval is on one side of 0, the ratio's is on one side of 1.
+func TestRatioAndGapAgreeOnTheDirection(t *testing.T) {
+	few := []float64{6}
+	for range 79 {
+		few = append(few, 5)
+	}
+	above := judge(t, question(">5"), few).Cutoffs[0]
+	require.Positive(t, *above.GapLow)
+	assert.GreaterOrEqual(t, *above.RatioLow, 1.0)
+
+	q := question(">=2.1")
+	q.HalfStep = true
+	below := judge(t, q, []float64{4, 3, 3}).Cutoffs[0]
+	require.Negative(t, *below.GapHigh)
+	require.NotNil(t, below.RatioHigh)
+	assert.LessOrEqual(t, *below.RatioHigh, 1.0)
+}

@@ -43,11 +43,16 @@ func IntervalOf(e *gap.Estimate, weight, quantile, t float64, tail bool) Interva
 // RatioLimits are the limits of curve share over counted share: the weights
 // at which the interval of curve share - weight·counted share still holds 0
 // (Fieller 1954), given the estimated ratio and the interval at any weight.
-// A high limit of nil says that there is none, because the counted share
+// In a small sample these weights need not be one run: the limits are those of
+// the run around the ratio, and on its side of 1 where the gap's interval lies
+// on one side of 0. A high limit of nil says that there is none, because the counted share
 // can't be told from zero.
 func RatioLimits(ratio float64, interval func(weight float64) Interval) (low, high *float64) {
 	const smallest, largest, halvings = 1e-9, 1e6, 100
 	bottom, top := ratio*smallest, ratio
+	if ratio > 1 && interval(1).Low > 0 {
+		bottom = 1
+	}
 	if interval(bottom).Low > 0 {
 		for range halvings {
 			middle := (bottom + top) / 2
@@ -62,6 +67,9 @@ func RatioLimits(ratio float64, interval func(weight float64) Interval) (low, hi
 		low = new(float64)
 	}
 	bottom, reach := ratio, math.Max(ratio, 1e-12)*2
+	if ratio < 1 && interval(1).High < 0 {
+		reach = 1
+	}
 	for interval(reach).High >= 0 {
 		if reach > ratio*largest {
 			return low, nil
