@@ -124,7 +124,7 @@ func headsCell(f ask.Finding) app.UI {
 
 func headLimitsCell(f ask.Finding) app.UI {
 	return when(f.Heads != nil, func() app.UI {
-		text := words.HeadLimits(f)
+		text := words.SignedHeadLimits(f)
 		return when(text != "", func() app.UI {
 			return app.Span().Body(optional("heads.low", f.Heads.Low, ""), optional("heads.high", f.Heads.High, ""), app.Text(text))
 		})
