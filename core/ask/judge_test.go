@@ -2,6 +2,7 @@ package ask_test
 
 import (
 	"context"
+	"fmt"
 	"testing"
 
 	"github.com/stretchr/testify/assert"
@@ -276,4 +277,24 @@ func TestRatioAndGapAgreeOnTheDirection(t *testing.T) {
 	require.Negative(t, *below.GapHigh)
 	require.NotNil(t, below.RatioHigh)
 	assert.LessOrEqual(t, *below.RatioHigh, 1.0)
+}
+
+// Adding the same to every score and cutoff changes nothing, resamples of one
+// score only included.
+func TestAnswersMoveWithTheScores(t *testing.T) {
+	at := func(shift float64, sign string) ask.Finding {
+		scores := []float64{shift + 1}
+		for range 79 {
+			scores = append(scores, shift)
+		}
+		return judge(t, question(fmt.Sprintf("%s%v", sign, shift)), scores).Cutoffs[0]
+	}
+	for _, sign := range []string{">", ">=", "<=", "<"} {
+		want := at(0, sign)
+		for _, shift := range []float64{5, 50, -3, 1000} {
+			got := at(shift, sign)
+			assert.InDelta(t, *want.GapLow, *got.GapLow, 1e-8, "%s%v", sign, shift)
+			assert.InDelta(t, *want.GapHigh, *got.GapHigh, 1e-8, "%s%v", sign, shift)
+		}
+	}
 }

@@ -56,7 +56,7 @@ func (s *Sums) variance(a, b float64) float64 {
 }
 
 func step(point, mean float64) float64 {
-	if mean >= point {
+	if mean >= point-1e-9 { // SDs of the sample; the mean is a sum and may be off by a rounding
 		return 1
 	}
 	return 0
