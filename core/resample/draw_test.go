@@ -164,3 +164,13 @@ func TestRunReportsProgressAndEndsWithTheContext(t *testing.T) {
 	})
 	assert.ErrorIs(t, err, context.Canceled)
 }
+
+// A panic in a goroutine ends the program; one in Run can be recovered.
+func TestAPanicReachesTheCaller(t *testing.T) {
+	plan := planFor(wholeNumbers(300), 2)
+	plan.Regions[3].From = 1 << 20 // out of reach of a resample; the sample itself has no one there
+	assert.Panics(t, func() {
+		_, err := Run(context.Background(), plan, nil)
+		assert.NoError(t, err)
+	})
+}

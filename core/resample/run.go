@@ -55,62 +55,52 @@ const blockSize = 64
 // stopped all its goroutines. progress, which may be nil, is called from the
 // calling goroutine with the number of replicates done.
 func Run(ctx context.Context, plan Plan, progress func(done int)) (Quantiles, error) {
-	workers := plan.Workers
-	if workers <= 0 {
-		workers = runtime.GOMAXPROCS(0)
-	}
-	blocks := (plan.Replicates + blockSize - 1) / blockSize
-	workers = min(workers, blocks)
-
-	studies := make([]*study, workers)
-	finished := make(chan int, workers)
-	failed := make(chan any, workers)
-	drawer := newDrawer(plan.Table.Counts)
-	estimates := sampleEstimates(plan)
+	studies := newStudies(plan)
+	reports := make(chan report, len(studies))
 	var next atomic.Int64
-	for w := range studies {
-		studies[w] = newStudy(plan, drawer, estimates)
-		go func() {
-			defer func() {
-				if failure := recover(); failure != nil {
-					failed <- failure
-				}
-				finished <- 0
-			}()
-			for {
-				block := int(next.Add(1)) - 1
-				if block >= blocks {
-					return
-				}
-				size := min(blockSize, plan.Replicates-block*blockSize)
-				if !studies[w].block(ctx, block, size) {
-					return
-				}
-				finished <- size
-			}
-		}()
+	for _, s := range studies {
+		go s.work(ctx, &next, reports)
 	}
-	for done := 0; workers > 0; {
-		size := <-finished
-		if size == 0 {
-			workers--
+	var failure any
+	done := 0
+	for working := len(studies); working > 0; {
+		r := <-reports
+		if r.ended {
+			working--
+			if r.failure != nil {
+				failure = r.failure
+			}
 			continue
 		}
-		done += size
+		done += r.done
 		if progress != nil {
 			progress(done)
 		}
 	}
-	select {
-	case failure := <-failed:
-		panic(failure) // where the caller can recover it
-	default:
+	if failure != nil {
+		panic(failure) // here the caller can recover it
 	}
 	if err := ctx.Err(); err != nil {
 		return Quantiles{}, err
 	}
 	return merge(plan, studies), nil
 }
+
+// newStudies splits the plan over its workers, or one for each core.
+func newStudies(plan Plan) []*study {
+	workers := plan.Workers
+	if workers <= 0 {
+		workers = runtime.GOMAXPROCS(0)
+	}
+	drawer, estimates := newDrawer(plan.Table.Counts), sampleEstimates(plan)
+	studies := make([]*study, min(workers, plan.blocks()))
+	for i := range studies {
+		studies[i] = newStudy(plan, drawer, estimates)
+	}
+	return studies
+}
+
+func (p *Plan) blocks() int { return (p.Replicates + blockSize - 1) / blockSize }
 
 func sampleEstimates(plan Plan) []*gap.Estimate {
 	estimates := make([]*gap.Estimate, len(plan.Regions))

@@ -2,6 +2,7 @@ package resample
 
 import (
 	"context"
+	"sync/atomic"
 
 	"tailgap/core/gap"
 )
@@ -78,6 +79,28 @@ func (s *study) point(p gap.Point, known map[gap.Point]int) int {
 		s.points = append(s.points, p)
 	}
 	return index
+}
+
+// report is what a goroutine tells of its work: so many replicates done, or
+// that it has ended, and with what panic if there was one.
+type report struct {
+	done    int
+	ended   bool
+	failure any
+}
+
+// work takes blocks of replicates, the next that nobody has taken, until there
+// are no more or the context ends.
+func (s *study) work(ctx context.Context, next *atomic.Int64, reports chan<- report) {
+	defer func() { reports <- report{ended: true, failure: recover()} }()
+	for {
+		block := int(next.Add(1)) - 1
+		size := min(blockSize, s.plan.Replicates-block*blockSize)
+		if size <= 0 || !s.block(ctx, block, size) {
+			return
+		}
+		reports <- report{done: size}
+	}
 }
 
 // block runs the replicates of one block; false when the context ended.
