@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"io"
 	"os"
+	"slices"
 
 	"tailgap/core/intake"
 )
@@ -20,6 +21,7 @@ type input struct {
 func (p *program) open(ctx context.Context, paths []string, watch func(read int64)) (*input, error) {
 	in := &input{}
 	counter, sized, piped := &counter{watch: watch}, true, false
+	var regular []os.FileInfo
 	for _, path := range paths {
 		if path == "-" {
 			if piped {
@@ -42,6 +44,10 @@ func (p *program) open(ctx context.Context, paths []string, watch func(read int6
 			return in, fmt.Errorf("%s is a folder; name the files in it", path)
 		case !info.Mode().IsRegular():
 			sized = false
+		case slices.ContainsFunc(regular, func(other os.FileInfo) bool { return os.SameFile(info, other) }):
+			return in, misuse(judgeName, "%s is named twice; its people would be counted twice", path)
+		default:
+			regular = append(regular, info)
 		}
 		in.size += info.Size()
 		in.add(path, counter.count(ahead(ctx, file)))

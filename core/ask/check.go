@@ -21,6 +21,8 @@ const (
 	maxReplicates = 1_000_000
 	maxCutoffs    = 1000
 	maxWorkers    = 1024
+	maxHeads      = 1e12
+	minLevel      = 0.5
 )
 
 // NewQuestion returns a question with the defaults: a fitted curve, the step
@@ -122,6 +124,9 @@ func (q Question) Check() error {
 	if !(q.Level > 0 && q.Level < 1) {
 		return fmt.Errorf("the level %v is not between 0 and 1; write 0.95 for 95%% intervals", q.Level)
 	}
+	if q.Level < minLevel {
+		return fmt.Errorf("an interval at the level %v misses more often than it hits and settles nothing; ask for %v or more, such as 0.95", q.Level, minLevel)
+	}
 	if q.Replicates < minReplicates || q.Replicates > maxReplicates {
 		return fmt.Errorf("%d replicates can't be used; ask for between %d and %d", q.Replicates, minReplicates, maxReplicates)
 	}
@@ -152,8 +157,8 @@ func (q Question) checkCutoffs() error {
 }
 
 func (q Question) checkStakes() error {
-	if q.Heads != nil && (!(*q.Heads > 0) || !finite(*q.Heads)) {
-		return fmt.Errorf("%v heads can't be counted; say how many people the share will be applied to, a number above zero", *q.Heads)
+	if q.Heads != nil && !(*q.Heads > 0 && *q.Heads <= maxHeads) {
+		return fmt.Errorf("%v heads can't be counted; say how many people the share will be applied to, a number above zero and up to a million million", *q.Heads)
 	}
 	for _, limit := range []*verdict.Limit{q.TooHigh, q.TooLow} {
 		switch {

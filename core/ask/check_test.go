@@ -25,6 +25,7 @@ func TestQuestionsThatCantBeAnswered(t *testing.T) {
 		`the level 95 is not between 0 and 1; write 0.95 for 95% intervals`:                                                                func(q *ask.Question) { q.Level = 95 },
 		`the level 0 is not between 0 and 1; write 0.95 for 95% intervals`:                                                                 func(q *ask.Question) { q.Level = 0 },
 		`the level 1 is not between 0 and 1; write 0.95 for 95% intervals`:                                                                 func(q *ask.Question) { q.Level = 1 },
+		`an interval at the level 0.3 misses more often than it hits and settles nothing; ask for 0.5 or more, such as 0.95`:               func(q *ask.Question) { q.Level = 0.3 },
 		`the level NaN is not between 0 and 1; write 0.95 for 95% intervals`:                                                               func(q *ask.Question) { q.Level = math.NaN() },
 		`199 replicates can't be used; ask for between 200 and 1000000`:                                                                    func(q *ask.Question) { q.Replicates = 199 },
 		`1000001 replicates can't be used; ask for between 200 and 1000000`:                                                                func(q *ask.Question) { q.Replicates = 1_000_001 },
@@ -33,7 +34,7 @@ func TestQuestionsThatCantBeAnswered(t *testing.T) {
 		`a curve with mean 50 and SD 0 can't be drawn; the SD must be above zero and both must be finite`:                                  func(q *ask.Question) { q.Curve = &curve.Given{Mean: 50} },
 		`a curve with mean +Inf and SD 1 can't be drawn; the SD must be above zero and both must be finite`:                                func(q *ask.Question) { q.Curve = &curve.Given{Mean: math.Inf(1), SD: 1} },
 		`the cutoff >=5 is there twice; leave one out`:                                                                                     func(q *ask.Question) { q.Cutoffs = append(question(">=5").Cutoffs, question(">= 5").Cutoffs...) },
-		`0 heads can't be counted; say how many people the share will be applied to, a number above zero`:                                  func(q *ask.Question) { q.Heads = number(0) },
+		`0 heads can't be counted; say how many people the share will be applied to, a number above zero and up to a million million`:      func(q *ask.Question) { q.Heads = number(0) },
 		`the tolerance 40heads needs to know of how many people; say it with heads, such as 4000`:                                          func(q *ask.Question) { q.TooLow = &verdict.Limit{Size: 40, Unit: verdict.Heads} },
 		`no curve is too low by more than all of the count, so 100%count says nothing; leave out the limit on too low, or make it smaller`: func(q *ask.Question) { q.TooHigh, q.TooLow = ofCount(100), ofCount(100) },
 		`the tolerance -1pt can't be used; it must be zero or more`:                                                                        func(q *ask.Question) { q.TooHigh = points(-1) },
@@ -233,7 +234,7 @@ func TestWarnings(t *testing.T) {
 	stepped.Step = sample.StepChoice{Size: 2}
 	assert.Contains(t, warn(stepped, spread(210)), "100 scores are not a whole number of steps of 2 from the lowest score; check the step")
 	assert.Contains(t, warn(question(">=2"), []float64{0, 0, 0, 0, 1, 1, 2, 5, 9}),
-		"the mean is less than 2 SD above 0, the lowest score there can be: the scores are skewed, and the curve puts people below 0")
+		"the mean is less than 2 SD above 0, where the scores begin: the curve puts people below 0, where there are none")
 	given := question(">=20")
 	given.Curve = &curve.Given{Mean: 500, SD: 100}
 	assert.Contains(t, warn(given, spread(210)), "the mean of these scores is more than 2 SD from the given curve's: check that both are on the same scale")
@@ -251,8 +252,12 @@ func TestNotes(t *testing.T) {
 	assert.Contains(t, r.Cutoffs[1].Notes, "31 is outside the scores seen (10 to 30)")
 	assert.Contains(t, r.Cutoffs[2].Notes, "nobody was counted at 8 or below: the interval there is wide, and the ratio says little")
 	assert.NotContains(t, r.Cutoffs[3].Notes, "9 people were counted on the other side of this cutoff: the interval there is wide")
+	single := question("20..20")
+	assert.Contains(t, judge(t, single, scores).Cutoffs[0].Notes, "a curve has no share at a single score: read it with the half-step")
+	single.HalfStep = true
+	assert.Empty(t, judge(t, single, scores).Cutoffs[0].Notes)
 	far := question(">=60")
 	far.TooHigh, far.TooLow = points(5), points(5)
 	assert.Contains(t, judge(t, far, scores).Cutoffs[0].Notes,
-		"it holds only because so few people are concerned here: a gap as large as the tolerance was not possible; look at the ratio")
+		"it holds only because a gap as large as the tolerance is not possible here; look at the ratio")
 }

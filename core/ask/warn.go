@@ -33,11 +33,14 @@ func (w *work) notes(c cutoff.Cutoff, f Finding) []string {
 			add("%s is between two attainable scores, %s and %s", numeral.Plain(at), numeral.Plain(w.scale.AtOrBelow(at)), numeral.Plain(w.scale.AtOrAbove(at)))
 		}
 	}
+	if c.Side == cutoff.Stretch && c.At == c.To && (w.scale.Step == 0 || !w.halfStep) {
+		add("a curve has no share at a single score: %s", map[bool]string{true: "read it with the half-step", false: "ask for a stretch with two ends"}[w.scale.Step > 0])
+	}
 	if f.HalfStep != nil && f.Verdict != nil && *f.HalfStep.Verdict != *f.WithoutHalfStep.Verdict {
 		add("the half-step decides the verdict: with it the curve %s, without it %s", verdictWord(*f.HalfStep.Verdict), verdictWord(*f.WithoutHalfStep.Verdict))
 	}
 	if f.Verdict != nil && *f.Verdict == "holds" && w.tolerance.Trivial(f.CurveShare, f.CountedShare) {
-		add("it holds only because so few people are concerned here: a gap as large as the tolerance was not possible; look at the ratio")
+		add("it holds only because a gap as large as the tolerance is not possible here; look at the ratio")
 	}
 	return notes
 }
@@ -62,7 +65,7 @@ func people(n int) string {
 // warnings are what must be borne in mind about one column. The bounds are
 // common practice.
 func (w *work) warnings() []string {
-	warnings := []string{}
+	warnings := append([]string{}, w.column.Doubts...)
 	add := func(format string, values ...any) { warnings = append(warnings, fmt.Sprintf(format, values...)) }
 	counts, m := w.table.Counts, w.table.Moments
 	for _, code := range sample.SuspectedCodes(counts) {
@@ -85,7 +88,7 @@ func (w *work) warnings() []string {
 		add("%s not a whole number of steps of %s from the lowest score; check the step", scores(off), numeral.Plain(w.scale.Step))
 	}
 	if w.scale.Low == 0 && counts.Min() >= 0 && m.Mean < 2*m.SD {
-		add("the mean is less than 2 SD above 0, the lowest score there can be: the scores are skewed, and the curve puts people below 0")
+		add("the mean is less than 2 SD above 0, where the scores begin: the curve puts people below 0, where there are none")
 	}
 	if excess := m.ExcessKurtosis(); excess > 10 && !w.question.Everyone {
 		add("the tails are very heavy (excess kurtosis %.0f): intervals and bands are too narrow", excess)

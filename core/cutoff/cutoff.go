@@ -4,6 +4,7 @@ package cutoff
 
 import (
 	"fmt"
+	"math"
 	"regexp"
 	"strconv"
 	"strings"
@@ -141,4 +142,11 @@ func (c *Cutoff) UnmarshalText(text []byte) (err error) {
 	return err
 }
 
-func format(x float64) string { return strconv.FormatFloat(x, 'f', -1, 64) }
+// format writes a number so that it is read back as the same, without
+// hundreds of zeros.
+func format(x float64) string {
+	if size := math.Abs(x); size != 0 && (size >= 1e15 || size < 1e-6) {
+		return strconv.FormatFloat(x, 'g', -1, 64)
+	}
+	return strconv.FormatFloat(x, 'f', -1, 64)
+}

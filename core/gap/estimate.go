@@ -71,8 +71,14 @@ func (e *Estimate) KappaUnfloored(weight float64) float64 {
 // SE is the ghost-studentised standard error of Gap(weight), a proportion.
 func (e *Estimate) SE(weight float64) float64 {
 	p := e.Shrunk()
-	return math.Sqrt((e.V + e.Kappa(weight)*p*(1-p)) / e.N)
+	variance := e.V + e.Kappa(weight)*p*(1-p)
+	return math.Sqrt(max(variance, smallestVariance*p*(1-p)) / e.N)
 }
+
+// smallestVariance, of the binomial variance, keeps the standard error above
+// zero where curve and weighted count move in step, as at one cutoff of a
+// score with two values; the quantile of the replicates makes up for it.
+const smallestVariance = 1e-6
 
 // Few is true where fewer than ten people are inside the region, or outside it.
 func (e *Estimate) Few() bool { return math.Min(e.Inside, e.N-e.Inside) < FewPeople }

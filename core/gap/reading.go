@@ -40,7 +40,12 @@ func (t *Table) ReadRegion(r *Region, s *Sums) Reading {
 
 // Subtract takes another reading's share away: what is left is a stretch.
 func (c *Reading) Subtract(other *Reading, s *Sums) {
-	c.share = max(0, c.share-other.share) // below 0 by rounding only
+	if c.z < 0 && other.z < 0 { // from the lower tails, whose digits the upper ones have lost
+		c.share = curve.UpperTail(-other.z) - curve.UpperTail(-c.z)
+	} else {
+		c.share -= other.share
+	}
+	c.share = max(0, c.share) // below 0 by rounding only
 	c.a -= other.a
 	c.b -= other.b
 	c.v = s.variance(c.a, c.b)

@@ -28,7 +28,7 @@ var reasons = [...]string{
 	blank:          "blank",
 	unreadable:     "unreadable",
 	ambiguous:      "comma that could be decimal or thousands",
-	tooShort:       "row too short",
+	tooShort:       "in too short a row",
 	misplacedQuote: "misplaced quote",
 }
 

@@ -61,6 +61,7 @@ func Read(sources []Source, options Options) (sample.Sample, error) {
 		if err := t.check(); err != nil {
 			return sample.Sample{}, err
 		}
+		t.column.Doubts = t.doubts()
 		s.Columns = append(s.Columns, t.column)
 	}
 	return s, nil

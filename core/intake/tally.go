@@ -14,6 +14,11 @@ type tally struct {
 
 	// Of the present source: the first line with each decimal mark, 0 for none.
 	comma, point int
+
+	// Where semicolons part the cells: the place of the first number with a
+	// mark, and whether every one so far has a group of three digits after it.
+	marked string
+	groups bool
 }
 
 // join starts a further source. A column asked for by its number must have the
@@ -43,6 +48,9 @@ func (t *tally) add(r *rows, data *row, index int, place func(line int) string) 
 	}
 	if k == usable {
 		t.column.Scores = append(t.column.Scores, x)
+		if mark != 0 && r.cells.comma == commaDecimal {
+			t.seeMark(data.cells[index], mark, place(data.line))
+		}
 		return t.oneMark(mark, data.line)
 	}
 	if k == infinite {
@@ -50,6 +58,23 @@ func (t *tally) add(r *rows, data *row, index int, place func(line int) string) 
 	}
 	t.drop(r.cells.reason(k), data.line, place)
 	return nil
+}
+
+// seeMark watches for marks that may part thousands: 1.234 for 1234.
+func (t *tally) seeMark(cell string, mark byte, place string) {
+	before, after, _ := strings.Cut(trim(cell), string(mark))
+	if t.marked == "" {
+		t.marked, t.groups = place, true
+	}
+	t.groups = t.groups && isThousands(before, after)
+}
+
+// doubts are what may be otherwise than it was read.
+func (t *tally) doubts() []string {
+	if !t.groups {
+		return nil
+	}
+	return []string{fmt.Sprintf("every number with a decimal mark has three digits after it (first on %s): if the marks part thousands, those scores are 1,000 times too small", t.marked)}
 }
 
 // oneMark refuses a column in which both 3,5 and 3.5 stand: one of them is

@@ -24,7 +24,7 @@ func ParseStep(text string) (StepChoice, error) {
 	default:
 		size, err := strconv.ParseFloat(t, 64)
 		if err != nil || !(size > 0) || math.IsInf(size, 0) {
-			return StepChoice{}, fmt.Errorf("the step %q can't be read; write auto, none or a number above zero", text)
+			return StepChoice{}, fmt.Errorf("the step %.40q can't be read; write auto, none or a number above zero", text)
 		}
 		return StepChoice{Size: size}, nil
 	}
@@ -61,10 +61,10 @@ func ParseRange(text string) (Range, error) {
 	l, errLow := strconv.ParseFloat(strings.TrimSpace(low), 64)
 	h, errHigh := strconv.ParseFloat(strings.TrimSpace(high), 64)
 	if !found || errLow != nil || errHigh != nil || math.IsInf(h-l, 0) || math.IsNaN(h-l) {
-		return Range{}, fmt.Errorf("the range %q can't be read; write it as 0:83", text)
+		return Range{}, fmt.Errorf("the range %.40q can't be read; write it as 0:83", text)
 	}
 	if l >= h {
-		return Range{}, fmt.Errorf("the range %q ends before it starts; write the lower end first, as in 0:83", text)
+		return Range{}, fmt.Errorf("the range %.40q ends before it starts; write the lower end first, as in 0:83", text)
 	}
 	return Range{Low: l, High: h}, nil
 }

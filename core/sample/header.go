@@ -19,5 +19,5 @@ func (h *Header) UnmarshalText(text []byte) error {
 		*h = Header(text)
 		return nil
 	}
-	return fmt.Errorf("the header setting %q can't be read; write auto, yes or no", text)
+	return fmt.Errorf("the header setting %.40q can't be read; write auto, yes or no", text)
 }

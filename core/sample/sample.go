@@ -16,6 +16,7 @@ type Column struct {
 	Rows    int
 	Scores  []float64
 	Dropped []Dropped
+	Doubts  []string // what about the reading may be otherwise: sentences
 }
 
 // Dropped counts the rows left out for one reason. First says where the

@@ -34,13 +34,13 @@ func ParseLimit(text string) (Limit, error) {
 	m := limitForm.FindStringSubmatch(strings.TrimSpace(text))
 	if m == nil {
 		if bare, ok := strings.CutSuffix(strings.TrimSpace(text), "%"); ok {
-			return Limit{}, fmt.Errorf("the tolerance %q could mean two things; write %spt for percentage points or %s%%count for a part of the counted share", text, bare, bare)
+			return Limit{}, fmt.Errorf("the tolerance %.40q could mean two things; write %.20spt for percentage points or %.20s%%count for a part of the counted share", text, bare, bare)
 		}
-		return Limit{}, fmt.Errorf("the tolerance %q can't be read; write it as 1.5pt (percentage points), 20%%count (part of the counted share) or 40heads (people)", text)
+		return Limit{}, fmt.Errorf("the tolerance %.40q can't be read; write it as 1.5pt (percentage points), 20%%count (part of the counted share) or 40heads (people)", text)
 	}
 	size, err := strconv.ParseFloat(m[1], 64)
 	if err != nil || math.IsInf(size, 0) {
-		return Limit{}, fmt.Errorf("the tolerance %q can't be read; its number is too large", text)
+		return Limit{}, fmt.Errorf("the tolerance %.40q can't be read; its number is too large", text)
 	}
 	unit := Points
 	switch m[2][0] {
