@@ -24,19 +24,21 @@ func normalScores(n int, spread float64, whole bool) sample.Sample {
 	return of(scores)
 }
 
-// The answer with all its sweeps: both kinds of thresholds (>= and <=), with
-// intervals, bands and verdicts.
+// The answer with its sweeps, intervals, bands and verdicts: one sweep, or the
+// two that part the people at different places (>= and <=).
 func BenchmarkJudge(b *testing.B) {
 	for _, c := range []struct {
-		name string
-		from sample.Sample
+		name    string
+		from    sample.Sample
+		cutoffs []string
 	}{
-		{"1000-whole", normalScores(1_000, 8, true)},
-		{"1000000-whole", normalScores(1_000_000, 6, true)},
-		{"10000-distinct", normalScores(10_000, 10, false)},
+		{"1000-whole-one-sweep", normalScores(1_000, 8, true), []string{">=60", ">=40"}},
+		{"1000-whole", normalScores(1_000, 8, true), []string{">=60", "<=40"}},
+		{"1000000-whole", normalScores(1_000_000, 6, true), []string{">=60", "<=40"}},
+		{"10000-distinct", normalScores(10_000, 10, false), []string{">=60", "<=40"}},
 	} {
 		q := ask.NewQuestion()
-		q.Cutoffs = question(">=60", "<=40").Cutoffs
+		q.Cutoffs = question(c.cutoffs...).Cutoffs
 		q.TooHigh, q.TooLow = points(1), points(2)
 		for _, workers := range []int{1, 0} {
 			q.Workers = workers
