@@ -218,7 +218,7 @@ func TestWarnings(t *testing.T) {
 	warn := func(q ask.Question, scores []float64) []string { return judge(t, q, scores).Warnings }
 	assert.Empty(t, warn(question(">=20"), spread(210)))
 	assert.Contains(t, warn(question(">=20"), append(spread(210), 999, 999)),
-		"999 stands far from all other scores and looks like a missing code; if it is one, name it as missing")
+		"999 may be a missing code and not a score; if it is one, name it as missing")
 	assert.Contains(t, warn(question(">=20"), append(spread(60), 500)),
 		"the SD is mostly the single most extreme score: 97% of the sum of squares comes from there")
 	heaped := spread(210)

@@ -69,7 +69,7 @@ func (w *work) warnings() []string {
 	add := func(format string, values ...any) { warnings = append(warnings, fmt.Sprintf(format, values...)) }
 	counts, m := w.table.Counts, w.table.Moments
 	for _, code := range sample.SuspectedCodes(counts) {
-		add("%s stands far from all other scores and looks like a missing code; if it is one, name it as missing", numeral.Plain(code))
+		add("%s may be a missing code and not a score; if it is one, name it as missing", numeral.Plain(code))
 	}
 	if share, extreme := sample.ExtremeShare(counts, m); share > 0.5 && counts.N >= 20 {
 		add("the SD is mostly the %s: %.0f%% of the sum of squares comes from there", extremes(extreme), 100*share)

@@ -14,7 +14,8 @@ var usualCodes = map[float64]bool{
 
 // SuspectedCodes are the lowest or highest scores that look like missing
 // codes: a usual code more than 4 SD from the mean of the other scores and
-// more than 2 SD from the nearest of them (their SD).
+// more than 2 SD from the nearest of them (their SD); or a usual code below
+// zero where all scores that are none are zero or more.
 func SuspectedCodes(c Counts) []float64 {
 	var suspects []float64
 	for len(c.Score) > 3 {
@@ -23,7 +24,7 @@ func SuspectedCodes(c Counts) []float64 {
 		case usualCodes[c.Score[last]] && apart(c, last, last-1):
 			suspects = append(suspects, c.Score[last])
 			c = without(c, last)
-		case usualCodes[c.Score[0]] && apart(c, 0, 1):
+		case usualCodes[c.Score[0]] && (apart(c, 0, 1) || onlyBelowZero(c)):
 			suspects = append(suspects, c.Score[0])
 			c = without(c, 0)
 		default:
@@ -36,6 +37,19 @@ func SuspectedCodes(c Counts) []float64 {
 func apart(c Counts, suspect, neighbour int) bool {
 	m := without(c, suspect).Moments()
 	return math.Abs(c.Score[suspect]-m.Mean) > 4*m.SD && math.Abs(c.Score[suspect]-c.Score[neighbour]) > 2*m.SD
+}
+
+// onlyBelowZero is true where every score below zero is a usual code.
+func onlyBelowZero(c Counts) bool {
+	for _, score := range c.Score {
+		if score >= 0 {
+			return c.Score[0] < 0
+		}
+		if !usualCodes[score] {
+			return false
+		}
+	}
+	return false
 }
 
 // without is the table without its first or its last score.

@@ -29,6 +29,10 @@ func TestSuspectedCodes(t *testing.T) {
 	assert.Equal(t, []float64{999}, sample.SuspectedCodes(sample.Count(with(spread(200), 999, 5))))
 	assert.Equal(t, []float64{999, -9}, sample.SuspectedCodes(sample.Count(with(with(spread(300), 999, 5), -9, 3))))
 	assert.Empty(t, sample.SuspectedCodes(sample.Count(with(spread(200), 998, 5))), "998 is no usual code")
+	skewed := with(with(with(nil, 0, 50), 10, 20), 37, 10)
+	assert.Equal(t, []float64{-9}, sample.SuspectedCodes(sample.Count(with(skewed, -9, 6))), "alone below zero")
+	assert.Equal(t, []float64{-9, -8}, sample.SuspectedCodes(sample.Count(with(with(skewed, -9, 6), -8, 2))))
+	assert.Empty(t, sample.SuspectedCodes(sample.Count(with(with(skewed, -9, 6), -5, 2))), "-5 is a score, so -9 may be one")
 	assert.Empty(t, sample.SuspectedCodes(sample.Count([]float64{95, 97, 98, 99, 96})), "99 among others like it")
 }
 
