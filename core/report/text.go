@@ -154,7 +154,7 @@ func judgedRow(label string, f ask.Finding, r ask.Reading) []string {
 	if f.Verdict != nil {
 		verdict = words.Line(*f.Verdict)
 	}
-	return []string{label, words.Brief(words.Share(r.CurveShare)), words.Brief(words.Share(f.CountedShare)), words.SignedGap(r.GapPoints),
+	return []string{label, words.Brief(words.Share(r.CurveShare)), words.Brief(words.Share(f.CountedShare)), words.SignedGapOf(r),
 		words.SignedLimits(r), ratio, words.SignedHeads(f), verdict}
 }
 
@@ -163,7 +163,7 @@ func otherRow(label string, f ask.Finding, r ask.Reading) []string {
 	if r.Verdict != nil {
 		verdict = "(" + words.Line(*r.Verdict) + ")"
 	}
-	return []string{label, words.Brief(words.Share(r.CurveShare)), words.Brief(words.Share(f.CountedShare)), words.SignedGap(r.GapPoints),
+	return []string{label, words.Brief(words.Share(r.CurveShare)), words.Brief(words.Share(f.CountedShare)), words.SignedGapOf(r),
 		words.SignedLimits(r), "", "", verdict}
 }
 

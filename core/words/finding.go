@@ -11,7 +11,7 @@ import (
 // interval 1.1 to 1.8): 17 by the curve for every 10 counted, 56 too many of
 // 4,000."
 func Sentence(q ask.Question, f ask.Finding) string {
-	text := Shares(q, f) + " " + Capital(Gap(f.GapPoints)) + " (" + Interval(q, f.Reading) + ")"
+	text := Shares(q, f) + " " + Capital(GapOf(f.Reading)) + " (" + Interval(q, f.Reading) + ")"
 	consequences := nonEmpty(Ratio(f), Heads(q, f))
 	if len(consequences) > 0 {
 		text += ": " + strings.Join(consequences, ", ")
@@ -57,7 +57,7 @@ func OtherReading(q ask.Question, f ask.Finding) string {
 	if judgedWithHalfStep(q, f) {
 		name, other = "Without", f.WithoutHalfStep
 	}
-	text := name + " the half-step: " + Share(other.CurveShare) + ", " + Gap(other.GapPoints) + " (" + Interval(q, other) + ")"
+	text := name + " the half-step: " + Share(other.CurveShare) + ", " + GapOf(other) + " (" + Interval(q, other) + ")"
 	if other.Verdict != nil {
 		text += "; " + verdictThere(*other.Verdict)
 	}

@@ -88,7 +88,7 @@ func TestSentenceIsBuiltFromItsParts(t *testing.T) {
 			f.Ratio = some(share / counted)
 		}
 		sentence := Sentence(q, f)
-		for _, part := range []string{Share(share), Share(counted), Gap(gap), Limits(f.Reading), Ratio(f), Heads(q, f)} {
+		for _, part := range []string{Share(share), Share(counted), GapOf(f.Reading), Limits(f.Reading), Ratio(f), Heads(q, f)} {
 			assert.Contains(t, strings.ToLower(sentence), strings.ToLower(part))
 		}
 		assert.NotContains(t, sentence, "-0")

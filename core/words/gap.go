@@ -2,13 +2,14 @@ package words
 
 import (
 	"math"
+	"strconv"
+	"strings"
 
 	"tailgap/core/ask"
 )
 
-// gapDecimals is how many decimals a gap and its limits are printed with: one
-// from 1 point on, two below. The gap alone decides, so that it and its limits
-// are printed alike.
+// gapDecimals is how many decimals a gap is printed with: one from 1 point on,
+// two below.
 func gapDecimals(gap float64) int {
 	if math.Abs(gap) >= 0.995 { // would print as 1.00
 		return 1
@@ -16,42 +17,79 @@ func gapDecimals(gap float64) int {
 	return 2
 }
 
+// readingDecimals is how many decimals a gap and its limits are printed with:
+// what the coarsest of the three has, so that they are printed alike and the
+// gap no finer than it is known.
+func readingDecimals(r ask.Reading) int {
+	decimals := gapDecimals(r.GapPoints)
+	for _, limit := range []*float64{r.GapLow, r.GapHigh} {
+		if limit != nil {
+			decimals = min(decimals, gapDecimals(*limit))
+		}
+	}
+	return decimals
+}
+
 // Points prints a gap without its sign: "1.4 points", "0.13 points", "1
 // point", "under 0.01 points".
-func Points(gap float64) string {
-	digits := unsigned(gap, gapDecimals(gap))
+func Points(gap float64) string { return pointsTo(gap, gapDecimals(gap)) }
+
+func pointsTo(gap float64, decimals int) string {
+	digits := unsigned(gap, decimals)
 	if digits == "1.0" {
 		return "1 point"
 	}
 	return digits + " points"
 }
 
-// Gap prints a gap's direction and size: "too high by 1.4 points", "too low
-// by 3.9 points", "no gap".
-func Gap(points float64) string {
+// Gap prints the direction and size of a gap that stands without its
+// interval: "too high by 1.4 points", "too low by 0.13 points", "no gap".
+func Gap(points float64) string { return gapTo(points, gapDecimals(points)) }
+
+// GapOf prints a reading's gap, with no more decimals than its interval
+// allows: 0.98 known to within 17 points is "too high by 1 point".
+func GapOf(r ask.Reading) string { return gapTo(r.GapPoints, readingDecimals(r)) }
+
+func gapTo(size float64, decimals int) string {
 	switch {
-	case math.IsNaN(points) || math.IsInf(points, 0):
+	case math.IsNaN(size) || math.IsInf(size, 0):
 		return "gap " + unknown
-	case points > 0:
-		return "too high by " + Points(points)
-	case points < 0:
-		return "too low by " + Points(points)
+	case size > 0:
+		return "too high by " + pointsTo(size, decimals)
+	case size < 0:
+		return "too low by " + pointsTo(size, decimals)
 	}
 	return "no gap"
 }
 
-// SignedGap prints a gap for a table: "+1.4", "-0.13"; plus: the curve is too
-// high.
-func SignedGap(points float64) string { return signed(points, gapDecimals(points)) }
+// SignedGap prints a gap that stands without its interval for a table: "+1.4",
+// "-0.13", "-<0.01"; plus: the curve is too high.
+func SignedGap(points float64) string { return signedPoints(points, gapDecimals(points)) }
 
-// Limits prints the interval around a gap in the direction Gap gives it:
+// SignedGapOf prints a reading's gap for a table, with no more decimals than
+// its interval allows.
+func SignedGapOf(r ask.Reading) string { return signedPoints(r.GapPoints, readingDecimals(r)) }
+
+// signedPoints is signed, but says the side of what rounds to zero too.
+func signedPoints(x float64, decimals int) string {
+	least := "<" + strconv.FormatFloat(math.Pow10(-decimals), 'f', decimals, 64)
+	switch text := signed(x, decimals); {
+	case strings.ContainsAny(text, "123456789") || text == unknown || x == 0:
+		return text
+	case x < 0:
+		return "-" + least
+	}
+	return "+" + least
+}
+
+// Limits prints the interval around a gap in the direction GapOf gives it:
 // "1.1 to 1.8". Where the interval reaches to the other side each limit says
 // its own: "0.3 too low to 1.8 too high". Empty when the gap is exact.
 func Limits(r ask.Reading) string {
 	if r.GapLow == nil || r.GapHigh == nil {
 		return ""
 	}
-	decimals := gapDecimals(r.GapPoints)
+	decimals := readingDecimals(r)
 	size := func(x float64) string { return unsigned(x, decimals) }
 	return limits(r.GapPoints, *r.GapLow, *r.GapHigh, size, "too low", "too high")
 }
@@ -62,8 +100,8 @@ func SignedLimits(r ask.Reading) string {
 	if r.GapLow == nil || r.GapHigh == nil {
 		return ""
 	}
-	decimals := gapDecimals(r.GapPoints)
-	return signed(*r.GapLow, decimals) + " to " + signed(*r.GapHigh, decimals)
+	decimals := readingDecimals(r)
+	return signedPoints(*r.GapLow, decimals) + " to " + signedPoints(*r.GapHigh, decimals)
 }
 
 // limits words the two ends of an interval, low <= high, around a middle that

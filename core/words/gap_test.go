@@ -26,8 +26,8 @@ func TestGapAtTheEdges(t *testing.T) {
 		words, table string
 	}{
 		{0, "no gap", "0.00"}, {math.Copysign(0, -1), "no gap", "0.00"},
-		{math.SmallestNonzeroFloat64, "too high by under 0.01 points", "0.00"},
-		{-0.0049, "too low by under 0.01 points", "0.00"}, {0.00501, "too high by 0.01 points", "+0.01"},
+		{math.SmallestNonzeroFloat64, "too high by under 0.01 points", "+<0.01"},
+		{-0.0049, "too low by under 0.01 points", "-<0.01"}, {0.00501, "too high by 0.01 points", "+0.01"},
 		{0.125001, "too high by 0.13 points", "+0.13"}, {-0.13, "too low by 0.13 points", "-0.13"}, {0.4, "too high by 0.40 points", "+0.40"},
 		{below(0.995), "too high by 0.99 points", "+0.99"}, {0.995, "too high by 1 point", "+1.0"}, {above(0.995), "too high by 1 point", "+1.0"},
 		{below(1), "too high by 1 point", "+1.0"}, {1, "too high by 1 point", "+1.0"}, {-1.04, "too low by 1 point", "-1.0"},
@@ -47,10 +47,13 @@ func TestLimits(t *testing.T) {
 	}{
 		{1.4, 1.1, 1.8, "1.1 to 1.8", "+1.1 to +1.8"},
 		{-3.9, -6.1, -1.8, "1.8 to 6.1", "-6.1 to -1.8"},
-		{0.7, -0.3, 1.8, "0.30 too low to 1.80 too high", "-0.30 to +1.80"},
+		{0.7, -0.3, 1.8, "0.3 too low to 1.8 too high", "-0.3 to +1.8"},
+		{0.7, -0.3, below(0.995), "0.30 too low to 0.99 too high", "-0.30 to +0.99"},
+		{0.7, -0.3, 0.995, "0.3 too low to 1.0 too high", "-0.3 to +1.0"},
+		{0.7, -0.995, 0.8, "1.0 too low to 0.8 too high", "-1.0 to +0.8"},
 		{-1.2, -2.7, 0.3, "2.7 too low to 0.3 too high", "-2.7 to +0.3"},
-		{1.2, 0.03, 2.4, "under 0.1 to 2.4", "0.0 to +2.4"},
-		{1.2, -0.03, 2.4, "under 0.1 too low to 2.4 too high", "0.0 to +2.4"},
+		{1.2, 0.03, 2.4, "under 0.1 to 2.4", "+<0.1 to +2.4"},
+		{1.2, -0.03, 2.4, "under 0.1 too low to 2.4 too high", "-<0.1 to +2.4"},
 		{1.2, 0, 2.4, "0 to 2.4", "0.0 to +2.4"},
 		{-1.2, -2.4, 0, "0 to 2.4", "-2.4 to 0.0"},
 		{0, -0.5, 0.5, "0.50 too low to 0.50 too high", "-0.50 to +0.50"},
@@ -62,6 +65,28 @@ func TestLimits(t *testing.T) {
 	}
 	assert.Empty(t, Limits(ask.Reading{GapPoints: 3}), "an exact gap has no interval")
 	assert.Empty(t, SignedLimits(ask.Reading{GapPoints: 3}))
+}
+
+// A gap is printed no finer than its interval lets it be known.
+func TestGapAsFineAsItsInterval(t *testing.T) {
+	for _, c := range []struct {
+		r            ask.Reading
+		words, table string
+	}{
+		{reading(-0.98, -17.39, 15.45), "too low by 1 point", "-1.0"},
+		{reading(0.38, -0.2, 1.1), "too high by 0.4 points", "+0.4"},
+		{reading(0.38, -0.2, 0.9), "too high by 0.38 points", "+0.38"},
+		{reading(0.03, -46.65, 46.65), "too high by under 0.1 points", "+<0.1"},
+		{reading(-0.03, -46.65, 46.65), "too low by under 0.1 points", "-<0.1"},
+		{reading(0, -46.65, 46.65), "no gap", "0.0"},
+		{reading(1.4, 1.1, 1.8), "too high by 1.4 points", "+1.4"},
+		{ask.Reading{GapPoints: 0.38}, "too high by 0.38 points", "+0.38"},
+		{ask.Reading{GapPoints: 3.81}, "too high by 3.8 points", "+3.8"},
+		{reading(math.NaN(), -1, 1), "gap not known", unknown},
+	} {
+		assert.Equal(t, c.words, GapOf(c.r))
+		assert.Equal(t, c.table, SignedGapOf(c.r))
+	}
 }
 
 // sized reads a worded number and its side back: side is 1 for too high, -1
@@ -110,12 +135,15 @@ func TestGapAndLimitsAgree(t *testing.T) {
 		printedLow, printedHigh = float64(lowSide)*printedLow, float64(highSide)*printedHigh
 		assert.LessOrEqual(t, printedLow, printedHigh)
 
-		half := 0.5 * math.Pow10(-gapDecimals(gap))
+		half := 0.5 * math.Pow10(-readingDecimals(r))
+		if max(math.Abs(gap), math.Abs(low), math.Abs(high)) >= 0.995 {
+			assert.InDelta(t, 0.05, half, 1e-12, "one decimal")
+		}
 		assert.InDelta(t, low, printedLow, half+1e-12)
 		assert.InDelta(t, high, printedHigh, half+1e-12)
 		assert.True(t, low*printedLow >= 0 && high*printedHigh >= 0, "a limit changed sides")
 
-		direct := Gap(gap)
+		direct := GapOf(r)
 		assert.Equal(t, gap > 0, strings.HasPrefix(direct, "too high by "))
 		assert.Equal(t, gap < 0, strings.HasPrefix(direct, "too low by "))
 		if gap == 0 {
@@ -130,9 +158,12 @@ func TestGapAndLimitsAgree(t *testing.T) {
 				assert.LessOrEqual(t, printed, printedHigh)
 			}
 		}
-		if table := SignedGap(gap); table[0] == '+' || table[0] == '-' {
-			assert.Equal(t, gap > 0, table[0] == '+')
-		}
+		table := SignedGapOf(r)
+		assert.Equal(t, gap > 0, table[0] == '+', table)
+		assert.Equal(t, gap < 0, table[0] == '-', table)
+		lowest, highest, _ := strings.Cut(SignedLimits(r), " to ")
+		assert.Equal(t, low < 0, lowest[0] == '-', lowest)
+		assert.Equal(t, high > 0, highest[0] == '+', highest)
 	})
 }
 

@@ -111,15 +111,15 @@ func failedBy(q ask.Question, f ask.Finding) string {
 		nearest = &f.GapPoints
 	}
 	by := "more than "
-	if at, known := passed.Points(q.Heads); known && printAlike(*nearest, at) {
+	if at, known := passed.Points(q.Heads); known && printAlike(*nearest, at, readingDecimals(f.Reading)) {
 		by = "just over " // else "too high by 1 point: too high by more than 1 point"
 	}
 	return direction + " by " + by + Limit(*passed)
 }
 
 // printAlike is true where a gap is printed with the digits of a limit.
-func printAlike(gap, at float64) bool {
-	print := func(x float64) string { return strconv.FormatFloat(math.Abs(x), 'f', gapDecimals(gap), 64) }
+func printAlike(gap, at float64, decimals int) bool {
+	print := func(x float64) string { return strconv.FormatFloat(math.Abs(x), 'f', decimals, 64) }
 	return print(gap) == print(at)
 }
 

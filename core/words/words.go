@@ -4,7 +4,7 @@
 // are sentences in the Answer itself, are worded where they arise (core/ask),
 // and cutoffs print themselves as they are written.
 //
-// The parts of a sentence are functions of their own (Gap, Limits, Ratio,
+// The parts of a sentence are functions of their own (GapOf, Limits, Ratio,
 // Heads, Verdict), and the sentences are built from those very parts, so that
 // a card, a table and a sentence can't print the same thing in two ways.
 package words
