@@ -1,7 +1,10 @@
 package words
 
 import (
+	"cmp"
 	"math"
+	"slices"
+	"strings"
 
 	"tailgap/core/ask"
 	"tailgap/core/cutoff"
@@ -22,36 +25,59 @@ func SideName(side cutoff.Side) string {
 	return "between"
 }
 
-// Trusted says where the curve can be trusted on one sweep, a sentence for
-// each stretch; empty without a tolerance.
+// Trusted says where the curve can be trusted on one sweep: a sentence for
+// where it can, or that it can't, and one for each reason why people are too
+// few to tell; empty without a tolerance.
 func Trusted(q ask.Question, r ask.Result, s ask.Sweep) []string {
 	if q.TooHigh == nil && q.TooLow == nil {
 		return nil
 	}
-	var sentences []string
-	anywhere := false
+	var plain []ask.Stretch
+	var others []tooFew
 	for _, stretch := range s.Trusted {
 		if stretch.Trivial {
-			sentences = append(sentences, trivial(q, s, stretch))
-			continue
+			others = joined(others, fewPeople(s, stretch), stretch)
+		} else {
+			plain = append(plain, stretch)
 		}
-		anywhere = true
-		sentences = append(sentences, place(stretch, s.Side)+" the curve is within the tolerance"+whatever(stretch, s)+".")
 	}
-	switch {
-	case anywhere:
-		return sentences
-	case len(sentences) == 0:
-		return []string{"Nowhere on this scale (" + SideName(s.Side) + ") can the curve be trusted at this tolerance."}
+	judged := judgedBy(q, r, s)
+	sentences := []string{nowhere(s, len(others) > 0) + judged}
+	if len(plain) > 0 {
+		sentences[0] = Capital(places(plain, s.Side)) + " the curve is within the tolerance" + whatever(plain, s) + judged
 	}
-	nowhere := "Nowhere on this scale (" + SideName(s.Side) + ") where there are people enough to matter can the curve be trusted at this tolerance."
-	return append([]string{nowhere}, sentences...)
+	for _, other := range others {
+		sentences = append(sentences, other.sentence(q, s.Side))
+	}
+	return sentences
 }
 
-// whatever says of how many thresholds a stretch is made.
-func whatever(stretch ask.Stretch, s ask.Sweep) string {
+func nowhere(s ask.Sweep, few bool) string {
+	text := "Nowhere on this scale (" + SideName(s.Side) + ")"
+	if few {
+		text += " where there are people enough to matter"
+	}
+	return text + " can the curve be trusted at this tolerance"
+}
+
+// judgedBy closes the first sentence by saying why a cutoff's verdict can hold
+// where the curve isn't trusted: the band is wider than the interval of one
+// cutoff. The sweeps after a result's first one say it more shortly.
+func judgedBy(q ask.Question, r ask.Result, s ask.Sweep) string {
+	switch band := Level(q.Level) + " band"; {
+	case q.Everyone:
+		return "."
+	case len(r.Sweeps) > 0 && r.Sweeps[0].Side != s.Side:
+		return " (judged by the " + band + ")."
+	default:
+		return " (judged by the " + band + ", which holds for all thresholds at once)."
+	}
+}
+
+// whatever says of how many thresholds the stretches are made.
+func whatever(stretches []ask.Stretch, s ask.Sweep) string {
 	switch {
-	case stretch.From == stretch.To:
+	case !slices.ContainsFunc(stretches, func(t ask.Stretch) bool { return t.From != t.To }):
 		return ""
 	case s.Thinned:
 		return " at every threshold looked at"
@@ -59,33 +85,85 @@ func whatever(stretch ask.Stretch, s ask.Sweep) string {
 	return ", whatever threshold is taken"
 }
 
-func place(stretch ask.Stretch, side cutoff.Side) string {
-	if stretch.From == stretch.To {
-		return "At " + Number(stretch.From) + " (" + SideName(side) + ")"
+// How many stretches a sentence names: all of up to mostPlaces, else the
+// widest ones.
+const (
+	mostPlaces   = 8
+	widestPlaces = 6
+)
+
+// places names stretches: "from 5 to 9, from 11 to 15 and at 20 (at or above)".
+func places(stretches []ask.Stretch, side cutoff.Side) string {
+	named := stretches
+	if len(stretches) > mostPlaces {
+		named = widest(stretches, widestPlaces)
 	}
-	return "From " + Number(stretch.From) + " to " + Number(stretch.To) + " (" + SideName(side) + ")"
+	var texts []string
+	for _, stretch := range named {
+		if stretch.From == stretch.To {
+			texts = append(texts, "at "+Number(stretch.From))
+		} else {
+			texts = append(texts, "from "+Number(stretch.From)+" to "+Number(stretch.To))
+		}
+	}
+	if left := len(stretches) - len(named); left > 0 {
+		texts = append(texts, "in "+Count(left)+" stretches no longer than these")
+	}
+	last := len(texts) - 1
+	if last > 0 {
+		texts = []string{strings.Join(texts[:last], ", ") + " and " + texts[last]}
+	}
+	return texts[0] + " (" + SideName(side) + ")"
 }
 
-// trivial words a stretch that is inside the tolerance only because there are
-// too few people beyond it, or short of it, for a miss to show in points.
-func trivial(q ask.Question, s ask.Sweep, stretch ask.Stretch) string {
-	few := fewPeople(s, stretch)
-	text := place(stretch, s.Side) + ": "
+// widest are the n stretches that span most, in their order on the scale.
+func widest(stretches []ask.Stretch, n int) []ask.Stretch {
+	kept := slices.Clone(stretches)
+	slices.SortStableFunc(kept, func(a, b ask.Stretch) int { return cmp.Compare(b.To-b.From, a.To-a.From) })
+	kept = kept[:n]
+	slices.SortStableFunc(kept, func(a, b ask.Stretch) int { return cmp.Compare(a.From, b.From) })
+	return kept
+}
+
+// tooFew are the stretches that are inside the tolerance only because there
+// are too few people beyond them, or short of them, for a miss to show in
+// points, and for the same reason.
+type tooFew struct {
+	few
+	stretches []ask.Stretch
+}
+
+// joined adds a stretch to those with the same reason.
+func joined(all []tooFew, f few, stretch ask.Stretch) []tooFew {
+	for i := range all {
+		if other := &all[i]; other.here == f.here && other.opposite == f.opposite && other.counted == f.counted {
+			other.stretches = append(other.stretches, stretch)
+			if far(f.ratio) > far(other.ratio) {
+				other.ratio = f.ratio
+			}
+			return all
+		}
+	}
+	return append(all, tooFew{f, []ask.Stretch{stretch}})
+}
+
+func (t tooFew) sentence(q ask.Question, side cutoff.Side) string {
+	text := Capital(places(t.stretches, side)) + ": "
 	if q.TooHigh != nil && q.TooLow != nil {
-		text += "too few people " + few.where() + " to matter at "
+		text += "too few people " + t.where() + " to matter at "
 	} else { // one of the two shares may be large
-		text += "too small a share " + few.where() + " to miss by more than "
+		text += "too small a share " + t.where() + " to miss by more than "
 	}
 	text += within(q.TooHigh, q.TooLow)
 	switch {
-	case !few.counted:
+	case !t.counted:
 		return text + "; none were counted."
-	case few.ratio >= 5 || few.ratio <= 0.2:
-		text += "; the curve is " + ratio(few.ratio)
+	case t.ratio >= 5 || t.ratio <= 0.2:
+		text += "; the curve is " + ratio(t.ratio)
 	default:
-		text += "; " + ratio(few.ratio)
+		text += "; " + ratio(t.ratio)
 	}
-	if stretch.From != stretch.To {
+	if len(t.stretches) > 1 || t.stretches[0].From != t.stretches[0].To {
 		text += " at worst"
 	}
 	return text + "."
@@ -116,12 +194,15 @@ func fewPeople(s ask.Sweep, stretch ask.Stretch) few {
 		if count <= 0 {
 			continue
 		}
-		if far := math.Abs(math.Log(curve / count)); far > furthest {
-			f.counted, f.ratio, furthest = true, curve/count, far
+		if to := far(curve / count); to > furthest {
+			f.counted, f.ratio, furthest = true, curve/count, to
 		}
 	}
 	return f
 }
+
+// far is how far a ratio is from 1, either way.
+func far(ratio float64) float64 { return math.Abs(math.Log(ratio)) }
 
 func (f few) where() string {
 	switch {
