@@ -4,7 +4,9 @@ import (
 	"bytes"
 	"context"
 	"fmt"
+	"path/filepath"
 	"slices"
+	"strings"
 
 	"github.com/spf13/cobra"
 
@@ -112,6 +114,8 @@ func (j *judging) checkUsage(paths []string) error {
 		return misuse(judgeName, "--demo reads the demo data; leave out %.60q, or --demo", paths[0])
 	case formats[j.format] == nil:
 		return misuse(judgeName, "the format %.40q isn't one; write text, json or csv", j.format)
+	case j.figure != "" && !strings.EqualFold(filepath.Ext(j.figure), ".svg"):
+		return misuse(judgeName, "a figure is an SVG; give --figure a name that ends in .svg, not %.60q", j.figure)
 	}
 	read := slices.Clone(paths)
 	if j.from != "" {

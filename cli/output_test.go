@@ -90,6 +90,22 @@ func TestFigure(t *testing.T) {
 	assert.Contains(t, read(t, path), "DEMO")
 }
 
+// A figure is an SVG, whatever its name promises; a name that promises
+// something else is refused before anything is read.
+func TestFigureIsAnSVG(t *testing.T) {
+	for _, name := range []string{"sweep.png", "sweep.pdf", "sweep", "svg", "sweep.svg.png", "sweep.svg/"} {
+		path := t.TempDir() + string(filepath.Separator) + name
+		_, stderr, status := tailgap("", "judge", "--demo", "--replicates", "500", "--figure", path)
+		assert.Equal(t, statusInput, status, name)
+		assert.Contains(t, stderr, "give --figure a name that ends in .svg")
+		assert.NoFileExists(t, path)
+	}
+	path := filepath.Join(t.TempDir(), "SWEEP.SVG")
+	_, _, status := tailgap("", "judge", "--demo", "--replicates", "500", "--figure", path)
+	assert.Equal(t, statusFails, status)
+	assert.FileExists(t, path)
+}
+
 func TestWarningsGoToStderrWhereTheResultsAreForPrograms(t *testing.T) {
 	scores := file(t, "few.csv", "score\n1\n2\n3\n4\n5\n6\n7\n8\n9\n30\n")
 	text, stderr, _ := tailgap("", "judge", scores, "--cutoff", ">=9", "--cutoff", "<40", "--replicates", "500")
@@ -105,7 +121,7 @@ func TestWarningsGoToStderrWhereTheResultsAreForPrograms(t *testing.T) {
 }
 
 func TestUnwritableOutputIsAFailure(t *testing.T) {
-	nowhere := filepath.Join(t.TempDir(), "nowhere", "out")
+	nowhere := filepath.Join(t.TempDir(), "nowhere", "out.svg")
 	for _, args := range [][]string{
 		{"judge", "--demo", "--replicates", "500", "--out", nowhere},
 		{"judge", "--demo", "--replicates", "500", "--figure", nowhere},

@@ -89,7 +89,7 @@ func (f *questionFlags) declare() {
 		func(q *ask.Question, v bool) { q.HalfStep = v })
 
 	f.group = "What is asked"
-	list(f, "cutoff", "judge at `CUTOFF`, in quotes: '>=70', '>70', '<=25', '<25' or '20..30' (both ends in); again for more",
+	list(f, "cutoff", "judge every score column at `CUTOFF`, in quotes: '>=70', '>70', '<=25', '<25' or '20..30' (both ends in); again for more cutoffs",
 		one(cutoff.Parse), func(q *ask.Question, v []cutoff.Cutoff) { q.Cutoffs = v })
 
 	f.group = "What is at stake"

@@ -26,7 +26,7 @@ it is close enough for what hangs on it. The scores never leave this machine.`,
 		SilenceUsage:  true,
 		RunE: func(cmd *cobra.Command, args []string) error {
 			if len(args) > 0 {
-				return misuse("tailgap", "there is no command %.40q; the commands are judge, demo, page and version", args[0])
+				return misuse("tailgap", "there is no command %.40q; the commands are judge, demo, page, version and completion", args[0])
 			}
 			return cmd.Help()
 		},
