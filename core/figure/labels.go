@@ -11,7 +11,7 @@ import (
 // labels names what is drawn where it is drawn. Each label looks for a place
 // where it touches nothing and is left out where there is none; only the two
 // directions are always told, over the axis if need be.
-func (d *sweepDrawing) labels(underFlags float64) {
+func (d *sweepDrawing) labels() {
 	p := d.room()
 	title, tooHigh, tooLow := "gap in points", "curve too high ↑", "curve too low ↓"
 	if d.options.small() {
@@ -29,7 +29,7 @@ func (d *sweepDrawing) labels(underFlags float64) {
 	} else {
 		title = "gap in points: ↑ too high, ↓ too low"
 	}
-	d.text("halo soft", "start", 4, underFlags+d.size+2, title)
+	d.text("soft", "start", 4, d.size+2, title)
 	d.bandLabel(p)
 	d.toleranceLabel(p)
 	d.trustedLabel(p, false, "trusted")

@@ -46,6 +46,8 @@ var recipes = map[string]recipe{
 		cutoffs: []string{">=60", "40..59"}, tooHigh: "5pt", tooLow: "5pt"},
 	"crowd": {name: "a", scores: whole(900, 13, 50, 10, 0, 83), step: 1, low: 0, high: 83,
 		cutoffs: []string{"<=41", "<42", "<=43", ">=44", ">45", "46..50", ">=200", ">=82"}, tooHigh: "30heads", tooLow: "60heads", heads: 1000, halfStep: true},
+	"outside": {name: "reading", scores: whole(200, 23, 50, 5, 0, 100), step: 1,
+		cutoffs: []string{"<=33", "<38", ">=66"}, tooHigh: "1pt"}, // left and right of the scores, in the frame
 	"everyone": {name: "everyone's score", scores: whole(300, 17, 20, 4, 0, 40), step: 1, low: 0, high: 40,
 		cutoffs: []string{"20..30"}, everyone: true},
 	"fine": {name: "fine steps", scores: draw(3000, 19, func(r *rand.Rand) float64 { return math.Round(500 + 100*r.NormFloat64()) }),

@@ -3,6 +3,7 @@ package figure_test
 import (
 	"encoding/xml"
 	"io"
+	"slices"
 	"strconv"
 	"strings"
 	"testing"
@@ -23,6 +24,7 @@ type line struct {
 type drawn struct {
 	width, height float64
 	lines         []line
+	grips         []line // boxes of the cutoffs' poles and flags
 	ids           []string
 	references    []string // url(#...) and aria-labelledby
 	title, desc   string
@@ -82,6 +84,10 @@ func read(t require.TestingT, svg string) drawn {
 					if strings.Contains(attributes["class"], "small") {
 						size = 12
 					}
+				}
+			case "line", "rect":
+				if box, of := gripBox(t, e.Name.Local, attributes); of {
+					d.grips = append(d.grips, line{left: x + box.left, top: y + box.top, right: x + box.right, bottom: y + box.bottom})
 				}
 			case "text":
 				at := size
@@ -144,6 +150,19 @@ func read(t require.TestingT, svg string) drawn {
 	return d
 }
 
+// gripBox is the box of a line or rectangle that is a cutoff's pole or flag.
+func gripBox(t require.TestingT, element string, attributes map[string]string) (box line, of bool) {
+	of = slices.ContainsFunc(strings.Fields(attributes["class"]), func(class string) bool { return class == "pole" || class == "flag" || class == "paper" })
+	at := func(name string) float64 { return number(t, attributes[name]) }
+	switch {
+	case !of || attributes["y"] == "0": // the paper of a whole figure
+		return box, false
+	case element == "line":
+		return line{left: at("x1"), top: at("y1"), right: at("x2"), bottom: at("y2")}, true
+	}
+	return line{left: at("x"), top: at("y"), right: at("x") + at("width"), bottom: at("y") + at("height")}, true
+}
+
 func number(t require.TestingT, text string) float64 {
 	if text == "" {
 		return 0
@@ -153,15 +172,26 @@ func number(t require.TestingT, text string) float64 {
 	return value
 }
 
-// legible fails where two lines of text overlap or one leaves the figure.
+func (l line) overlaps(other line) bool {
+	return l.left < other.right && other.left < l.right && l.top < other.bottom && other.top < l.bottom
+}
+
+// legible fails where two lines of text overlap, where one leaves the figure
+// or where a cutoff's pole or flag crosses the title of a sweep's axis.
 func (d drawn) legible(t require.TestingT) {
 	assert.NotEmpty(t, d.lines)
 	for i, a := range d.lines {
 		assert.True(t, a.left >= 0 && a.right <= d.width+0.5 && a.top >= 0 && a.bottom <= d.height,
 			"%q leaves the figure: %.1f to %.1f of %.1f, %.1f to %.1f of %.1f", a.text, a.left, a.right, d.width, a.top, a.bottom, d.height)
 		for _, b := range d.lines[:i] {
-			assert.False(t, a.left < b.right && b.left < a.right && a.top < b.bottom && b.top < a.bottom,
-				"%q and %q overlap", a.text, b.text)
+			assert.False(t, a.overlaps(b), "%q and %q overlap", a.text, b.text)
+		}
+		if !strings.HasPrefix(a.text, "gap in points") {
+			continue
+		}
+		for _, b := range d.grips {
+			b.left, b.right = b.left-1, b.right+1 // a pole has no width but its stroke's
+			assert.False(t, a.overlaps(b), "a cutoff at %.0f px crosses %q", b.left+1, a.text)
 		}
 	}
 }
@@ -184,6 +214,7 @@ func (m recipe) all(o figure.Options) []string {
 func TestEveryFigureIsWellFormedAndLegible(t *testing.T) {
 	for name, m := range recipes {
 		t.Run(name, func(t *testing.T) {
+			assert.NotEmpty(t, read(t, m.all(figure.Options{Width: 700, Selected: 0})[1]).grips)
 			for _, width := range []int{0, 320, 360, 480, 700, 1100, 1600} {
 				for _, svg := range m.all(figure.Options{Width: width, Selected: 0}) {
 					read(t, svg).legible(t)

@@ -19,8 +19,8 @@ func drawSweep(q ask.Question, r ask.Result, s ask.Sweep, o Options) drawing {
 	s = whole(s)
 	p := newPlot(r, o)
 	laid, rows := flags(r, s.Side, p.frame, p.size)
-	underFlags := 4 + float64(rows)*flagRow
-	p.layOut(underFlags+p.size+14, 300, 220, 140)
+	underFlags := 4 + p.size + 6 + float64(rows)*flagRow // the axis' title stands over the flags, where no pole is
+	p.layOut(underFlags+10, 300, 220, 140)
 	limits := newCorridor(q, s)
 	p.low, p.high = heights(r, s, limits)
 
@@ -39,7 +39,7 @@ func drawSweep(q ask.Question, r ask.Result, s ask.Sweep, o Options) drawing {
 		p.flag(l, underFlags)
 	}
 	p.scoreAxis(r.Sample.Step, axisTitle(r, s.Side), d.poles())
-	d.labels(underFlags)
+	d.labels()
 	return drawing{width: o.width(), height: p.height, body: p.String(),
 		title: "How far the curve is from the count: " + axisTitle(r, s.Side), description: d.description()}
 }
