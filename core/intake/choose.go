@@ -53,6 +53,20 @@ func Columns(source Source, header sample.Header) ([]Column, error) {
 	return list, nil
 }
 
+// Find is the column of the list that a question means by a name or a number,
+// as Read finds it; false where there is none, or more than one.
+func Find(list []Column, asked string) (Column, bool) {
+	all := columns{names: make([]string, len(list)), width: len(list)}
+	for i, c := range list {
+		all.names[i] = c.Name
+	}
+	f, err := all.find(asked)
+	if err != nil {
+		return Column{}, false
+	}
+	return list[f.index], true
+}
+
 // ask is how find finds this column.
 func (c columns) ask(index int) string {
 	number := strconv.Itoa(index + 1)

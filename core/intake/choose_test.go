@@ -62,6 +62,21 @@ func TestColumnsSayHowToAsk(t *testing.T) {
 	}
 }
 
+func TestFind(t *testing.T) {
+	list := []intake.Column{{Name: "Errors made", Number: 1, Ask: "Errors made"}, {Name: "a", Number: 2, Ask: "2"}, {Name: "a", Number: 3, Ask: "3"}, {Name: "1", Number: 4, Ask: "1"}, {Name: "column 5", Number: 5, Ask: "column 5"}}
+	for asked, number := range map[string]int{"Errors made": 1, "errors  MADE": 1, "2": 2, "column 3": 3, "1": 4, "5": 5} {
+		c, ok := intake.Find(list, asked)
+		assert.True(t, ok, asked)
+		assert.Equal(t, number, c.Number, asked)
+	}
+	for _, asked := range []string{"", "a", "b", "0", "6", "column 6"} {
+		_, ok := intake.Find(list, asked)
+		assert.False(t, ok, asked)
+	}
+	_, ok := intake.Find(nil, "a")
+	assert.False(t, ok)
+}
+
 func TestColumnsRefuses(t *testing.T) {
 	for text, want := range map[string]string{
 		"":                      "no usable score: the input is empty",
