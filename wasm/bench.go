@@ -58,7 +58,7 @@ func (b *bench) answer(r request, post func(reply)) (ask.Answer, error) {
 	question.Workers = 1 // a browser gives a worker one thread
 	options := intake.Options{Scores: question.Scores, Missing: question.Missing, Header: question.Header}
 	if err := b.readAs(options); err != nil {
-		return ask.Answer{}, err
+		return ask.Answer{}, unread{err}
 	}
 	return ask.Judge(context.Background(), question, b.sample, tellProgress(r.ID, post, time.Now))
 }

@@ -101,6 +101,7 @@ func TestBenchFailsInSentences(t *testing.T) {
 			r := b.serve(test.r, silent)
 			assert.Contains(t, r.Error, test.want)
 			assert.Nil(t, r.Data)
+			assert.Equal(t, test.name == "no such column", r.Unread, "the question can't be asked of the data")
 		})
 	}
 }

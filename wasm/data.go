@@ -38,7 +38,7 @@ func (s *sheet) dataEditor() app.UI {
 					OnClick(s.act("use-demo", func(app.Context, app.Event) { d.openDemo() }))
 			}),
 		),
-		when(len(d.data.columns) > 1, s.columnChoice),
+		when(len(d.data.columns) > 1 || d.trouble[atRead] != "", s.columnChoice),
 		when(d.data.demo, func() app.UI {
 			return app.Span().Class("aside").Text("These scores are made up: a reading programme that takes in learners at three sites.")
 		}),
@@ -70,7 +70,7 @@ func (s *sheet) columnBox(c intake.Column) app.UI {
 		kind = "words"
 	}
 	return app.Label().Class("column", kind).Title(kind).Body(
-		app.Input().Type("checkbox").ID(id).Checked(slices.Contains(s.desk.question.Scores, key)).
+		app.Input().Type("checkbox").ID(id).Checked(s.scoreIn(c) != "").
 			OnChange(s.act(id+" "+key, func(ctx app.Context, _ app.Event) { s.columnTicked(key, ctx.JSSrc().Get("checked").Bool()) })),
 		app.Span().Text(words.Name(c.Name)),
 	)
@@ -82,8 +82,11 @@ func (s *sheet) columnTicked(key string, in bool) {
 	q := s.desk.question
 	var scores []string
 	for _, c := range s.desk.data.columns {
-		if (c.Ask == key && in) || (c.Ask != key && slices.Contains(q.Scores, c.Ask)) {
-			scores = append(scores, c.Ask)
+		switch score := s.scoreIn(c); {
+		case c.Ask == key && in:
+			scores = append(scores, key)
+		case c.Ask != key && score != "":
+			scores = append(scores, score)
 		}
 	}
 	q.Scores = scores
@@ -91,12 +94,20 @@ func (s *sheet) columnTicked(key string, in bool) {
 	s.change(atData, q, nil)
 }
 
-// columnName is the name that the file has for a column of the question.
-func (s *sheet) columnName(key string) string {
-	for _, c := range s.desk.data.columns {
-		if c.Ask == key && c.Name != "" {
-			return c.Name
+// scoreIn is how the question asks for a column; "" where it doesn't.
+func (s *sheet) scoreIn(c intake.Column) string {
+	for _, score := range s.desk.question.Scores {
+		if found, ok := intake.Find(s.desk.data.columns, score); ok && found.Number == c.Number {
+			return score
 		}
 	}
-	return key
+	return ""
+}
+
+// columnName is the name that the file has for a column of the question.
+func (s *sheet) columnName(score string) string {
+	if c, ok := intake.Find(s.desk.data.columns, score); ok && c.Name != "" {
+		return c.Name
+	}
+	return score
 }

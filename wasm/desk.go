@@ -1,6 +1,7 @@
 package main
 
 import (
+	"reflect"
 	"time"
 
 	"tailgap/core/ask"
@@ -20,6 +21,7 @@ const (
 	atLow   place = "too-low"
 	atHeads place = "heads"
 	atAdd   place = "add"
+	atRead  place = "reading" // of the data, as the question wants them read
 	atWork  place = "work"
 	atAway  place = "take-away"
 )
@@ -35,6 +37,9 @@ type data struct {
 	file    *file           // nil for the demo
 	columns []intake.Column // nil until the worker has said
 }
+
+// is true for the same data: two files of one name are not.
+func (a data) is(b data) bool { return a.demo == b.demo && a.file == b.file }
 
 // job is what the worker is doing.
 type job struct {
@@ -53,12 +58,13 @@ type desk struct {
 	after func(wait time.Duration, do func()) // likewise, later
 
 	question ask.Question
+	opened   bool // the question came from a file of its own
 	data     data
 	version  int // counts the changes of question and data
 
 	answer     *ask.Answer
-	answeredAs int    // the version that the answer answers
-	answerData string // the name of the data it is about
+	answeredAs int  // the version that the answer answers
+	answerData data // what it is about
 
 	trouble map[place]string
 	running *job
@@ -84,11 +90,32 @@ func (d *desk) old() bool { return d.answer != nil && d.answeredAs != d.version 
 // ready is true when there is something to ask.
 func (d *desk) ready() bool { return len(d.question.Scores) > 0 }
 
+// untouched is true while the demo's question, which nobody asked, is asked.
+func (d *desk) untouched() bool {
+	return d.data.demo && !d.opened && reflect.DeepEqual(d.question, demo.Question())
+}
+
 // change puts another question on the desk and asks it.
 func (d *desk) change(question ask.Question) {
+	again := question.Header != d.question.Header // then the columns have other names
 	d.question = question
 	d.version++
+	if again {
+		d.reread()
+		return
+	}
 	d.ask()
+}
+
+// openQuestion puts a question from a file on the desk. What was wrong with
+// the one before, or with a file that didn't come to be used, is over.
+func (d *desk) openQuestion(question ask.Question) {
+	clear(d.trouble)
+	d.opened = true
+	if question.Header == d.question.Header {
+		question = asked(question, d.data.columns)
+	}
+	d.change(question)
 }
 
 // ask asks the question as it stands, once the worker is free. A question
@@ -96,8 +123,16 @@ func (d *desk) change(question ask.Question) {
 func (d *desk) ask() {
 	d.stopped = false
 	delete(d.trouble, atWork)
+	delete(d.trouble, atRead)
+	if d.running != nil && d.running.kind == askColumns {
+		d.waiting = true // what it opens would be lost
+		return
+	}
 	if !d.ready() {
 		d.drop()
+		if d.data.columns == nil {
+			d.reread() // to have columns to choose from
+		}
 		return
 	}
 	if err := d.question.Check(); err != nil {
@@ -187,7 +222,7 @@ func (d *desk) heard(r reply) {
 	done := *d.running
 	d.running = nil
 	if done.kind == askColumns {
-		d.opened(done, r)
+		d.looked(done, r)
 	} else {
 		d.answered(done, r)
 	}
@@ -199,13 +234,15 @@ func (d *desk) heard(r reply) {
 
 func (d *desk) answered(done job, r reply) {
 	answer, err := r.answer()
-	if err != nil {
-		if done.version == d.version {
-			d.trouble[atWork] = sentence(err)
-		}
-		return
+	switch {
+	case err == nil:
+		d.answer, d.answeredAs, d.answerData = answer, done.version, d.data
+	case done.version != d.version:
+	case r.Unread:
+		d.trouble[atRead] = sentence(err)
+	default:
+		d.trouble[atWork] = sentence(err)
 	}
-	d.answer, d.answeredAs, d.answerData = answer, done.version, d.data.name
 	if d.data.columns == nil {
 		d.send(job{kind: askColumns, opens: &data{name: d.data.name, demo: d.data.demo, file: d.data.file}})
 	}
@@ -221,45 +258,58 @@ func (d *desk) open(f *file) {
 func (d *desk) openDemo() {
 	d.drop()
 	d.data = data{name: demo.Name, demo: true}
+	d.opened = false
 	delete(d.trouble, atData)
 	d.change(demo.Question())
 }
 
-// reread looks again at the file on the desk, whose header is now read in
-// another way.
+// reread looks at the data again, or at those that are about to be opened,
+// and then asks: their header is now read in another way.
 func (d *desk) reread() {
 	again := d.data
+	if d.running != nil && d.running.opens != nil {
+		again = *d.running.opens
+	}
 	d.look(&again)
+	d.waiting = true
 }
 
 func (d *desk) look(at *data) {
-	unanswered := d.running != nil && d.running.kind == askAnswer
+	unanswered := d.waiting || (d.running != nil && d.running.kind == askAnswer)
 	d.drop()
 	delete(d.trouble, atData)
 	d.waiting = unanswered
 	d.send(job{kind: askColumns, opens: at})
 }
 
-func (d *desk) opened(done job, r reply) {
+// looked puts on the desk what was looked into. The question stays, whichever
+// of the two came first; only the demo's own goes with the demo.
+func (d *desk) looked(done job, r reply) {
 	columns, err := r.columns()
 	if err != nil {
 		d.trouble[atData] = sentence(err)
+		d.waiting = d.waiting && d.ready()
 		return
 	}
-	looked := *done.opens
-	looked.columns = columns
-	same := looked.file == d.data.file && looked.demo == d.data.demo
-	d.data = looked
-	if same {
+	question, same := d.question, done.opens.is(d.data)
+	if !same && d.untouched() {
+		question = ask.NewQuestion()
+	}
+	d.data = *done.opens
+	d.data.columns = columns
+	if question = asked(question, columns); same && len(question.Scores) == len(d.question.Scores) {
 		return
 	}
 	d.waiting = false
-	d.change(asked(ask.NewQuestion(), columns))
+	d.change(question)
 }
 
-// asked is the question with the score columns that go without saying: the
-// only column, or the only one with numbers in it.
+// asked is the question with the score columns that go without saying, if it
+// names none: the only column, or the only one with numbers in it.
 func asked(q ask.Question, columns []intake.Column) ask.Question {
+	if len(q.Scores) > 0 {
+		return q
+	}
 	var numeric []intake.Column
 	for _, c := range columns {
 		if c.Numeric {

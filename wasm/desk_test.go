@@ -12,6 +12,7 @@ import (
 	"tailgap/core/cutoff"
 	"tailgap/core/demo"
 	"tailgap/core/intake"
+	"tailgap/core/sample"
 )
 
 // posted is one message to a worker.
@@ -231,6 +232,143 @@ func TestDeskOpensAFile(t *testing.T) {
 			d.ask()
 			assert.Same(t, f, d.thread().last().with, "a new worker hasn't")
 		})
+	}
+}
+
+// planned is a question that was settled before the data were there.
+func planned(scores ...string) ask.Question {
+	q := asking("<=10", ">=50")
+	q.Scores, q.Missing, q.Seed = scores, []string{"-9"}, 77
+	return q
+}
+
+var twoScores = []intake.Column{{Name: "id", Number: 1, Numeric: true, Ask: "id"}, {Name: "Errors", Number: 2, Numeric: true, Ask: "Errors"}}
+
+// A preregistered question is asked of the file as it stands, whichever of
+// the two is opened first, and however quickly.
+func TestDeskKeepsTheQuestionWhicheverComesFirst(t *testing.T) {
+	numbered := planned("errors")
+	numbered.Header = sample.HeaderYes
+	tests := []struct {
+		name     string
+		question ask.Question
+		columns  []intake.Column
+		want     []string
+	}{
+		{"a column by its name", planned("errors"), twoScores, []string{"errors"}},
+		{"a column by its number", planned("2"), twoScores, []string{"2"}},
+		{"a column that isn't there", planned("minutes"), twoScores, []string{"minutes"}},
+		{"none named, one there", planned(), twoScores[1:], []string{"Errors"}},
+		{"none named, two there", planned(), twoScores, nil},
+		{"the demo's own question from a file", demo.Question(), twoScores, []string{"vocabulary"}},
+		{"the header read in another way", numbered, twoScores, []string{"errors"}},
+	}
+	f := &file{name: "scores.csv"}
+	// columns answers whatever still wants to know them: of the demo, those
+	// of the demo.
+	columns := func(d *tried, list []intake.Column) {
+		for d.running != nil && d.running.kind == askColumns {
+			if d.running.opens.demo {
+				d.thread().says([]intake.Column{{Name: "vocabulary", Number: 1, Numeric: true, Ask: "vocabulary"}, {Name: "weight", Number: 2, Numeric: true, Ask: "weight"}}, "")
+			} else {
+				d.thread().says(list, "")
+			}
+		}
+	}
+	orders := map[string]func(d *tried, q ask.Question, list []intake.Column){
+		"question, file": func(d *tried, q ask.Question, list []intake.Column) {
+			d.openQuestion(q)
+			columns(d, list)
+			d.open(f)
+			columns(d, list)
+		},
+		"file, question": func(d *tried, q ask.Question, list []intake.Column) {
+			d.open(f)
+			columns(d, list)
+			d.openQuestion(q)
+			columns(d, list)
+		},
+		"a question while the file is looked into": func(d *tried, q ask.Question, list []intake.Column) {
+			d.open(f)
+			d.openQuestion(q)
+			d.wait()
+			columns(d, list)
+		},
+	}
+	for _, test := range tests {
+		for order, open := range orders {
+			for _, answered := range []bool{true, false} {
+				t.Run(test.name+": "+order, func(t *testing.T) {
+					d := newTried()
+					if d.ask(); answered {
+						d.thread().says(ask.Answer{Question: d.question}, "")
+						columns(d, nil)
+					}
+					open(d, test.question, test.columns)
+					want := test.question
+					want.Scores = test.want
+					if test.want == nil {
+						assert.Empty(t, d.question.Scores)
+						assert.Nil(t, d.running, "a column has to be chosen first")
+						want.Scores = d.question.Scores
+					}
+					assert.Equal(t, want, d.question)
+					assert.Same(t, f, d.data.file)
+					assert.Equal(t, test.columns, d.data.columns)
+					if test.want != nil {
+						require.NotNil(t, d.running)
+						for d.running.version != d.version { // the answer to the question before may still come
+							d.thread().says(ask.Answer{}, "")
+						}
+						sent := d.thread().last()
+						assert.Equal(t, askAnswer, sent.Kind)
+						assert.Equal(t, want, *sent.Question)
+						assert.False(t, sent.Demo)
+					}
+				})
+			}
+		}
+	}
+}
+
+func TestDeskKeepsATouchedQuestionForAFile(t *testing.T) {
+	d := newTried()
+	d.answered()
+	q := d.question
+	q.Seed = 5
+	d.change(q)
+	d.thread().says(ask.Answer{Question: q}, "")
+	d.open(&file{name: "scores.csv"})
+	d.thread().says(twoScores, "")
+	assert.Equal(t, q, d.question)
+	d.thread().receive(reply{ID: d.running.id, Kind: askAnswer, Error: `there is no column "vocabulary"; the columns are: id, Errors`, Unread: true})
+	s := &sheet{desk: d.desk}
+	assert.Equal(t, `There is no column "vocabulary"; the columns are: id, Errors.`, s.wrong(atData), "it is said where the column can be chosen")
+	assert.Equal(t, "failed", s.state())
+	q.Scores = []string{"Errors"}
+	d.change(q)
+	assert.Empty(t, s.wrong(atData))
+
+	d.openDemo()
+	d.open(&file{name: "scores.csv"})
+	d.thread().says(twoScores, "")
+	assert.Equal(t, ask.NewQuestion().Cutoffs, d.question.Cutoffs, "the demo's own question goes with the demo")
+}
+
+func TestDeskForgetsABadFileWhenSomethingElseIsOpened(t *testing.T) {
+	other := map[string]func(d *tried){
+		"a question": func(d *tried) { d.openQuestion(planned("vocabulary")) },
+		"a file":     func(d *tried) { d.open(&file{name: "scores.csv"}) },
+		"the demo":   func(d *tried) { d.openDemo() },
+	}
+	for name, open := range other {
+		d := newTried()
+		d.answered()
+		d.open(&file{name: "notes.pdf"})
+		d.thread().says(nil, "this isn't text")
+		require.NotEmpty(t, d.trouble[atData])
+		open(d)
+		assert.Empty(t, d.trouble[atData], name)
 	}
 }
 

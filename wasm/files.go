@@ -73,15 +73,16 @@ func (s *sheet) takeQuestion(blob app.Value) {
 	go func() {
 		text, err := bytesOf(blob)
 		s.desk.soon(func() {
+			var q ask.Question
 			if err == nil {
-				var q ask.Question
-				if q, err = ask.ReadQuestion(text); err == nil {
-					s.change(atAway, q, nil)
-				}
+				q, err = ask.ReadQuestion(text)
 			}
 			if err != nil {
 				s.desk.trouble[atAway] = sentence(err)
+				return
 			}
+			s.forget() // it was an editor of the question before
+			s.desk.openQuestion(q)
 		})
 	}()
 }

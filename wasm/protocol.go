@@ -40,6 +40,8 @@ type reply struct {
 	Kind  string          `json:"kind"`
 	Data  json.RawMessage `json:"data,omitempty"`
 	Error string          `json:"error,omitempty"`
+	// Unread is true when the error is about the data or the columns asked for.
+	Unread bool `json:"unread,omitempty"`
 }
 
 // progress is the data of sayProgress.
@@ -47,6 +49,9 @@ type progress struct {
 	Done  int `json:"done"`
 	Total int `json:"total"`
 }
+
+// unread is what keeps data from being read as a question wants them.
+type unread struct{ error }
 
 // guarded runs work and encodes what comes of it. A panic becomes an error
 // like any other, so that the page always hears something.
@@ -63,6 +68,7 @@ func guarded(id int, kind string, work func() (any, error)) (r reply) {
 	}
 	if err != nil {
 		r.Data, r.Error = nil, err.Error()
+		_, r.Unread = err.(unread)
 	}
 	return r
 }

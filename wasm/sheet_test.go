@@ -30,7 +30,7 @@ func sheetWith(t *testing.T, text string, change func(q *ask.Question)) *sheet {
 	require.NoError(t, err)
 	s := &sheet{}
 	s.OnInit()
-	s.desk.question, s.desk.answer, s.desk.answerData = q, a, s.desk.data.name
+	s.desk.question, s.desk.answer, s.desk.answerData = q, a, s.desk.data
 	s.arrived()
 	return s
 }
@@ -107,8 +107,12 @@ func TestSheetSaysThatAnAnswerIsOld(t *testing.T) {
 	assert.NotContains(t, app.HTMLString(s.Render()), "earlier question")
 	s.desk.version++
 	assert.Contains(t, app.HTMLString(s.Render()), "earlier question")
-	s.desk.data.name = "other.csv"
-	assert.Contains(t, app.HTMLString(s.Render()), "about demo.csv, not about the data above")
+	s.desk.data = data{name: "other.csv", file: &file{}}
+	assert.Contains(t, s.desk.oldness(), "about demo.csv, not about the data above")
+	s.desk.answerData = data{name: "other.csv", file: &file{}}
+	assert.Contains(t, s.desk.oldness(), "about the data before", "another file of the same name")
+	s.desk.answerData = s.desk.data
+	assert.Contains(t, s.desk.oldness(), "earlier question")
 }
 
 func TestNumber(t *testing.T) {

@@ -48,14 +48,24 @@ func (s *sheet) slot(at place, text, mark string, editor func() app.UI) app.UI {
 				})).
 				Body(
 					editor(),
-					trouble(s.desk.trouble[at]),
+					trouble(s.wrong(at)),
 					app.Button().Type("button").Class("done").Text("Done").
 						OnClick(s.act("done-"+id, func(app.Context, app.Event) { s.close() })),
 				)
 		}),
 		// What is wrong with a part is said beside it, also when it is closed.
-		when(!open, func() app.UI { return trouble(s.desk.trouble[at]) }),
+		when(!open, func() app.UI { return trouble(s.wrong(at)) }),
 	)
+}
+
+// wrong says what is wrong with a part of the question. With the data it may
+// be they themselves, or that the question can't be asked of them.
+func (s *sheet) wrong(at place) string {
+	text := s.desk.trouble[at]
+	if at == atData && text == "" {
+		text = s.desk.trouble[atRead]
+	}
+	return text
 }
 
 // toggle opens a slot's editor, or closes it.
@@ -103,10 +113,6 @@ func (s *sheet) change(at place, q ask.Question, err error) bool {
 		return false
 	}
 	delete(s.desk.trouble, at)
-	again := q.Header != s.desk.question.Header // then the columns have other names
 	s.desk.change(q)
-	if again {
-		s.desk.reread()
-	}
 	return true
 }

@@ -24,7 +24,7 @@ func (s *sheet) state() string {
 		return "working"
 	case s.desk.stopped:
 		return "stopped"
-	case s.desk.trouble[atWork] != "":
+	case s.desk.trouble[atWork] != "" || s.desk.trouble[atRead] != "":
 		return "failed"
 	}
 	return "done"
@@ -52,8 +52,12 @@ func (s *sheet) again() app.UI {
 
 // oldness says what it is that is shown in place of an answer.
 func (d *desk) oldness() string {
-	if d.answerData != d.data.name {
-		return "What stands below is about " + d.answerData + ", not about the data above."
+	switch {
+	case d.answerData.is(d.data):
+	case d.answerData.name == d.data.name:
+		return "What stands below is about the data before, not about the data above."
+	default:
+		return "What stands below is about " + d.answerData.name + ", not about the data above."
 	}
 	return "What stands below answers an earlier question, not the one above."
 }

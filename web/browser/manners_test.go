@@ -13,6 +13,7 @@ import (
 	"github.com/stretchr/testify/require"
 
 	"tailgap/core/ask"
+	"tailgap/core/cutoff"
 	"tailgap/core/demo"
 	"tailgap/core/report"
 )
@@ -105,6 +106,28 @@ func TestPageWorksByKeyboard(t *testing.T) {
 	p.shownNow()
 	assert.Equal(t, "slot-cutoff-0", focused(), "and back to where it was opened")
 	assert.Zero(t, get[int](p, `document.querySelectorAll(".editor").length`))
+}
+
+func TestPageAsksAQuestionFileOfTheScoresThatFollow(t *testing.T) {
+	p := openPage(t, 1280)
+	q := ask.NewQuestion()
+	q.Scores, q.Missing, q.Seed, q.Replicates = []string{"errors"}, []string{"-9"}, 5, 1500
+	for _, text := range []string{">=12", "3..5"} {
+		c, err := cutoff.Parse(text)
+		require.NoError(t, err)
+		q.Cutoffs = append(q.Cutoffs, c)
+	}
+	text, err := ask.WriteQuestion(q)
+	require.NoError(t, err)
+	plan, path := fileWith(t, "plan.json", string(text)), fileWith(t, "intakes.csv", intakes())
+	p.do(chromedp.Click("#take-away summary", chromedp.ByQuery), chromedp.SetUploadFiles("#open-question", []string{plan}, chromedp.ByQuery))
+	p.until(`document.querySelector("#slot-data ~ .trouble")`)
+	assert.Contains(t, get[string](p, `document.querySelector("#slot-data ~ .trouble").innerText`), `There is no column "errors"; the columns are: `)
+	p.load(path)
+	p.until(`document.getElementById("slot-data").innerText.includes("errors scores in intakes.csv")`)
+	p.settled()
+	assert.True(t, get[bool](p, `document.getElementById("column-2").checked`))
+	p.shows(judge(t, path, "--question", plan))
 }
 
 func TestPageGivesAndTakesQuestions(t *testing.T) {

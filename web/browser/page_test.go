@@ -124,8 +124,8 @@ func TestPageSaysWhatIsWrongWithAFile(t *testing.T) {
 	assert.Zero(t, get[int](p, `document.querySelectorAll("#findings.old").length`), "the demo is still there, and still answered")
 
 	p.load(fileWith(t, "words.csv", "name\nAda\nBen\n"))
-	p.until(`document.querySelector("#work .trouble")`)
-	assert.Regexp(t, `usable score`, get[string](p, `document.querySelector("#work .trouble").textContent`))
+	p.until(`document.querySelector("#work").dataset.state === "failed"`)
+	assert.Regexp(t, `usable score`, get[string](p, `document.querySelector("#editor-data .trouble").textContent`))
 	assert.Contains(t, get[string](p, `document.getElementById("old").innerText`), "demo.csv")
 }
 
