@@ -118,10 +118,24 @@ func TestTheBandDoesNotPressTheGapFlat(t *testing.T) {
 		if points, found := strings.CutPrefix(l.text, "+"); found {
 			highest = math.Max(highest, number(t, points))
 		}
-		labelled = labelled || l.text == "95% band, −90 to +90"
+		labelled = labelled || l.text == "95% band, -90 to +90"
 	}
 	assert.Less(t, highest, 5*worst)
 	assert.True(t, labelled, "a band that leaves the picture says how far it goes")
+}
+
+// A number below zero looks the same on an axis, on a flag, in the sentences
+// and in a table.
+func TestNumbersBelowZeroLookTheSameEverywhere(t *testing.T) {
+	m := recipe{name: "x", scores: whole(200, 29, -20, 5, -50, 0), step: 1, cutoffs: []string{"<=-25", "-22..-18"}, tooLow: "1pt"}
+	var axis, flag bool
+	for _, svg := range m.all(figure.Options{Width: 900, Selected: 0}) {
+		assert.NotContains(t, svg, "−")
+		for _, l := range read(t, svg).lines {
+			axis, flag = axis || l.text == "-20", flag || strings.HasPrefix(l.text, "-25 or below")
+		}
+	}
+	assert.True(t, axis && flag)
 }
 
 func TestCountedSaysItsFinding(t *testing.T) {
@@ -148,7 +162,7 @@ func TestFiguresOfOneResultShareTheirScale(t *testing.T) {
 		ticks := func(svg string) []line {
 			var ticks []line
 			for _, l := range read(t, svg).lines {
-				if l.text != "" && strings.Trim(l.text, "0123456789−.") == "" && l.left > figure.SweepFrame(r, o).Left-30 {
+				if l.text != "" && strings.Trim(l.text, "0123456789-.") == "" && l.left > figure.SweepFrame(r, o).Left-30 {
 					ticks = append(ticks, line{text: l.text, left: math.Round(l.left)})
 				}
 			}

@@ -71,7 +71,6 @@ func newFlag(index int, finding ask.Finding, side cutoff.Side, f Frame, size flo
 	} else {
 		l.name = strings.NewReplacer(">=", "≥ ", "<=", "≤ ", ">", "> ", "<", "< ", "..", "–").Replace(c.String())
 	}
-	l.name = strings.ReplaceAll(l.name, "-", "−")
 	pole, out := f.pin(c.At)
 	if c.Side == cutoff.Stretch && out < 0 {
 		if pole, out = f.pin(c.To); out > 0 { // the whole frame lies inside the stretch

@@ -2,7 +2,6 @@ package figure
 
 import (
 	"math"
-	"strings"
 
 	"tailgap/core/words"
 )
@@ -61,7 +60,7 @@ func scoreTicks(f Frame, step *float64, size, width float64) ([]float64, []strin
 		labels := make([]string, len(values))
 		fits, reached := true, math.Inf(-1)
 		for i, value := range values {
-			label := strings.ReplaceAll(words.Number(value), "-", "−")
+			label := words.Number(value)
 			half := textWidth(label, size) / 2
 			left, right := f.X(value)-half, f.X(value)+half
 			if left < 2 || right > width-2 {
@@ -78,13 +77,10 @@ func scoreTicks(f Frame, step *float64, size, width float64) ([]float64, []strin
 	return nil, nil
 }
 
-// signed prints points with their sign: "+4", "0", "−0.5".
+// signed prints points with their sign, as a table does: "+4", "0", "-0.5".
 func signed(points float64) string {
-	switch number := strings.TrimLeft(words.Number(math.Abs(points)), "-−"); {
-	case points > 0:
-		return "+" + number
-	case points < 0:
-		return "−" + number
+	if points > 0 {
+		return "+" + words.Number(points)
 	}
-	return "0"
+	return words.Number(points)
 }
