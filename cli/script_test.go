@@ -19,7 +19,7 @@ var update = flag.Bool("update", false, "write what comes out into the golden fi
 
 const scripts = "../testdata/cli"
 
-// TestScripts replays the transcripts in testdata/cli. A transcript is a
+// TestScripts replays the scripts in testdata/cli. A script is a
 // txtar archive: its files are laid out in a folder of their own, and what
 // stands before them is what a terminal shows. Lines that begin with $ are
 // run; under each stands what must come out: stdout as it is, stderr behind
@@ -55,11 +55,11 @@ func TestScripts(t *testing.T) {
 	}
 }
 
-// replay runs the commands of a transcript and returns it with what came out.
-func replay(t *testing.T, transcript string) string {
+// replay runs the commands of a script and returns it with what came out.
+func replay(t *testing.T, script string) string {
 	t.Helper()
 	var out strings.Builder
-	for line := range strings.Lines(transcript) {
+	for line := range strings.lines(script) {
 		command, isCommand := strings.CutPrefix(line, "$ ")
 		switch {
 		case isCommand:

@@ -28,7 +28,7 @@ var reasons = [...]string{
 	blank:          "blank",
 	unreadable:     "unreadable",
 	ambiguous:      "comma that could be decimal or thousands",
-	tooShort:       "in too short a row",
+	tooShort:       "past the end of their row",
 	misplacedQuote: "misplaced quote",
 }
 

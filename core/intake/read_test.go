@@ -96,7 +96,7 @@ func TestRead(t *testing.T) {
 		{name: "a blank can be named as a code", text: "score\nNA\n.\n12\n", missing: []string{"NA", ""}, scores: []float64{12}, dropped: []sample.Dropped{left("coded NA", 1, "line 2"), left("blank", 1, "line 3")}},
 		{name: "blanks", text: "id,score\n1,\n2, \n3,NA\n4,n/a\n5,NaN\n6,NULL\n7,.\n8,\u00a0\n9,12\n", ask: "score", scores: []float64{12}, dropped: []sample.Dropped{left("blank", 8, "line 2")}},
 		{name: "unreadable", text: "id,score\n1,twelve\n2,12\n3,1.5.2\n4,0x1p4\n5,1_000\n6,12%\n7,1e\n8,--1\n9,-\n", ask: "score", scores: []float64{12}, dropped: []sample.Dropped{left("unreadable", 8, "line 2")}},
-		{name: "a row too short", text: "id,score,age\n1,12,40\n2\n3,15\n", ask: "age", label: "age", scores: []float64{40}, dropped: []sample.Dropped{left("in too short a row", 2, "line 3")}},
+		{name: "a row too short", text: "id,score,age\n1,12,40\n2\n3,15\n", ask: "age", label: "age", scores: []float64{40}, dropped: []sample.Dropped{left("past the end of their row", 2, "line 3")}},
 		{name: "a misplaced quote costs its row only", text: "id,note,score\n1,5\" tall,12\n2,\"a\" b,15\n3,c,18\n", ask: "score", scores: []float64{18}, dropped: []sample.Dropped{left("misplaced quote", 2, "line 2")}},
 		{name: "a quote left open in the last line", text: "id,score\n1,12\n2,\"15", ask: "score", scores: []float64{12}, dropped: []sample.Dropped{left("misplaced quote", 1, "line 3")}},
 
@@ -134,7 +134,7 @@ func TestReadSeveralColumns(t *testing.T) {
 	s, err := intake.Read(from("id;words;vocabulary\n1;60,5;30\n2;;99\n3;48\n"), intake.Options{Scores: []string{"vocabulary", "2"}, Missing: []string{"99"}})
 	require.NoError(t, err)
 	assert.Equal(t, []sample.Column{
-		{Name: "vocabulary", Rows: 3, Scores: []float64{30}, Dropped: []sample.Dropped{left("coded 99", 1, "line 3"), left("in too short a row", 1, "line 4")}},
+		{Name: "vocabulary", Rows: 3, Scores: []float64{30}, Dropped: []sample.Dropped{left("coded 99", 1, "line 3"), left("past the end of their row", 1, "line 4")}},
 		{Name: "words", Rows: 3, Scores: []float64{60.5, 48}, Dropped: []sample.Dropped{left("blank", 1, "line 3")}},
 	}, s.Columns)
 }
