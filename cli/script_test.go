@@ -59,7 +59,7 @@ func TestScripts(t *testing.T) {
 func replay(t *testing.T, script string) string {
 	t.Helper()
 	var out strings.Builder
-	for line := range strings.lines(script) {
+	for line := range strings.Lines(script) {
 		command, isCommand := strings.CutPrefix(line, "$ ")
 		switch {
 		case isCommand:
