@@ -23,6 +23,7 @@ func (s *sheet) findings() app.UI {
 	}
 	return app.Section().ID("findings").Class(class).Aria("label", "The answer").Body(
 		s.scoreTabs(),
+		warnings(r),
 		s.sweep(q, r),
 		s.cards(q, r),
 		s.counted(q, r),
@@ -70,7 +71,18 @@ func stretches(q ask.Question, r *ask.Result) app.UI {
 	})
 }
 
-// reading is what was read and with what it was compared, with the warnings.
+// warnings are what to know of the data before anything found in them.
+func warnings(r *ask.Result) app.UI {
+	return when(len(r.Warnings) > 0, func() app.UI {
+		return app.Ul().ID("warnings").Class("warnings").Aria("label", "Warnings").Body(
+			app.Range(r.Warnings).Slice(func(i int) app.UI {
+				return app.Li().Text(words.Line(words.Capital(r.Warnings[i])) + ".")
+			}),
+		)
+	})
+}
+
+// reading is what was read and with what it was compared.
 func reading(a *ask.Answer, r *ask.Result) app.UI {
 	said := []struct{ term, text string }{
 		{"Scores", words.Sample(*r)}, {"Shape", words.Moments(*r)}, {"Scale", words.Scale(*r)},
@@ -78,13 +90,6 @@ func reading(a *ask.Answer, r *ask.Result) app.UI {
 	}
 	return app.Section().ID("reading").Body(
 		app.H2().Text("What was read"),
-		when(len(r.Warnings) > 0, func() app.UI {
-			return app.Ul().Class("warnings").Aria("label", "Warnings").Body(
-				app.Range(r.Warnings).Slice(func(i int) app.UI {
-					return app.Li().Text(words.Line(words.Capital(r.Warnings[i])) + ".")
-				}),
-			)
-		}),
 		app.Dl().Body(
 			app.Range(said).Slice(func(i int) app.UI {
 				return app.Div().Body(

@@ -101,8 +101,10 @@ func (p *page) shows(c commanded) {
 	}
 	reading := get[string](p, `document.querySelector("#reading").textContent`)
 	p.says(reading, words.Capital(words.Sample(r)), words.Capital(words.Moments(r)), words.Capital(words.Scale(r)), words.Capital(words.Curve(r)), words.Method(c.Answer))
-	for _, warning := range r.Warnings {
-		p.says(reading, words.Line(words.Capital(warning)))
+	warnings := get[[]string](p, `Array.from(document.querySelectorAll("#findings:has(#warnings ~ #sweep) #warnings li"), w => w.textContent)`)
+	require.Len(p, warnings, len(r.Warnings), "they stand above what was found")
+	for i, warning := range r.Warnings {
+		assert.Equal(p, words.Line(words.Capital(warning))+".", warnings[i])
 	}
 	stretches := []string{words.Worst(r)}
 	for _, sweep := range r.Sweeps {
