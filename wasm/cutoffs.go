@@ -1,6 +1,7 @@
 package main
 
 import (
+	"fmt"
 	"slices"
 	"strconv"
 	"strings"
@@ -82,17 +83,33 @@ func (s *sheet) cutoffFields(at place, c *cutoff.Cutoff) []app.UI {
 	}
 	choose := app.Select().ID("side-"+id).Aria("label", "Which people").OnChange(changed("side-")).Body(
 		app.Range(sides).Slice(func(i int) app.UI {
-			return app.Option().Value(sides[i].String()).Text(words.SideName(sides[i])).Selected(sides[i] == side)
+			return app.Option().Value(sides[i].String()).Text(sideText(sides[i])).Selected(sides[i] == side)
 		}),
 	)
 	first := app.Input().ID("from-"+id).Class("figure").Aria("label", "Cutoff").Attr("inputmode", "text").
 		AutoComplete(false).Value(from).OnChange(changed("from-"))
 	if side != cutoff.Stretch {
-		return []app.UI{choose, first}
+		return []app.UI{choose, first, s.forEachScore()}
 	}
 	second := app.Input().ID("to-"+id).Class("figure").Aria("label", "Upper end").
 		AutoComplete(false).Value(to).OnChange(changed("to-"))
-	return []app.UI{choose, first, app.Text("and"), second}
+	return []app.UI{choose, first, app.Text("to"), second, app.Span().Class("aside").Text("both ends in"), s.forEachScore()}
+}
+
+// sideText is how a side is offered.
+func sideText(side cutoff.Side) string {
+	if side == cutoff.Stretch {
+		return "from … to"
+	}
+	return words.SideName(side)
+}
+
+// forEachScore says what several scores mean for a cutoff.
+func (s *sheet) forEachScore() app.UI {
+	scores := len(s.desk.question.Scores)
+	return when(scores > 1, func() app.UI {
+		return app.Small().Class("every-score").Text("Every cutoff is used for each of the " + strconv.Itoa(scores) + " scores.")
+	})
 }
 
 // cutoffTyped takes in what now stands in the fields of a cutoff. Someone may
@@ -107,16 +124,30 @@ func (s *sheet) cutoffTyped(at place) {
 	if from == "" || (side == cutoff.Stretch && to == "") {
 		return // not finished
 	}
-	c, err := cutoff.Parse(from)
-	switch {
-	case err == nil:
+	c, err := cutoffIn(side, from, to)
+	if err == nil {
 		s.draft.side = &c.Side
-	case side == cutoff.Stretch:
-		c, err = cutoff.Parse(from + ".." + to)
-	default:
-		c, err = cutoff.Parse(side.String() + from)
 	}
 	s.putCutoff(at, c, err)
+}
+
+// cutoffIn reads a side and what was typed beside it: a number, two for a
+// stretch, or a whole cutoff.
+func cutoffIn(side cutoff.Side, from, to string) (cutoff.Cutoff, error) {
+	if text, err := pointed(from); err == nil {
+		if c, err := cutoff.Parse(text); err == nil {
+			return c, nil
+		}
+	}
+	c := cutoff.Cutoff{Side: side}
+	var err error
+	if c.At, err = number(from); err != nil || side != cutoff.Stretch {
+		return c, err
+	}
+	if c.To, err = number(to); err == nil && c.To < c.At {
+		err = fmt.Errorf("the lower end, %s, is above the upper end, %s; write the lower end first", plain(c.At), plain(c.To))
+	}
+	return c, err
 }
 
 // putCutoff puts a cutoff in its place in the question, or at its end.

@@ -2,6 +2,9 @@ package main
 
 import (
 	"errors"
+	"math"
+	"regexp"
+	"strconv"
 	"strings"
 	"testing"
 
@@ -11,6 +14,7 @@ import (
 
 	"tailgap/core/ask"
 	"tailgap/core/curve"
+	"tailgap/core/cutoff"
 	"tailgap/core/demo"
 	"tailgap/core/sample"
 	"tailgap/core/verdict"
@@ -116,14 +120,93 @@ func TestSheetSaysThatAnAnswerIsOld(t *testing.T) {
 }
 
 func TestNumber(t *testing.T) {
-	for text, want := range map[string]float64{"4": 4, " 4,000 ": 4000, "1,234,567": 1234567, "-2.5": -2.5, "−3": -3, "1e3": 1000} {
+	for text, want := range map[string]float64{"4": 4, " 4000 ": 4000, "-2.5": -2.5, "−3": -3, "1e3": 1000, "4,5": 4.5, "-0,25": -0.25,
+		"1,2345": 1.2345, ",5": 0.5, "1,5e2": 150, "7,": 7} {
 		got, err := number(text)
 		require.NoError(t, err, text)
 		assert.Equal(t, want, got, text)
 	}
-	for _, text := range []string{"", "4k", "4,5", "1,2345", "four"} {
+	zero, err := number("-0")
+	require.NoError(t, err)
+	assert.False(t, math.Signbit(zero))
+	for _, text := range []string{"", "4k", "four", "1,234,567", "1.234,5", "1,234.5", "1 000", "NaN", "inf", "0x10", "1_000", "1e999"} {
 		_, err := number(text)
-		assert.Error(t, err, text)
+		assert.ErrorContains(t, err, strconv.Quote(text)+" can't be read as a number")
+	}
+	for _, text := range []string{"1,234", "-1,234", "0,500", "1,234e2"} { // one thing or the other
+		_, err := number(text)
+		assert.EqualError(t, err, strconv.Quote(text)+" could mean thousands or decimals; write thousands without a mark, and decimals with a point")
+	}
+}
+
+func TestCutoffIn(t *testing.T) {
+	for _, test := range []struct {
+		side           cutoff.Side
+		from, to, want string
+	}{
+		{cutoff.AtLeast, "50", "", ">=50"}, {cutoff.Below, "12,5", "", "<12.5"}, {cutoff.Above, "−3", "", ">-3"},
+		{cutoff.AtLeast, "<=12,5", "", "<=12.5"}, {cutoff.AtMost, "20..30", "", "20..30"},
+		{cutoff.Stretch, "10,5", "20.5", "10.5..20.5"}, {cutoff.Stretch, "-3", "-3", "-3..-3"}, {cutoff.Stretch, ">=7", "20", ">=7"},
+	} {
+		c, err := cutoffIn(test.side, test.from, test.to)
+		require.NoError(t, err, test.from)
+		assert.Equal(t, test.want, c.String())
+	}
+	for _, test := range []struct {
+		side           cutoff.Side
+		from, to, want string
+	}{
+		{cutoff.AtLeast, "abc", "", `"abc" can't be read as a number; write digits, and decimals with a point`},
+		{cutoff.Stretch, "11", "abc", `"abc" can't be read as a number; write digits, and decimals with a point`},
+		{cutoff.AtLeast, ">=1,234", "", `">=1,234" could mean thousands or decimals; write thousands without a mark, and decimals with a point`},
+		{cutoff.Stretch, "20", "11,5", `the lower end, 20, is above the upper end, 11.5; write the lower end first`},
+	} {
+		_, err := cutoffIn(test.side, test.from, test.to)
+		assert.EqualError(t, err, test.want)
+	}
+}
+
+func TestLimitIn(t *testing.T) {
+	for _, test := range []struct{ size, unit, want string }{{"1,5", "pt", "1.5pt"}, {"20", "%count", "20%count"}, {"1e2", "heads", "100heads"}, {"-0", "pt", "0pt"}} {
+		l, err := limitIn(test.size, test.unit)
+		require.NoError(t, err)
+		assert.Equal(t, test.want, l.String())
+	}
+	for size, want := range map[string]string{
+		"abc": `"abc" can't be read as a number; write digits, and decimals with a point`,
+		"-2":  "a tolerance of -2 can't be used; it must be zero or more", "5%": `"5%" can't be read as a number`,
+	} {
+		_, err := limitIn(size, "pt")
+		assert.ErrorContains(t, err, want)
+	}
+}
+
+var disabled = regexp.MustCompile(` disabled[ >]`)
+
+func TestSheetOffersOnlyTheAnswerToWhatIsAsked(t *testing.T) {
+	s := sheetWith(t, "", func(*ask.Question) {})
+	assert.NotRegexp(t, disabled, app.HTMLString(s.takings()))
+	s.desk.version++
+	html := app.HTMLString(s.takeAway())
+	assert.Equal(t, len(takings), len(disabled.FindAllString(html, -1)), "the question can still be saved")
+	assert.Contains(t, html, "The answer shown is old")
+	s.desk.answer = nil
+	html = app.HTMLString(s.takings())
+	assert.Equal(t, len(takings), len(disabled.FindAllString(html, -1)))
+	assert.Contains(t, html, "none yet")
+}
+
+func TestSheetSaysThatACutoffIsForEveryScore(t *testing.T) {
+	s := sheetWith(t, twoColumns, func(q *ask.Question) {
+		*q = ask.NewQuestion()
+		q.Replicates, q.Scores, q.Cutoffs = 200, []string{"whole", "2"}, asking(">=4", "2..3").Cutoffs
+	})
+	for _, at := range []place{atCutoff(0), atCutoff(1), atAdd} {
+		s.open = at
+		assert.Contains(t, app.HTMLString(s.Render()), "Every cutoff is used for each of the 2 scores.")
+		s.desk.question.Scores = []string{"whole"}
+		assert.NotContains(t, app.HTMLString(s.Render()), "Every cutoff")
+		s.desk.question.Scores = []string{"whole", "2"}
 	}
 }
 

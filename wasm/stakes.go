@@ -1,6 +1,8 @@
 package main
 
 import (
+	"fmt"
+
 	"github.com/maxence-charriere/go-app/v9/pkg/app"
 
 	"tailgap/core/ask"
@@ -66,9 +68,21 @@ func (s *sheet) limitTyped(at place) {
 		return // not finished
 	}
 	q := s.desk.question
-	limit, err := verdict.ParseLimit(size + unit)
+	limit, err := limitIn(size, unit)
 	*limitOf(&q, at) = &limit
 	s.change(at, q, err)
+}
+
+// limitIn reads the size of a limit and the ending of its unit.
+func limitIn(size, unit string) (verdict.Limit, error) {
+	x, err := number(size)
+	switch {
+	case err != nil:
+		return verdict.Limit{}, err
+	case x < 0:
+		return verdict.Limit{}, fmt.Errorf("a tolerance of %s can't be used; it must be zero or more", plain(x))
+	}
+	return verdict.ParseLimit(plain(x) + unit)
 }
 
 func (s *sheet) liftLimit(at place) {

@@ -42,24 +42,41 @@ func (s *sheet) takeAway() app.UI {
 					})),
 			),
 		),
-		when(s.desk.answer != nil, s.takings),
+		s.takings(),
 		trouble(s.desk.trouble[atAway]),
 	)
 }
 
+// takings are the answer's files, as long as it is the answer to what is asked.
 func (s *sheet) takings() app.UI {
+	why := s.desk.untakable()
 	return app.P().Body(
 		app.Text("The answer, for use inside: "),
 		app.Range(takings).Slice(func(i int) app.UI {
 			t := takings[i]
-			return app.Button().Type("button").ID(t.id).Text(t.label).
+			return app.Button().Type("button").ID(t.id).Text(t.label).Disabled(why != "").
 				OnClick(s.act(t.id, func(app.Context, app.Event) {
+					if s.desk.untakable() != "" {
+						return // it was pressed before the page showed so
+					}
 					text, err := t.make(*s.desk.answer)
 					s.hand(t.name, t.kind, text, err)
 				}))
 		}),
+		when(why != "", func() app.UI { return app.Span().ID("untakable").Class("old-mark").Text(why) }),
 		app.Span().Class("line soft").Text("Its exact shares allow counts of single people to be worked out, so keep these files where the scores may be kept."),
 	)
+}
+
+// untakable says why there is no answer to take away; "" when there is one.
+func (d *desk) untakable() string {
+	switch {
+	case d.answer == nil:
+		return "There is none yet: wait for it."
+	case d.old():
+		return "The answer shown is old: wait for the new one."
+	}
+	return ""
 }
 
 // hand gives a file to the person, or says why there is none.

@@ -2,6 +2,7 @@ package main
 
 import (
 	"errors"
+	"fmt"
 	"regexp"
 	"strconv"
 	"strings"
@@ -27,19 +28,35 @@ func plain(x float64) string { return strconv.FormatFloat(x, 'f', -1, 64) }
 // grouped is a whole number with its thousands marked, as the page prints it.
 var grouped = regexp.MustCompile(`^[-+]?\d{1,3}(,\d{3})+$`)
 
-var errNoNumber = errors.New("this can't be read as a number; write digits, and decimals with a point")
+var (
+	digits = regexp.MustCompile(`^[-+]?(\d+\.?\d*|\.\d+)([eE][-+]?\d+)?$`)
+	// thousand is a comma that may as well mark thousands.
+	thousand = regexp.MustCompile(`,\d{3}(\D|$)`)
+)
+
+// pointed turns a decimal comma into a point: the only comma of a text
+// without a point. A comma before just three digits is refused.
+func pointed(text string) (string, error) {
+	if strings.Count(text, ",") != 1 || strings.Contains(text, ".") {
+		return text, nil
+	}
+	if thousand.MatchString(text) {
+		return "", fmt.Errorf("%.40q could mean thousands or decimals; write thousands without a mark, and decimals with a point", text)
+	}
+	return strings.Replace(text, ",", ".", 1), nil
+}
 
 // number reads what a person typed.
 func number(text string) (float64, error) {
-	text = strings.TrimSpace(strings.ReplaceAll(text, "−", "-"))
-	if grouped.MatchString(text) {
-		text = strings.ReplaceAll(text, ",", "")
-	}
-	x, err := strconv.ParseFloat(text, 64)
+	clean, err := pointed(strings.TrimSpace(strings.ReplaceAll(text, "−", "-")))
 	if err != nil {
-		return 0, errNoNumber
+		return 0, err
 	}
-	return x, nil
+	x, err := strconv.ParseFloat(clean, 64)
+	if err != nil || !digits.MatchString(clean) {
+		return 0, fmt.Errorf("%.40q can't be read as a number; write digits, and decimals with a point", text)
+	}
+	return x + 0, nil // no negative zero
 }
 
 // whole reads a whole number that a person typed.

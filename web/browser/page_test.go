@@ -42,7 +42,7 @@ func TestPageJudgesAFileAsTheCommandDoes(t *testing.T) {
 	p.choose("unit-too-low", "%count")
 	p.write("size-too-low", "60")
 	p.open("heads")
-	p.write("heads", "1,200")
+	p.write("heads", "1200")
 	p.settled()
 	asked := []string{path, "--score", "errors", "--missing=-9", "--cutoff", ">=12", "--cutoff", "<2", "--cutoff", "3..5",
 		"--too-high", "3pt", "--too-low", "60%count", "--heads", "1200"}
@@ -84,7 +84,7 @@ func TestPageFollowsACutoff(t *testing.T) {
 	p.write("from-cutoff-0", "nine")
 	p.until(`document.querySelector("#editor-cutoff-0 .trouble")`)
 	p.shownNow()
-	assert.Contains(t, get[string](p, `document.querySelector("#editor-cutoff-0 .trouble").innerText`), `"nine..14" can't be read`)
+	assert.Contains(t, get[string](p, `document.querySelector("#editor-cutoff-0 .trouble").innerText`), `"nine" can't be read`)
 	assert.Zero(t, get[int](p, `document.querySelectorAll("#findings.old").length`), "the question is still the one that was answered")
 
 	p.click("remove-cutoff-0")
@@ -103,6 +103,7 @@ func TestPageCancelsLongWork(t *testing.T) {
 	p.click("cancel")
 	p.until(`document.getElementById("work").dataset.state === "stopped"`)
 	assert.Contains(t, get[string](p, `document.getElementById("old").innerText`), "earlier question")
+	assert.Equal(t, 4, get[int](p, `document.querySelectorAll("#take-away button:disabled").length`), "an old answer is not taken away for the new one")
 	assert.Equal(t, 1, get[int](p, `document.querySelectorAll("#findings.old").length`))
 	assert.Equal(t, before, p.all("#cards article"))
 
