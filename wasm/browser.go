@@ -23,16 +23,19 @@ func (s *sheet) focusOn(ids ...string) {
 	})
 }
 
-// focusInside moves the focus to the first field of an element, once it is
+// focusInside moves the focus to what is written first in an element, or chosen, once it is
 // shown.
 func (s *sheet) focusInside(id string) {
 	s.page.Defer(func(app.Context) {
-		field := byID(id)
-		if field.Truthy() {
-			field = field.Call("querySelector", "input:not([hidden]), select, textarea, button")
+		editor := byID(id)
+		if !editor.Truthy() {
+			return
 		}
-		if field.Truthy() {
-			field.Call("focus")
+		for _, wanted := range []string{"input:not([type])", "input:not([hidden]), select, textarea, button"} {
+			if field := editor.Call("querySelector", wanted); field.Truthy() {
+				field.Call("focus")
+				return
+			}
 		}
 	})
 }

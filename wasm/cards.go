@@ -111,7 +111,7 @@ func shares(f ask.Finding) app.UI {
 // gapLines are the gap with its interval, in points, as a ratio and in people.
 func gapLines(q ask.Question, f ask.Finding) app.UI {
 	return app.P().Class("gap").Body(
-		app.Strong().Body(shown("gap_points", f.GapPoints, words.Capital(words.Gap(f.GapPoints)))),
+		app.Strong().Body(shown("gap_points", f.GapPoints, words.Capital(words.GapOf(f.Reading)))),
 		interval(words.Limits(f.Reading)),
 		when(f.Ratio != nil, func() app.UI {
 			return app.Span().Class("line").Body(shown("ratio", *f.Ratio, words.Capital(words.Ratio(f))))

@@ -114,7 +114,7 @@ func announcement(a *ask.Answer) string {
 			if verdict := words.Verdict(a.Question, f); verdict != "" {
 				text += verdict + "."
 			} else {
-				text += words.Gap(f.GapPoints) + "."
+				text += words.GapOf(f.Reading) + "."
 			}
 			if len(a.Results) > 1 {
 				text = words.Name(r.Score) + ". " + text

@@ -82,7 +82,7 @@ func TestSheetShowsEveryKindOfAnswer(t *testing.T) {
 				for _, f := range r.Cutoffs {
 					assert.Contains(t, html, words.Capital(f.Cutoff.Words()))
 					assert.Contains(t, html, exact(f.GapPoints))
-					assert.Contains(t, html, words.Capital(words.Gap(f.GapPoints)))
+					assert.Contains(t, html, words.Capital(words.GapOf(f.Reading)))
 				}
 				assert.Equal(t, len(r.Cutoffs), strings.Count(html, "<article"))
 				for _, caution := range words.Cautions() {

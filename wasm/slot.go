@@ -31,13 +31,7 @@ func (s *sheet) slot(at place, text, mark string, editor func() app.UI) app.UI {
 		// and could not run over the end of a line.
 		app.Span().Role("button").TabIndex(0).Class(class).ID("slot-"+id).Text(text).
 			Aria("expanded", open).Aria("controls", "editor-"+id).
-			OnClick(s.act("slot-"+id, func(app.Context, app.Event) { s.toggle(at) })).
-			OnKeyDown(s.act("slot-key-"+id, func(_ app.Context, e app.Event) {
-				if key := e.Get("key").String(); key == "Enter" || key == " " {
-					e.PreventDefault() // or the page would scroll
-					s.toggle(at)
-				}
-			})),
+			OnClick(s.act("slot-"+id, func(app.Context, app.Event) { s.toggle(at) })), // web/loader.js makes Enter and the space bar click
 		app.Text(mark),
 		when(open, func() app.UI {
 			return app.Span().Class("editor").ID("editor-"+id).Role("group").Aria("label", text).

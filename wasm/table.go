@@ -99,7 +99,7 @@ func readingCells(prefix string, f ask.Finding, r ask.Reading) []app.UI {
 		shown(prefix+"curve_share", r.CurveShare, words.Share(r.CurveShare)),
 		counted,
 		people,
-		shown(prefix+"gap_points", r.GapPoints, words.SignedGap(r.GapPoints)),
+		shown(prefix+"gap_points", r.GapPoints, words.SignedGapOf(r)),
 		both(prefix+"gap", r.GapLow, r.GapHigh, words.SignedLimits(r)),
 	}
 }

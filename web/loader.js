@@ -29,6 +29,15 @@ new MutationObserver(changes => {
   }
 }).observe(document.body, { subtree: true, childList: true, attributeFilter: ["data-at"] });
 
+// The slots of the sentence are no button elements, so what a browser does for
+// those is done here: Enter and the space bar click. It has to be done before
+// the key's own effect, which is sooner than the program hears of it.
+document.addEventListener("keydown", event => {
+  if (event.target.getAttribute?.("role") !== "button" || (event.key !== "Enter" && event.key !== " ")) return;
+  event.preventDefault();
+  if (!event.repeat) event.target.click();
+});
+
 const textOf = id => document.getElementById(id).textContent;
 
 // The worker keeps what it is told until the program in it listens.

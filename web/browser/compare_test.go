@@ -190,7 +190,7 @@ func (p *page) holds(at shownAt, exact map[string]any, texts map[string]string) 
 func cardTexts(q ask.Question, f ask.Finding) map[string]string {
 	texts := map[string]string{
 		"curve_share": words.Share(f.CurveShare), "counted_share": words.Share(f.CountedShare), "counted": words.Count(f.Counted),
-		"gap_points": words.Capital(words.Gap(f.GapPoints)), "ratio": words.Capital(words.Ratio(f)), "heads.gap": words.Capital(words.Heads(q, f)),
+		"gap_points": words.Capital(words.GapOf(f.Reading)), "ratio": words.Capital(words.Ratio(f)), "heads.gap": words.Capital(words.Heads(q, f)),
 	}
 	if f.Verdict != nil {
 		texts["verdict"] = *f.Verdict
@@ -204,7 +204,7 @@ func rowTexts(prefix string, r ask.Reading) map[string]string {
 		prefix += "."
 	}
 	texts := map[string]string{
-		prefix + "z": words.Z(r.Z), prefix + "curve_share": words.Share(r.CurveShare), prefix + "gap_points": words.SignedGap(r.GapPoints),
+		prefix + "z": words.Z(r.Z), prefix + "curve_share": words.Share(r.CurveShare), prefix + "gap_points": words.SignedGapOf(r),
 	}
 	if r.ZTo != nil {
 		texts[prefix+"z_to"] = words.Z(*r.ZTo)

@@ -7,6 +7,7 @@ import (
 	"testing"
 
 	cdp "github.com/chromedp/cdproto/browser"
+	"github.com/chromedp/cdproto/input"
 	"github.com/chromedp/chromedp"
 	"github.com/chromedp/chromedp/kb"
 	"github.com/stretchr/testify/assert"
@@ -96,6 +97,8 @@ func TestPageWorksByKeyboard(t *testing.T) {
 	assert.Equal(t, "slot-cutoff-0", focused())
 	p.do(chromedp.KeyEvent(kb.Enter))
 	p.shownNow()
+	assert.Equal(t, "from-cutoff-0", focused(), "the number first; its side is before it")
+	p.do(chromedp.KeyEvent(kb.Tab, chromedp.KeyModifiers(input.ModifierShift)))
 	assert.Equal(t, "side-cutoff-0", focused())
 	p.do(chromedp.KeyEvent(kb.Tab))
 	assert.Equal(t, "from-cutoff-0", focused())
