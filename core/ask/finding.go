@@ -5,6 +5,7 @@ import (
 
 	"tailgap/core/cutoff"
 	"tailgap/core/resample"
+	"tailgap/core/sample"
 	"tailgap/core/verdict"
 )
 
@@ -23,7 +24,7 @@ func (w *work) result() Result {
 		Cutoffs: []Finding{}, Sweeps: []Sweep{},
 	}
 	if r.Sample.Dropped == nil {
-		r.Sample.Dropped = r.Sample.Dropped[:0:0]
+		r.Sample.Dropped = []sample.Dropped{}
 	}
 	if w.scale.Step > 0 {
 		step := w.scale.Step
