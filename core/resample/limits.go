@@ -45,44 +45,44 @@ func IntervalOf(e *gap.Estimate, weight, quantile, t float64, tail bool) Interva
 // (Fieller 1954), given the estimated ratio and the interval at any weight.
 // In a small sample these weights need not be one run: the limits are those of
 // the run around the ratio, and on its side of 1 where the gap's interval lies
-// on one side of 0. A high limit of nil says that there is none, because the counted share
-// can't be told from zero.
+// on one side of 0. A high limit of nil says that there is none, because the
+// counted share can't be told from zero.
 func RatioLimits(ratio float64, interval func(weight float64) Interval) (low, high *float64) {
-	const smallest, largest, halvings = 1e-9, 1e6, 100
-	bottom, top := ratio*smallest, ratio
-	if ratio > 1 && interval(1).Low > 0 {
+	const smallest, largest = 1e-9, 1e6
+	above := func(weight float64) bool { return interval(weight).Low > 0 }
+	below := func(weight float64) bool { return interval(weight).High < 0 }
+
+	low = new(float64)
+	bottom := ratio * smallest
+	if ratio > 1 && above(1) {
 		bottom = 1
 	}
-	if interval(bottom).Low > 0 {
-		for range halvings {
-			middle := (bottom + top) / 2
-			if interval(middle).Low > 0 {
-				bottom = middle
-			} else {
-				top = middle
-			}
-		}
-		low = &top
-	} else {
-		low = new(float64)
+	if above(bottom) {
+		*low = border(ratio, bottom, above)
 	}
-	bottom, reach := ratio, math.Max(ratio, 1e-12)*2
-	if ratio < 1 && interval(1).High < 0 {
+	inside, reach := ratio, math.Max(ratio, 1e-12)*2
+	if ratio < 1 && below(1) {
 		reach = 1
 	}
-	for interval(reach).High >= 0 {
+	for !below(reach) {
 		if reach > ratio*largest {
 			return low, nil
 		}
-		bottom, reach = reach, reach*2
+		inside, reach = reach, reach*2
 	}
-	for range halvings {
-		middle := (bottom + reach) / 2
-		if interval(middle).High >= 0 {
-			bottom = middle
+	top := border(inside, reach, below)
+	return low, &top
+}
+
+// border is the last number, on the way from inside to out, that isn't out:
+// found by halving the way, again and again.
+func border(inside, out float64, isOut func(float64) bool) float64 {
+	for range 100 {
+		if middle := (inside + out) / 2; isOut(middle) {
+			out = middle
 		} else {
-			reach = middle
+			inside = middle
 		}
 	}
-	return low, &bottom
+	return inside
 }
