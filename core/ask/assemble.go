@@ -13,10 +13,6 @@ import (
 // run draws the replicates, unless everyone was counted: then every gap is
 // exact.
 func (w *work) run(ctx context.Context, report func(done int)) error {
-	w.estimates = make([]*gap.Estimate, len(w.plan.Regions))
-	for i, region := range w.plan.Regions {
-		w.estimates[i] = w.table.Estimate(region)
-	}
 	if w.question.Everyone {
 		return ctx.Err()
 	}
@@ -38,7 +34,7 @@ func (w *work) shownAt(c cutoff.Cutoff, halfStep bool) shown {
 	return shown{w, w.region(c, halfStep), c.Side != cutoff.Stretch, c.Side.Lower()}
 }
 
-func (s shown) estimate() *gap.Estimate { return s.estimates[s.region] }
+func (s shown) estimate() *gap.Estimate { return s.plan.Estimates[s.region] }
 
 func (s shown) curveShare() float64 {
 	if s.lower {

@@ -25,7 +25,6 @@ type work struct {
 	known     map[key]int
 	sweeps    []sweepPlan
 	quantiles resample.Quantiles
-	estimates []*gap.Estimate
 	t         float64 // Student's t at the question's level
 }
 
@@ -86,7 +85,7 @@ func newWork(question Question, column sample.Column) (*work, error) {
 			w.region(c, halfStep)
 		}
 	}
-	w.plan.Table = w.table
+	w.plan.Table, w.plan.Estimates = w.table, w.table.Estimates(w.plan.Regions)
 	w.plan.Weights = w.tolerance.Weights()
 	w.plan.Level, w.plan.Replicates = question.Level, question.Replicates
 	w.plan.Seed, w.plan.Workers = question.Seed, question.Workers

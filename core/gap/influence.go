@@ -34,6 +34,15 @@ func (t Table) Estimate(r Region) *Estimate {
 	return &e
 }
 
+// Estimates are the regions' estimates from the sample, in their order.
+func (t Table) Estimates(regions []Region) []*Estimate {
+	estimates := make([]*Estimate, len(regions))
+	for i, region := range regions {
+		estimates[i] = t.Estimate(region)
+	}
+	return estimates
+}
+
 // Influence is the influence function of the gap of an upper tail, one value
 // for each distinct score, for a fitted normal curve: what one more person
 // with that score would change in the gap, times n. A given curve's share

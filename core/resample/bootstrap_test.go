@@ -23,8 +23,8 @@ import (
 // replicates are the gaps of 20,000 resamples, in points, by region.
 func replicates(table gap.Table, regions []gap.Region, seed uint64) [][]float64 {
 	const size = 20_000
-	plan := Plan{Table: table, Regions: regions, Weights: []float64{1}, Level: 0.95, Replicates: size, Seed: seed}
-	s := newStudy(plan, newDrawer(table.Counts), sampleEstimates(plan))
+	plan := Plan{Table: table, Regions: regions, Estimates: table.Estimates(regions), Weights: []float64{1}, Level: 0.95, Replicates: size, Seed: seed}
+	s := newStudy(plan, newDrawer(table.Counts))
 	gaps := make([][]float64, len(regions))
 	for block := range size / 100 {
 		s.stream.restart(seed, block)

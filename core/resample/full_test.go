@@ -65,6 +65,7 @@ func TestWholeMethodAgreesWithNumPy(t *testing.T) {
 			plan.Regions = append(plan.Regions, table.Tail(gap.Split(scale, at, want.Side.Strict(), want.HalfStep)))
 		}
 		plan.Groups = [][2]int{{1, len(plan.Regions)}}
+		plan.Estimates = table.Estimates(plan.Regions)
 
 		got, err := resample.Run(context.Background(), plan, nil)
 		require.NoError(t, err)

@@ -31,6 +31,7 @@ func planFor(scores []float64, workers int) Plan {
 		plan.Regions = append(plan.Regions, table.Tail(gap.Threshold{At: counts.Score[i], Point: counts.Score[i]}))
 	}
 	plan.Groups = [][2]int{{0, len(plan.Regions)}}
+	plan.Estimates = table.Estimates(plan.Regions)
 	return plan
 }
 

@@ -31,6 +31,7 @@ import (
 type Plan struct {
 	Table      gap.Table
 	Regions    []gap.Region
+	Estimates  []*gap.Estimate // the sample's, one for each region
 	Weights    []float64
 	Groups     [][2]int
 	Level      float64
@@ -92,23 +93,15 @@ func newStudies(plan Plan) []*study {
 	if workers <= 0 {
 		workers = runtime.GOMAXPROCS(0)
 	}
-	drawer, estimates := newDrawer(plan.Table.Counts), sampleEstimates(plan)
+	drawer := newDrawer(plan.Table.Counts)
 	studies := make([]*study, min(workers, plan.blocks()))
 	for i := range studies {
-		studies[i] = newStudy(plan, drawer, estimates)
+		studies[i] = newStudy(plan, drawer)
 	}
 	return studies
 }
 
 func (p *Plan) blocks() int { return (p.Replicates + blockSize - 1) / blockSize }
-
-func sampleEstimates(plan Plan) []*gap.Estimate {
-	estimates := make([]*gap.Estimate, len(plan.Regions))
-	for i, region := range plan.Regions {
-		estimates[i] = plan.Table.Estimate(region)
-	}
-	return estimates
-}
 
 // upperRank is how many of the largest of b replicates to keep so that the
 // smallest kept is their quantile: the value of rank ⌈(b+1)·level⌉.

@@ -10,20 +10,19 @@ import (
 // study is one goroutine's share of the replicates: its scratch space, and
 // the largest studentised gaps it has seen.
 type study struct {
-	plan      Plan
-	drawer    drawer
-	estimates []*gap.Estimate
-	targets   []target    // by region, then weight
-	points    []gap.Point // each place where the curve is read, once
-	readings  []gap.Reading
-	ends      [][2]int // by region, the places of its ends among the points
-	powers    []powers
-	counts    []int32
-	tails     []gap.Inside // sums over the distinct scores from this index up; one more entry than scores
-	stream    stream
-	region    []largest // by region, then weight
-	group     []largest // by group, then weight
-	sup       []fraction
+	plan     Plan
+	drawer   drawer
+	targets  []target    // by region, then weight
+	points   []gap.Point // each place where the curve is read, once
+	readings []gap.Reading
+	ends     [][2]int // by region, the places of its ends among the points
+	powers   []powers
+	counts   []int32
+	tails    []gap.Inside // sums over the distinct scores from this index up; one more entry than scores
+	stream   stream
+	region   []largest // by region, then weight
+	group    []largest // by group, then weight
+	sup      []fraction
 }
 
 // fraction is a squared studentised gap, with the division left undone: most
@@ -40,10 +39,10 @@ type target struct {
 // powers of a distinct score in standard units.
 type powers struct{ u1, u2, u3, u4 float64 }
 
-func newStudy(plan Plan, d drawer, estimates []*gap.Estimate) *study {
+func newStudy(plan Plan, d drawer) *study {
 	distinct := len(plan.Table.U)
 	s := &study{
-		plan: plan, drawer: d, estimates: estimates,
+		plan: plan, drawer: d,
 		counts: make([]int32, distinct), tails: make([]gap.Inside, distinct+1),
 		powers: make([]powers, distinct), sup: make([]fraction, len(plan.Weights)),
 	}
@@ -51,7 +50,7 @@ func newStudy(plan Plan, d drawer, estimates []*gap.Estimate) *study {
 		s.powers[i] = powers{u, u * u, u * u * u, u * u * u * u}
 	}
 	k := upperRank(plan.Replicates, plan.Level)
-	for _, e := range estimates {
+	for _, e := range plan.Estimates {
 		p := e.Shrunk()
 		for _, w := range plan.Weights {
 			se := e.SE(w)

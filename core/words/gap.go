@@ -30,10 +30,6 @@ func readingDecimals(r ask.Reading) int {
 	return decimals
 }
 
-// Points prints a gap without its sign: "1.4 points", "0.13 points", "1
-// point", "under 0.01 points".
-func Points(gap float64) string { return pointsTo(gap, gapDecimals(gap)) }
-
 func pointsTo(gap float64, decimals int) string {
 	digits := unsigned(gap, decimals)
 	if digits == "1.0" {
@@ -61,10 +57,6 @@ func gapTo(size float64, decimals int) string {
 	}
 	return "no gap"
 }
-
-// SignedGap prints a gap that stands without its interval for a table: "+1.4",
-// "-0.13", "-<0.01"; plus: the curve is too high.
-func SignedGap(points float64) string { return signedPoints(points, gapDecimals(points)) }
 
 // SignedGapOf prints a reading's gap for a table, with no more decimals than
 // its interval allows.

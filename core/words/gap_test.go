@@ -36,7 +36,7 @@ func TestGapAtTheEdges(t *testing.T) {
 		{math.NaN(), "gap not known", unknown}, {math.Inf(1), "gap not known", unknown},
 	} {
 		assert.Equal(t, c.words, Gap(c.points), "%v", c.points)
-		assert.Equal(t, c.table, SignedGap(c.points), "%v", c.points)
+		assert.Equal(t, c.table, signedPoints(c.points, gapDecimals(c.points)), "%v", c.points)
 	}
 }
 
