@@ -47,6 +47,7 @@ type Result struct {
 	Cutoffs  []Finding `json:"cutoffs"`
 	Sweeps   []Sweep   `json:"sweeps"`
 	Worst    Worst     `json:"worst"`
+	Shape    *Shape    `json:"shape"` // null in answers of programs that did not look at it
 }
 
 // Described is the sample in figures. N counts the rows read, Used the
