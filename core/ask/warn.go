@@ -74,8 +74,8 @@ func (w *work) warnings() []string {
 	if share, extreme := sample.ExtremeShare(counts, m); share > 0.5 && counts.N >= 20 {
 		add("the SD is mostly the %s: %.0f%% of the sum of squares comes from there", extremes(extreme), 100*share)
 	}
-	if spacing, share := sample.Heaps(counts, m, w.scale.Step); spacing > 0 {
-		add("scores pile up on multiples of %s: %.0f%% of the people are there; a cutoff on or beside such a score moves many people at once", numeral.Plain(spacing), 100*share)
+	if heaps := sample.Heaps(counts, m, w.scale); heaps.Spacing > 0 {
+		add("scores pile up on multiples of %s: %.0f%% of the people are there; a cutoff on or beside such a score moves many people at once", numeral.Plain(heaps.Spacing), 100*heaps.Share)
 	}
 	if outside := outside(counts, w.scale); outside > 0 {
 		used := "they were used as they are"

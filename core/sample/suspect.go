@@ -85,33 +85,3 @@ func ExtremeShare(c Counts, m Moments) (share float64, people int) {
 	}
 	return total / (float64(c.N) * m.M2), people
 }
-
-// Heaps is the spacing of round scores (10 or 5 steps) at which people pile
-// up, with the share of people there; 0 when there is none. People pile up
-// when their share on the round scores is above one and a half times what
-// even spreading would put there, by more than four standard errors, on a
-// scale with an SD of at least one spacing.
-func Heaps(c Counts, m Moments, step float64) (spacing, share float64) {
-	if step == 0 {
-		return 0, 0
-	}
-	for _, steps := range []float64{10, 5} {
-		spacing = steps * step
-		if m.SD < spacing {
-			continue
-		}
-		on := 0
-		for i, score := range c.Score {
-			multiple := score / spacing
-			if math.Abs(multiple-math.Round(multiple)) < 1e-6 {
-				on += c.Count[i]
-			}
-		}
-		share = float64(on) / float64(c.N)
-		even := 1 / steps
-		if share > 1.5*even && share-even > 4*math.Sqrt(even*(1-even)/float64(c.N)) {
-			return spacing, share
-		}
-	}
-	return 0, 0
-}

@@ -49,15 +49,3 @@ func TestExtremeShare(t *testing.T) {
 	assert.Equal(t, 30, people)
 	assert.Less(t, height, 0.12)
 }
-
-func TestHeaps(t *testing.T) {
-	scores := spread(420) // 10..30 evenly
-	counts := sample.Count(with(scores, 20, 100))
-	spacing, _ := sample.Heaps(counts, counts.Moments(), 1)
-	assert.Equal(t, 5.0, spacing, "the SD is below 10, so heaps on tens can't be told")
-	even := sample.Count(scores)
-	spacing, _ = sample.Heaps(even, even.Moments(), 1)
-	assert.Zero(t, spacing)
-	spacing, _ = sample.Heaps(counts, counts.Moments(), 0)
-	assert.Zero(t, spacing)
-}
