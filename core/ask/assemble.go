@@ -87,8 +87,11 @@ func (s shown) bandLimits(group int, weight float64) verdict.Limits {
 	if s.question.Everyone {
 		return l
 	}
-	margin := s.quantiles.Group[group][s.weightIndex(weight)] * s.estimate().SE(weight)
-	l.Low, l.High = math.Min(l.Low, l.Gap-margin), math.Max(l.High, l.Gap+margin)
+	band := resample.BandOf(s.estimate(), weight, s.quantiles.Group[group][s.weightIndex(weight)])
+	if s.lower {
+		band = band.Mirror(1 - weight)
+	}
+	l.Low, l.High = math.Min(l.Low, band.Low), math.Max(l.High, band.High)
 	return l
 }
 

@@ -22,6 +22,14 @@
 //	κ = max(w²-2wD, -0.95·v/[p̃(1-p̃)])
 //	SE² = [v + κ·p̃(1-p̃)]/n
 //
+// and, for a fitted curve, with a person unseen beyond each end of the scores,
+// e being the mean excess of the outermost tenth of the people (five or more)
+// over the next one inwards:
+//
+//	x_u = lowest score - 24^¼·e, highest score + 24^¼·e
+//	ψ(x_u) = h(x_u) - w·(1{x_u inside} - k/n)
+//	SE₋² = SE² + Σ_{ψ<0} ψ²/n²  for the limit below,  SE₊² = SE² + Σ_{ψ>0} ψ²/n²  above
+//
 // Curve and count come from the same people, so the two are far from
 // independent: that is what D is for. A weight w other than 1 judges a
 // tolerance in percent of the count. For a stretch a and b are the
@@ -31,6 +39,15 @@
 // v is the delta method's variance of a normal share (as in Peacock et al.
 // 2012), p̃ Agresti and Coull's (1998). The ghosts, which with p̃ keep the
 // standard error from collapsing in an empty tail, have no published source.
+//
+// The person unseen has no published source either. About 1/n of a population
+// lies beyond each extreme of a sample of n, where no sample shows it. Under
+// strong skew that part moves mean and SD most of all, and a sample that has
+// missed it has too small a variance just when its gap is off, in a direction
+// that is known: so it widens one side only. Beyond any point of an
+// exponential tail the excess has a mean fourth power of 24; h is quadratic
+// and counts by its square, hence the fourth root. How much it helps is in
+// DEVELOPERS.md.
 //
 // See package resample for what becomes of SE, and [Estimate.ScoreLimits] for
 // the limits where few people are on one side.

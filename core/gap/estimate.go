@@ -24,6 +24,7 @@ type Estimate struct {
 	D       float64 // slope of the curve's share on the counted share, with ghosts; 0 for a given curve
 	slope   float64 // the curve's density at its reading point, in SDs of the curve
 	z       float64
+	unseen  []unseen // beyond the lowest and the highest score; only in a sample's own estimate, by a fitted curve
 }
 
 // Set estimates the region from the sums of the sample, or of a resample, and

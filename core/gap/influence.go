@@ -31,6 +31,7 @@ func (t Table) Estimate(r Region) *Estimate {
 	sums := t.SampleSums()
 	reading := t.ReadRegion(&r, &sums)
 	e.Set(&r, &sums, &reading, t.SampleInside(r))
+	e.unseen = t.unseenBy(&r, &sums, &reading)
 	return &e
 }
 

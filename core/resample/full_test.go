@@ -33,6 +33,8 @@ func TestWholeMethodAgreesWithNumPy(t *testing.T) {
 			SD              *float64 `json:"given_sd"`
 			Level           float64
 			SE              float64 `json:"se_points"`
+			SEBelow         float64 `json:"se_below_points"`
+			SEAbove         float64 `json:"se_above_points"`
 			Quantile        float64 `json:"quantile_mean"`
 			QuantileSD      float64 `json:"quantile_sd"`
 			Low             float64 `json:"low_points"`
@@ -74,11 +76,14 @@ func TestWholeMethodAgreesWithNumPy(t *testing.T) {
 		assert.InDeltaf(t, want.Band, got.Group[0][0], 5*math.Max(want.BandSD, 0.004), "band's quantile, %s", where)
 
 		e := table.Estimate(plan.Regions[0])
+		below, above := e.SideSE(want.Weight)
+		assert.InEpsilonf(t, want.SEBelow, 100*below, 1e-9, "standard error below, %s", where)
+		assert.InEpsilonf(t, want.SEAbove, 100*above, 1e-9, "standard error above, %s", where)
 		i := resample.IntervalOf(e, want.Weight, got.Region[0][0], resample.StudentT(table.Counts.N, want.Level), true)
 		if want.Side.Lower() {
 			i = i.Mirror(1 - want.Weight)
 		}
-		assert.InDeltaf(t, want.Low, 100*i.Low, monteCarlo*want.SE, "low limit, %s", where)
-		assert.InDeltaf(t, want.High, 100*i.High, monteCarlo*want.SE, "high limit, %s", where)
+		assert.InDeltaf(t, want.Low, 100*i.Low, monteCarlo*want.SEBelow, "low limit, %s", where)
+		assert.InDeltaf(t, want.High, 100*i.High, monteCarlo*want.SEAbove, "high limit, %s", where)
 	}
 }

@@ -27,17 +27,27 @@ func StudentT(n int, level float64) float64 {
 }
 
 // IntervalOf is the ghost-studentised interval of Gap(weight): q standard
-// errors each way, q being the larger of Student's t and the quantile of the
+// errors (gap.Estimate.SideSE) each way, q being the larger of Student's t and the quantile of the
 // studentised replicates; for a tail with fewer than ten people on either
 // side, the hull of that and the score limits.
 func IntervalOf(e *gap.Estimate, weight, quantile, t float64, tail bool) Interval {
-	margin := math.Max(quantile, t) * e.SE(weight)
-	i := Interval{e.Gap(weight) - margin, e.Gap(weight) + margin}
+	i := margins(e, weight, math.Max(quantile, t))
 	if tail && e.Few() && weight > 0 {
 		low, high := e.ScoreLimits(weight, t)
 		i = i.Hull(Interval{low, high})
 	}
 	return i
+}
+
+// BandOf is the simultaneous limits at one threshold: quantile is that of the
+// largest studentised replicate over the whole sweep.
+func BandOf(e *gap.Estimate, weight, quantile float64) Interval {
+	return margins(e, weight, quantile)
+}
+
+func margins(e *gap.Estimate, weight, quantile float64) Interval {
+	below, above := e.SideSE(weight)
+	return Interval{e.Gap(weight) - quantile*below, e.Gap(weight) + quantile*above}
 }
 
 // RatioLimits are the limits of curve share over counted share: the weights

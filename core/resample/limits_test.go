@@ -16,7 +16,7 @@ import (
 //
 //	(N - wS)² = q²[v + (w²-2wD)P]/n,  P = p̃(1-p̃),
 //
-// as long as neither κ's floor nor the score limits come in.
+// as long as κ's floor does not come in.
 func TestRatioLimitsAreFiellers(t *testing.T) {
 	table, scale := column{Dataset: "pima", Column: "glu"}.table(nil)
 	for _, at := range []float64{80, 120, 140, 170} {
@@ -30,7 +30,8 @@ func TestRatioLimitsAreFiellers(t *testing.T) {
 		root := math.Sqrt(half*half - square*(e.Curve*e.Curve-c*e.V))
 
 		low, high := resample.RatioLimits(e.Curve/e.Counted, func(weight float64) resample.Interval {
-			return resample.IntervalOf(e, weight, q, 1.9, true)
+			margin := q * e.SE(weight)
+			return resample.Interval{Low: e.Gap(weight) - margin, High: e.Gap(weight) + margin}
 		})
 		require.NotNil(t, high)
 		assert.InEpsilon(t, (half-root)/square, *low, 1e-9, at)

@@ -3,15 +3,16 @@
 //
 // # Formulas
 //
-// With E, SE, v, κ and p̃ of the sample as in package gap, and those of a
-// resample starred (κ* without its floor), each resample gives
+// With E, SE, SE₋, SE₊, v, κ and p̃ of the sample as in package gap, and those
+// of a resample starred (κ* without its floor), each resample gives
 //
-//	T* = |E*-E|/√(V*/n),  V* = max(v* + κ*·p̃(1-p̃), 0.05·n·SE²)
+//	T* = |E*-E|/√(V*/n),  V* = max(v* + κ*·p̃(1-p̃), 0.05·n·SE²) + n(SE∓²-SE²)
 //
-// The interval for one cutoff is E ± q·SE, q being the larger of the level's
+// with SE₋ where E* > E and SE₊ elsewhere. The interval for one cutoff is
+// E - q·SE₋ to E + q·SE₊, q being the larger of the level's
 // quantile of T* and that of Student's t with n-1 degrees of freedom; for a
 // tail with fewer than ten people on one side it is widened to hold the score
-// limits (gap.Estimate.ScoreLimits) too. The band for a sweep is E ± q·SE at
+// limits (gap.Estimate.ScoreLimits) too. The band for a sweep is made likewise at
 // every threshold, q being the level's quantile of the largest T* over all
 // thresholds of the sweep and one step beyond them.
 package resample

@@ -34,6 +34,8 @@ type target struct {
 	gap      float64 // E, the sample's
 	binomial float64 // p̃(1-p̃), the sample's
 	least    float64 // floor of V*: 0.05 n SE²
+	below    float64 // what people unseen add to V*, where the resample's gap is above the sample's
+	above    float64 // and where it is below
 }
 
 // powers of a distinct score in standard units.
@@ -54,7 +56,8 @@ func newStudy(plan Plan, d drawer) *study {
 		p := e.Shrunk()
 		for _, w := range plan.Weights {
 			se := e.SE(w)
-			s.targets = append(s.targets, target{e.Gap(w), p * (1 - p), 0.05 * e.N * se * se})
+			below, above := e.Unseen(w)
+			s.targets = append(s.targets, target{e.Gap(w), p * (1 - p), 0.05 * e.N * se * se, below, above})
 			s.region = append(s.region, newLargest(k))
 		}
 	}
@@ -167,6 +170,11 @@ func (s *study) judge(from, to int, sums *gap.Sums) {
 			f := fraction{d * d * e.N, e.V + e.KappaUnfloored(weight)*target.binomial}
 			if f.variance < target.least {
 				f.variance = target.least
+			}
+			if d > 0 {
+				f.variance += target.below
+			} else {
+				f.variance += target.above
 			}
 			if kept := &s.region[at]; f.square >= kept.floor*f.variance {
 				kept.offer(f.square / f.variance)

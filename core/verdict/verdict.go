@@ -55,8 +55,8 @@ const unrealistic = 100
 //
 //	n' = n (w/δ)² (1 + z_0.8/z_{1-α/2})²,
 //
-// δ the distance from the gap to the edge of the tolerance, w half the
-// interval's width; ok is false where no realistic number would do (more than
+// δ the distance from the gap to the edge of the tolerance, w that from the gap
+// to the limit which has to clear it; ok is false where no realistic number would do (more than
 // 100 n). Where the gap is inside the tolerance both edges must be cleared.
 func PeopleToSettle(t Tolerance, n int, level float64, limits func(weight float64) Limits) (more int, ok bool) {
 	needed, outside := 0.0, false
@@ -69,7 +69,11 @@ func PeopleToSettle(t Tolerance, n int, level float64, limits func(weight float6
 		}
 		l := limits(side.edge.Weight)
 		room := side.sign * (side.edge.At - l.Gap) // below zero: outside this edge
-		ratio := (l.High - l.Low) / 2 / math.Abs(room)
+		reach := l.High - l.Gap // of the limit that has to clear the edge
+		if (side.sign > 0) == (room < 0) {
+			reach = l.Gap - l.Low
+		}
+		ratio := reach / math.Abs(room)
 		switch {
 		case room < 0:
 			needed, outside = ratio*ratio, true

@@ -154,4 +154,8 @@ func TestPeopleToSettle(t *testing.T) {
 	assert.Equal(t, more, inside, "inside both edges the nearer one counts")
 	outside, _ := verdict.PeopleToSettle(both, 100, 0.95, at(0.015, -0.005, 0.035))
 	assert.Equal(t, more, outside, "outside one edge that one counts")
+	lopsided, _ := verdict.PeopleToSettle(both, 100, 0.95, at(0.005, -0.012, 0.025))
+	assert.Equal(t, more, lopsided, "the limit on the edge's side is what has to clear it")
+	lopsided, _ = verdict.PeopleToSettle(both, 100, 0.95, at(0.015, -0.005, 0.095))
+	assert.Equal(t, more, lopsided, "and outside the edge the other one")
 }

@@ -61,6 +61,34 @@ class Fit:
         D = (A + g) / (k + 1) - (g - A) / (self.n - k + 1)
         return share - w * k / self.n, share, v, w * w - 2 * w * D, k
 
+    def unseen(self, x, cells, w):
+        """What a person beyond either end of x adds to n times the variance,
+        for the lower and for the upper limit: below, above."""
+        below, above = 0.0, 0.0
+        if self.given:
+            return below, above
+        _, a, b, k, _, _ = self.tail(cells["i"], cells["d"])
+        if "j" in cells:
+            _, a2, b2, k2, _, _ = self.tail(cells["j"], cells["d2"])
+            a, b, k = a - a2, b - b2, k - k2
+        for at in places(x):
+            beyond = lambda c, strict: np.where(strict, at > c, at >= c)
+            inside = beyond(cells["c"], cells["strict"])
+            if "j" in cells:
+                inside = inside & ~beyond(cells["c2"], cells["strict2"])
+            psi = (a * (at - self.m) + b * ((at - self.m) ** 2 - self.m2) - w * (inside - k / self.n))[0]
+            below = below + np.where(psi < 0, psi**2, 0) / len(x)
+            above = above + np.where(psi > 0, psi**2, 0) / len(x)
+        return below, above
+
+
+def places(x):
+    """Where an unseen person stands below and above the scores x."""
+    x, n = np.sort(x), len(x)
+    outermost = min(max(5, -(-n // 10)), n - 1)
+    excess = lambda y: y[:outermost].mean() - y[outermost]
+    return x[0] + 24**0.25 * excess(x), x[-1] + 24**0.25 * excess(x[::-1])
+
 
 def draws(values, x, seed, rows=500):
     """Count matrices of resamples, drawn by row index."""
@@ -76,7 +104,9 @@ def run(x, cells, w, given):
     """The sample's own terms and, for each seed, T* of each cell and its sup."""
     values = np.unique(x)
     counts = np.array([[(x == v).sum() for v in values]], dtype=float)
-    E, share, v, raw, k = (q[0] for q in Fit(values, counts, given).judge(cells, w))
+    fit = Fit(values, counts, given)
+    E, share, v, raw, k = (q[0] for q in fit.judge(cells, w))
+    below, above = fit.unseen(x, cells, w)
     n = len(x)
     p = (k + 2) / (n + 4)
     spread = p * (1 - p)
@@ -88,11 +118,11 @@ def run(x, cells, w, given):
         for c in draws(values, x, seed):
             e, _, vs, ks, _ = Fit(values, c, given).judge(cells, w)
             V = np.maximum(vs + ks * spread, 0.05 * n * se2)
-            T.append(np.abs(e - E) / np.sqrt(V / n))
+            T.append(np.abs(e - E) / np.sqrt((V + np.where(e > E, below, above)) / n))
         T = np.concatenate(T)
         quantiles.append(np.quantile(T, LEVEL, axis=0))
         sup.append(np.quantile(T.max(axis=1), LEVEL))
-    return dict(E=E, share=share, v=v, kappa=kappa, k=k, se=np.sqrt(se2), q=np.array(quantiles), sup=np.array(sup))
+    return dict(E=E, share=share, v=v, kappa=kappa, k=k, se=np.sqrt(se2), se_below=np.sqrt(se2 + below / n), se_above=np.sqrt(se2 + above / n), q=np.array(quantiles), sup=np.array(sup))
 
 
 def tail_cells(values, thresholds, strict, shift):
@@ -100,7 +130,7 @@ def tail_cells(values, thresholds, strict, shift):
     side = "right" if strict else "left"
     slack = 1e-9 * max(1.0, np.abs(values).max())  # thresholds made by adding steps
     i = np.searchsorted(values, thresholds + (slack if strict else -slack), side=side)
-    return dict(i=i, d=thresholds + shift, c=thresholds)
+    return dict(i=i, d=thresholds + shift, c=thresholds, strict=np.full(len(thresholds), strict))
 
 
 def case(dataset, column, step, cutoff, side, half, w=1.0, given=None):
@@ -112,7 +142,7 @@ def case(dataset, column, step, cutoff, side, half, w=1.0, given=None):
     r = run(x, tail_cells(values, np.array([cutoff]), strict, shift), w, given)
     q = max(t, r["q"].mean())
     E, se, k = r["E"][0], r["se"][0], r["k"][0]
-    low, high = E - q * se, E + q * se
+    low, high = E - q * r["se_below"][0], E + q * r["se_above"][0]
     hull = min(k, n - k) < 10
     if hull:
         z = (cutoff + shift - (given or (x.mean(),))[0]) / (given[1] if given else x.std(ddof=1))
@@ -132,7 +162,7 @@ def case(dataset, column, step, cutoff, side, half, w=1.0, given=None):
     band = run(x, cells, w, given)
     return dict(dataset=dataset, column=column, step=step, cutoff=cutoff, side=side, half_step=half, weight=w,
                 given_mean=given and given[0], given_sd=given and given[1], level=LEVEL, replicates=REPLICATES, seeds=len(SEEDS),
-                n=n, counted=int(n - k if lower else k), difference_points=100 * E, se_points=100 * se, t=t,
+                n=n, counted=int(n - k if lower else k), difference_points=100 * E, se_points=100 * se, se_below_points=100 * r["se_below"][0], se_above_points=100 * r["se_above"][0], t=t,
                 quantile_mean=r["q"].mean(), quantile_sd=r["q"].std(ddof=1), q=q, takes_hull=bool(hull), low_points=100 * low, high_points=100 * high,
                 band_thresholds=len(cells["i"]), band_q_mean=band["sup"].mean(), band_q_sd=band["sup"].std(ddof=1))
 
@@ -143,12 +173,13 @@ def stretch(dataset, column, step, start, stop, half):
     shift = step / 2 if half else 0.0
     lo = tail_cells(values, np.array([start]), False, -shift)
     hi = tail_cells(values, np.array([stop]), True, shift)
-    r = run(x, dict(lo, j=hi["i"], d2=hi["d"], c2=hi["c"]), 1.0, None)
+    r = run(x, dict(lo, j=hi["i"], d2=hi["d"], c2=hi["c"], strict2=hi["strict"]), 1.0, None)
     t = t_quantile(LEVEL, len(x) - 1)
     q, E, se = max(t, r["q"].mean()), r["E"][0], r["se"][0]
+    low, high = E - q * r["se_below"][0], E + q * r["se_above"][0]
     return {"dataset": dataset, "column": column, "step": step, "from": start, "to": stop, "half_step": half, "level": LEVEL, "replicates": REPLICATES,
             "seeds": len(SEEDS), "n": len(x), "counted": int(r["k"][0]), "gap_points": 100 * E, "se_points": 100 * se, "t": t,
-            "quantile_mean": r["q"].mean(), "quantile_sd": r["q"].std(ddof=1), "q": q, "low_points": 100 * (E - q * se), "high_points": 100 * (E + q * se)}
+            "quantile_mean": r["q"].mean(), "quantile_sd": r["q"].std(ddof=1), "q": q, "low_points": 100 * low, "high_points": 100 * high}
 
 
 CASES = [
