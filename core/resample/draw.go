@@ -28,47 +28,75 @@ func newDrawer(counts sample.Counts) drawer {
 }
 
 // draw fills into with a resample's counts of the distinct scores.
-func (d drawer) draw(r *stream, into []int32) {
-	if d.rows == nil {
+func (d *drawer) draw(r *stream, into []int32) {
+	switch {
+	case d.rows == nil:
 		d.drawBinomials(r, into)
-		return
-	}
-	clear(into)
-	// Lemire's (2019) multiply-shift with rejection, so that everyone has the
-	// same chance; four draws from each 64 bits where 16 are enough for one.
-	n, left := uint32(len(d.rows)), len(d.rows)
-	if n > 1<<12 {
-		reject := uint32((1 << 32) % uint64(n))
-		for left > 0 {
-			random := r.Uint64()
-			left = d.take(random>>32, uint64(n), 32, reject, into, left)
-			left = d.take(random&0xffffffff, uint64(n), 32, reject, into, left)
-		}
-		return
-	}
-	reject := uint32((1 << 16) % n)
-	for left > 0 {
-		random := r.Uint64()
-		left = d.take(random>>48, uint64(n), 16, reject, into, left)
-		left = d.take(random>>32&0xffff, uint64(n), 16, reject, into, left)
-		left = d.take(random>>16&0xffff, uint64(n), 16, reject, into, left)
-		left = d.take(random&0xffff, uint64(n), 16, reject, into, left)
+	case len(d.rows) > 1<<12:
+		drawPeople(r, d.rows, into)
+	default:
+		drawFewPeople(r, d.rows, into)
 	}
 }
 
-// take draws one person from so many random bits, unless they are rejected
-// or nobody is left to draw.
-func (d *drawer) take(random, n uint64, bits uint, reject uint32, into []int32, left int) int {
-	product := random * n
-	if uint32(product&(1<<bits-1)) < reject || left == 0 {
-		return left
+// drawPeople draws as many rows as there are, with replacement, by Lemire's
+// (2019) multiply-shift with rejection, so that everyone has the same chance.
+func drawPeople(r *stream, rows []uint32, into []int32) {
+	clear(into)
+	n := uint64(len(rows))
+	reject := (1 << 32) % n
+	for range rows {
+		product := (r.Uint64() >> 32) * n
+		for product&0xffffffff < reject {
+			product = (r.Uint64() >> 32) * n
+		}
+		into[rows[product>>32]]++
 	}
-	into[d.rows[product>>bits]]++
-	return left - 1
+}
+
+// drawFewPeople does the same with four draws from each 64 bits, of which 16
+// are enough for one. This is the innermost loop of most answers, and calls
+// and memory are slow in WebAssembly: so it is written out, and keeps the
+// stream in its hands.
+func drawFewPeople(r *stream, rows []uint32, into []int32) {
+	clear(into)
+	state := *r
+	left, n := len(rows), uint32(len(rows))
+	reject := (1 << 16) % n
+	var random uint64
+	for left >= 4 {
+		random, state = state.next()
+		first, second := uint32(random>>48)*n, uint32(random>>32&0xffff)*n
+		third, fourth := uint32(random>>16&0xffff)*n, uint32(random&0xffff)*n
+		if first&0xffff >= reject {
+			into[rows[first>>16]]++
+			left--
+		}
+		if second&0xffff >= reject {
+			into[rows[second>>16]]++
+			left--
+		}
+		if third&0xffff >= reject {
+			into[rows[third>>16]]++
+			left--
+		}
+		if fourth&0xffff >= reject {
+			into[rows[fourth>>16]]++
+			left--
+		}
+	}
+	for left > 0 {
+		random, state = state.next()
+		if product := uint32(random>>48) * n; product&0xffff >= reject {
+			into[rows[product>>16]]++
+			left--
+		}
+	}
+	*r = state
 }
 
 // drawBinomials draws a multinomial as binomials, each conditional on those before.
-func (d drawer) drawBinomials(r *stream, into []int32) {
+func (d *drawer) drawBinomials(r *stream, into []int32) {
 	people, left := d.counts.N, d.counts.N
 	for i, count := range d.counts.Count {
 		drawn := 0
