@@ -40,7 +40,7 @@ func (w *work) result() Result {
 		r.Sweeps = append(r.Sweeps, w.sweep(sweep))
 	}
 	r.Worst = worst(r.Sweeps, w.scale.Step > 0)
-	r.Shape = w.shape(r)
+	r.Shape = w.shape(r.Cutoffs)
 	r.Warnings = w.warnings()
 	return r
 }

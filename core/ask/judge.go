@@ -31,11 +31,11 @@ func Judge(ctx context.Context, question Question, from sample.Sample, progress 
 		Format: AnswerFormat, Program: Program, Demo: from.Demo, Question: question,
 		Warnings: []string{}, Suppressed: []string{}, Results: []Result{},
 	}
-	total := len(from.Columns) * question.Replicates
+	each := question.Replicates + question.shapeReplicates()
 	for i, column := range from.Columns {
 		report := func(done int) {
 			if progress != nil {
-				progress(i*question.Replicates+done, total)
+				progress(i*each+done, len(from.Columns)*each)
 			}
 		}
 		result, err := judgeColumn(ctx, question, column, report)
@@ -59,6 +59,9 @@ func judgeColumn(ctx context.Context, question Question, column sample.Column, r
 		return Result{}, err
 	}
 	if err := w.run(ctx, report); err != nil {
+		return Result{}, err
+	}
+	if err := w.find(ctx, func(done int) { report(question.Replicates + done) }); err != nil {
 		return Result{}, err
 	}
 	return w.result(), nil

@@ -9,6 +9,7 @@ import (
 	"tailgap/core/gap"
 	"tailgap/core/resample"
 	"tailgap/core/sample"
+	"tailgap/core/shape"
 	"tailgap/core/verdict"
 )
 
@@ -26,6 +27,8 @@ type work struct {
 	sweeps    []sweepPlan
 	quantiles resample.Quantiles
 	t         float64 // Student's t at the question's level
+	found     shape.Findings
+	tested    shape.Tests
 }
 
 // key tells regions apart; one-sided regions have no To.
@@ -53,9 +56,9 @@ func newWork(question Question, column sample.Column) (*work, error) {
 	if err != nil {
 		return nil, err
 	}
-	shape := curve.FitNormal(moments)
+	normal := curve.FitNormal(moments)
 	if given := question.Curve; given != nil {
-		shape = curve.Normal{Mean: given.Mean, SD: given.SD}
+		normal = curve.Normal{Mean: given.Mean, SD: given.SD}
 	}
 	heads := 0.0
 	if question.Heads != nil {
@@ -63,7 +66,7 @@ func newWork(question Question, column sample.Column) (*work, error) {
 	}
 	w := &work{
 		question: question, column: column,
-		table:     gap.NewTable(counts, moments, shape),
+		table:     gap.NewTable(counts, moments, normal),
 		scale:     sample.NewScale(counts, moments.SD, question.Step, question.Range),
 		tolerance: verdict.NewTolerance(question.TooHigh, question.TooLow, heads),
 		known:     map[key]int{},

@@ -70,7 +70,8 @@ type ShapeAt struct {
 	Extremes *Effect `json:"extremes"`
 	Farthest *Effect `json:"farthest"` // no interval: one score is what it is
 
-	Quantile *float64 `json:"quantile"` // where the cutoff parts the worm; null where all people are on one side of it
+	Quantile   *float64 `json:"quantile"`    // where the cutoff parts the worm; null where all people are on one side of it
+	QuantileTo *float64 `json:"quantile_to"` // likewise the upper end of a stretch
 }
 
 // Effect is so many points of a gap, above zero where they make the curve too
@@ -104,26 +105,13 @@ type Lilliefors struct {
 }
 
 // Worm is a worm plot (van Buuren & Fredriks 2001): for each distinct score,
-// or a few hundred of them, how many SDs it lies above (below: minus) the
-// score that the curve expects at its rank, whose standard score is Quantile.
-// Low and High are pointwise limits for a score that is normal, null when
-// everyone was counted.
+// or 300 of them, how many of the curve's SDs it lies above (below: minus) the
+// score that the curve expects at its place among the people, and that one's
+// standard score, Quantile. A score of the curve's own lies within Limit,
+// pointwise, at the question's level; null when everyone was counted.
 type Worm struct {
 	Score     []float64 `json:"score"`
 	Quantile  []float64 `json:"quantile"`
 	Deviation []float64 `json:"deviation"`
-	Low       []float64 `json:"low"`
-	High      []float64 `json:"high"`
-}
-
-// shape is what the shape of the scores does to the gaps.
-func (w *work) shape(r Result) *Shape {
-	s := &Shape{
-		Skewness: Measured{Value: r.Sample.Skewness}, ExcessKurtosis: Measured{Value: r.Sample.ExcessKurtosis},
-		Cutoffs: []ShapeAt{},
-	}
-	for _, f := range r.Cutoffs {
-		s.Cutoffs = append(s.Cutoffs, ShapeAt{Cutoff: f.Cutoff, GapPoints: f.GapPoints})
-	}
-	return s
+	Limit     []float64 `json:"limit"`
 }

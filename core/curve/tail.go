@@ -45,3 +45,23 @@ func scaledErfcFar(x float64) float64 {
 		(((((y+2.56852019228982242)*y+1.87295284992346725)*y+5.27905102951428412e-1)*y+6.05183413124413191e-2)*y + 2.33520497626869185e-3)
 	return (1/1.7724538509055160273 - r) / x
 }
+
+// LogTail is the logarithm of the share of a standard normal curve at or
+// beyond z. It has all its digits far into either tail, where the share itself
+// can't be written or is 1.
+func LogTail(z float64) float64 {
+	x := z * (1 / math.Sqrt2)
+	switch {
+	case x < 0:
+		return math.Log1p(-UpperTail(-z))
+	case x <= 0.46875:
+		return math.Log(0.5 - 0.5*x*erfNearZero(x*x))
+	case x <= 4:
+		return math.Log(0.5*scaledErfcMiddle(x)) - x*x
+	}
+	return math.Log(0.5*scaledErfcFar(x)) - x*x
+}
+
+// Quantile is the z beyond which lies that share of a standard normal curve:
+// the z with UpperTail(z) = share, for a share in (0,1).
+func Quantile(share float64) float64 { return math.Sqrt2 * math.Erfcinv(2*share) }

@@ -66,3 +66,16 @@ func step(point, mean float64) float64 {
 	}
 	return 0
 }
+
+// Share is the curve's share.
+func (c *Reading) Share() float64 { return c.share }
+
+// Less is the difference of two readings, whichever is larger.
+func (c *Reading) Less(other *Reading, s *Sums) Reading {
+	d := Reading{share: c.share - other.share, a: c.a - other.a, b: c.b - other.b}
+	d.v = s.variance(d.a, d.b)
+	return d
+}
+
+// Variance is n times the variance of the share; 0 for a given curve.
+func (c *Reading) Variance() float64 { return c.v }

@@ -1,0 +1,134 @@
+package shape
+
+import (
+	"context"
+	"math"
+	"runtime"
+	"sync/atomic"
+
+	"tailgap/core/resample"
+)
+
+// Run finds the features of the plan's sample and splits the gap at each
+// cutoff. It returns the context's error soon after the context ends, having
+// stopped all its goroutines. progress, which may be nil, is called from the
+// calling goroutine with the number of replicates done.
+func Run(ctx context.Context, plan Plan, progress func(done int)) (Findings, error) {
+	features := Find(plan.Table, plan.Scale)
+	scores := newSpans(plan.fitted(), plan.Scale.Step)
+	whole := newEvaluator(&plan, scores, features)
+	count := make([]int32, len(plan.Table.Counts.Count))
+	for i, people := range plan.Table.Counts.Count {
+		count[i] = int32(people)
+	}
+	estimates := values{cutoffs: make([]parts, len(plan.Cutoffs))}
+	whole.evaluate(&plan, count, &estimates)
+	if plan.Everyone || ctx.Err() != nil {
+		return assemble(&plan, features, &estimates, nil, scores.bins), ctx.Err()
+	}
+	if len(count) > mostEntries {
+		scores = scores.binned(whole.edges())
+	}
+	features.Outlier = false // one score has no interval
+	replicates, err := draw(ctx, &plan, func() *evaluator { return newEvaluator(&plan, scores, features) }, progress)
+	if err != nil {
+		return Findings{}, err
+	}
+	return assemble(&plan, whole.features, &estimates, replicates, scores.bins), nil
+}
+
+// edges are the entries at which something begins that is counted.
+func (e *evaluator) edges() []int {
+	var at []int
+	for _, r := range e.regions {
+		at = append(at, r.judged.From, r.judged.To)
+	}
+	counts := e.table.Counts
+	for _, pile := range []float64{e.features.Floor.Score, e.features.Ceiling.Score} {
+		at = append(at, counts.IndexAtLeast(pile), counts.IndexAbove(pile))
+	}
+	return at
+}
+
+// blockSize is how many replicates share one stream of random numbers.
+const blockSize = 50
+
+// ownStream keeps the numbers drawn here apart from those of the intervals of
+// the gaps, which have the same seed.
+const ownStream = 0x5368617065 // any number but 0
+
+// draw evaluates the replicates. Those without a spread are left out.
+func draw(ctx context.Context, plan *Plan, newEvaluator func() *evaluator, progress func(done int)) ([]values, error) {
+	all := make([]values, plan.Replicates)
+	drawn := make([]bool, plan.Replicates)
+	workers := plan.Workers
+	if workers <= 0 {
+		workers = runtime.GOMAXPROCS(0)
+	}
+	workers = min(workers, (plan.Replicates+blockSize-1)/blockSize)
+	var next atomic.Int64
+	type report struct {
+		done    int
+		ended   bool
+		failure any
+	}
+	reports := make(chan report, workers)
+	first := newEvaluator()
+	drawer := resample.NewDrawer(first.table.Counts)
+	work := func(e *evaluator) {
+		defer func() { reports <- report{ended: true, failure: recover()} }()
+		var stream resample.Stream
+		count := make([]int32, len(e.table.U))
+		for {
+			block := int(next.Add(1)) - 1
+			from, to := block*blockSize, min((block+1)*blockSize, plan.Replicates)
+			if from >= to {
+				return
+			}
+			stream.Restart(plan.Seed^ownStream, block)
+			for i := from; i < to; i++ {
+				if ctx.Err() != nil {
+					return
+				}
+				drawer.Draw(&stream, count)
+				all[i].cutoffs = make([]parts, len(plan.Cutoffs))
+				drawn[i] = e.evaluate(plan, count, &all[i])
+			}
+			reports <- report{done: to - from}
+		}
+	}
+	go work(first)
+	for range workers - 1 {
+		go work(newEvaluator())
+	}
+	var failure any
+	for done := 0; workers > 0; {
+		r := <-reports
+		switch {
+		case r.ended:
+			workers--
+			if r.failure != nil {
+				failure = r.failure
+			}
+		case progress != nil:
+			done += r.done
+			progress(done)
+		}
+	}
+	if failure != nil {
+		panic(failure) // here the caller can recover it
+	}
+	kept := all[:0]
+	for i := range all {
+		if drawn[i] {
+			kept = append(kept, all[i])
+		}
+	}
+	return kept, ctx.Err()
+}
+
+// usable is the share of the replicates that must have a value for it to get
+// an interval.
+const usable = 0.9
+
+func (p *Plan) enough(n int) bool { return float64(n) >= math.Max(2, usable*float64(p.Replicates)) }
