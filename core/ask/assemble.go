@@ -1,7 +1,6 @@
 package ask
 
 import (
-	"context"
 	"math"
 
 	"tailgap/core/cutoff"
@@ -9,17 +8,6 @@ import (
 	"tailgap/core/resample"
 	"tailgap/core/verdict"
 )
-
-// run draws the replicates, unless everyone was counted: then every gap is
-// exact.
-func (w *work) run(ctx context.Context, report func(done int)) error {
-	if w.question.Everyone {
-		return ctx.Err()
-	}
-	var err error
-	w.quantiles, err = resample.Run(ctx, w.plan, report)
-	return err
-}
 
 // shown is one region as an answer shows it: upper tail or stretch, or the
 // complement of an upper tail where the side is lower.

@@ -10,7 +10,7 @@ import (
 )
 
 // Progress is told how much of the work is done; it may be nil. It is called
-// from the goroutine that called Judge.
+// from the goroutine that called Judge, never goes back, and ends at the total.
 type Progress func(done, total int)
 
 // Judge answers the question on the sample: for each score column the gap at
@@ -20,6 +20,13 @@ type Progress func(done, total int)
 // refuses, a column without a score, with one person or without any spread;
 // or the context's error when it ends first.
 func Judge(ctx context.Context, question Question, from sample.Sample, progress Progress) (Answer, error) {
+	return JudgeWith(ctx, question, from, progress, nil)
+}
+
+// JudgeWith is Judge with the replicates made by the runner; with nil it makes
+// them itself. The answer is the same. A runner's error is returned as it is,
+// and so is one for parts that are not the question's.
+func JudgeWith(ctx context.Context, question Question, from sample.Sample, progress Progress, runner Runner) (Answer, error) {
 	question = question.filled()
 	if err := question.Check(); err != nil {
 		return Answer{}, err
@@ -32,13 +39,9 @@ func Judge(ctx context.Context, question Question, from sample.Sample, progress 
 		Warnings: []string{}, Suppressed: []string{}, Results: []Result{},
 	}
 	each := question.Replicates + question.shapeReplicates()
+	meter := newMeter(progress, len(from.Columns)*each)
 	for i, column := range from.Columns {
-		report := func(done int) {
-			if progress != nil {
-				progress(i*each+done, len(from.Columns)*each)
-			}
-		}
-		result, err := judgeColumn(ctx, question, column, report)
+		result, err := judgeColumn(ctx, question, column, i, runner, meter.from(i*each))
 		if err != nil {
 			return Answer{}, err
 		}
@@ -53,17 +56,19 @@ func Judge(ctx context.Context, question Question, from sample.Sample, progress 
 	return answer, nil
 }
 
-func judgeColumn(ctx context.Context, question Question, column sample.Column, report func(done int)) (Result, error) {
+func judgeColumn(ctx context.Context, question Question, column sample.Column, index int, runner Runner, report func(done int)) (Result, error) {
 	w, err := newWork(question, column)
 	if err != nil {
 		return Result{}, err
 	}
-	if err := w.run(ctx, report); err != nil {
+	if err := w.run(ctx, index, runner, report); err != nil {
 		return Result{}, err
 	}
+	report(question.Replicates)
 	if err := w.find(ctx, func(done int) { report(question.Replicates + done) }); err != nil {
 		return Result{}, err
 	}
+	report(question.Replicates + question.shapeReplicates())
 	return w.result(), nil
 }
 

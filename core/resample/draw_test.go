@@ -104,16 +104,20 @@ func TestLargestIsTheOrderStatistic(t *testing.T) {
 		values := rapid.SliceOfN(rapid.Float64Range(0, 5), 1, 300).Draw(t, "values")
 		k := rapid.IntRange(1, len(values)).Draw(t, "k")
 		parts := rapid.IntRange(1, 4).Draw(t, "parts")
-		kept := make([]*largest, parts)
+		kept := make([]largest, parts)
 		for i := range kept {
-			l := newLargest(k)
-			kept[i] = &l
+			kept[i] = newLargest(k)
 		}
 		for i, value := range values {
 			kept[i%parts].offer(value)
 		}
+		all := newLargest(k)
+		for i := range kept {
+			kept[i].shrink()
+			all.offerAll(kept[i].values)
+		}
 		sorted := slices.Sorted(slices.Values(values))
-		assert.Equal(t, sorted[len(sorted)-k], kth(kept))
+		assert.Equal(t, sorted[len(sorted)-k], all.least())
 	})
 }
 

@@ -27,6 +27,12 @@ func (l *largest) offer(x float64) {
 	l.values = append(l.values, x)
 }
 
+func (l *largest) offerAll(values []float64) {
+	for _, x := range values {
+		l.offer(x)
+	}
+}
+
 // shrink keeps the k largest, the smallest of them first.
 func (l *largest) shrink() {
 	if len(l.values) <= l.k {
@@ -39,21 +45,12 @@ func (l *largest) shrink() {
 	l.floor = l.values[0]
 }
 
-// kth is the k-th largest of everything offered to all parts; fewer than k
-// values in all is a mistake of the caller.
-func kth(parts []*largest) float64 {
-	all := newLargest(parts[0].k)
-	for _, part := range parts {
-		for _, x := range part.values {
-			all.offer(x)
-		}
-	}
-	if len(all.values) > all.k {
-		all.shrink()
-		return all.values[0]
-	}
-	selectNth(all.values, 0)
-	return all.values[0]
+// least is the k-th largest of everything offered; to have offered fewer is a
+// mistake of the caller.
+func (l *largest) least() float64 {
+	l.shrink()
+	selectNth(l.values, 0)
+	return l.values[0]
 }
 
 // selectNth reorders x so that x[n] is the value it would have if x were

@@ -19,6 +19,7 @@ package resample
 
 import (
 	"context"
+	"fmt"
 	"math"
 	"runtime"
 	"sync/atomic"
@@ -52,16 +53,47 @@ type Quantiles struct {
 // of what a seed means, so that changing it changes every answer slightly.
 const blockSize = 64
 
+// Blocks is how many blocks the replicates are made in: what RunBlocks makes
+// ranges of.
+func (p Plan) Blocks() int { return (p.Replicates + blockSize - 1) / blockSize }
+
+// replicates is how many replicates are in the blocks from (in) to (out).
+func (p Plan) replicates(from, to int) int {
+	return max(0, min(to*blockSize, p.Replicates)-from*blockSize)
+}
+
 // Run draws the replicates and returns their quantiles. It returns the
 // context's error soon after the context ends (within one replicate), having
-// stopped all its goroutines. progress, which may be nil, is called from the
-// calling goroutine with the number of replicates done.
+// stopped all its goroutines, and an error where a replicate's gap is not a
+// number. progress, which may be nil, is called from the calling goroutine
+// with the number of replicates done.
 func Run(ctx context.Context, plan Plan, progress func(done int)) (Quantiles, error) {
-	studies := newStudies(plan)
+	whole, err := runBlocks(ctx, plan, 0, plan.Blocks(), progress)
+	if err != nil {
+		return Quantiles{}, err
+	}
+	return merge(plan, []Part{whole}), nil
+}
+
+// RunBlocks draws the replicates of the blocks from (in) to (out), as Run
+// does, and returns what Merge makes quantiles of. Besides the context's error
+// it returns one for blocks that the plan doesn't have.
+func RunBlocks(ctx context.Context, plan Plan, from, to int, progress func(done int)) (Part, error) {
+	if from < 0 || to < from || to > plan.Blocks() {
+		return Part{}, fmt.Errorf("there are no blocks %d to %d of %d", from, to, plan.Blocks())
+	}
+	part, err := runBlocks(ctx, plan, from, to, progress)
+	part.plan = plan.fingerprint()
+	return part, err
+}
+
+func runBlocks(ctx context.Context, plan Plan, from, to int, progress func(done int)) (Part, error) {
+	studies := newStudies(plan, to-from)
 	reports := make(chan report, len(studies))
-	var next atomic.Int64
+	next := atomic.Int64{}
+	next.Store(int64(from))
 	for _, s := range studies {
-		go s.work(ctx, &next, reports)
+		go s.work(ctx, &next, to, reports)
 	}
 	var failure any
 	done := 0
@@ -83,51 +115,29 @@ func Run(ctx context.Context, plan Plan, progress func(done int)) (Quantiles, er
 		panic(failure) // here the caller can recover it
 	}
 	if err := ctx.Err(); err != nil {
-		return Quantiles{}, err
+		return Part{}, err
 	}
-	return merge(plan, studies), nil
+	return newPart(plan, from, to, studies)
 }
 
-// newStudies splits the plan over its workers, or one for each core.
-func newStudies(plan Plan) []*study {
+// newStudies splits so many blocks over the plan's workers, or one for each
+// core.
+func newStudies(plan Plan, blocks int) []*study {
 	workers := plan.Workers
 	if workers <= 0 {
 		workers = runtime.GOMAXPROCS(0)
 	}
 	drawer := newDrawer(plan.Table.Counts)
-	studies := make([]*study, min(workers, plan.blocks()))
+	studies := make([]*study, min(workers, blocks))
 	for i := range studies {
 		studies[i] = newStudy(plan, drawer)
 	}
 	return studies
 }
 
-func (p *Plan) blocks() int { return (p.Replicates + blockSize - 1) / blockSize }
-
 // upperRank is how many of the largest of b replicates to keep so that the
 // smallest kept is their quantile: the value of rank ⌈(b+1)·level⌉.
 func upperRank(b int, level float64) int {
 	rank := int(math.Ceil(float64(b+1)*level - 1e-9))
 	return b - min(max(rank, 1), b) + 1
-}
-
-func merge(plan Plan, studies []*study) Quantiles {
-	collect := func(count int, of func(s *study, i, w int) *largest) [][]float64 {
-		all := make([][]float64, count)
-		parts := make([]*largest, len(studies))
-		for i := range all {
-			all[i] = make([]float64, len(plan.Weights))
-			for w := range all[i] {
-				for s, each := range studies {
-					parts[s] = of(each, i, w)
-				}
-				all[i][w] = math.Sqrt(kth(parts))
-			}
-		}
-		return all
-	}
-	return Quantiles{
-		Region: collect(len(plan.Regions), func(s *study, i, w int) *largest { return &s.region[i*len(plan.Weights)+w] }),
-		Group:  collect(len(plan.Groups), func(s *study, i, w int) *largest { return &s.group[i*len(plan.Weights)+w] }),
-	}
 }

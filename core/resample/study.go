@@ -72,6 +72,15 @@ func newStudy(plan Plan, d drawer) *study {
 	return s
 }
 
+// largest is what is kept for one of the plan's places: those of the regions
+// first, then those of the groups.
+func (s *study) largest(place int) *largest {
+	if place < len(s.region) {
+		return &s.region[place]
+	}
+	return &s.group[place-len(s.region)]
+}
+
 // point is the index of the point, which is added when it is new.
 func (s *study) point(p gap.Point, known map[gap.Point]int) int {
 	index, seen := known[p]
@@ -91,17 +100,16 @@ type report struct {
 	failure any
 }
 
-// work takes blocks of replicates, the next that nobody has taken, until there
-// are no more or the context ends.
-func (s *study) work(ctx context.Context, next *atomic.Int64, reports chan<- report) {
+// work takes blocks of replicates, the next that nobody has taken, until they
+// come to the end or the context ends.
+func (s *study) work(ctx context.Context, next *atomic.Int64, end int, reports chan<- report) {
 	defer func() { reports <- report{ended: true, failure: recover()} }()
 	for {
 		block := int(next.Add(1)) - 1
-		size := min(blockSize, s.plan.Replicates-block*blockSize)
-		if size <= 0 || !s.block(ctx, block, size) {
+		if block >= end || !s.block(ctx, block, s.plan.replicates(block, block+1)) {
 			return
 		}
-		reports <- report{done: size}
+		reports <- report{done: s.plan.replicates(block, block+1)}
 	}
 }
 

@@ -1,0 +1,144 @@
+package resample
+
+import (
+	"context"
+	"math/rand/v2"
+	"slices"
+	"testing"
+
+	"github.com/stretchr/testify/assert"
+	"github.com/stretchr/testify/require"
+	"pgregory.net/rapid"
+)
+
+// split cuts the plan's blocks at places drawn by rapid, some of them equal.
+func split(t *rapid.T, plan Plan) (ends []int) {
+	ends = rapid.SliceOfN(rapid.IntRange(0, plan.Blocks()), 0, 5).Draw(t, "ends")
+	ends = append(ends, 0, plan.Blocks())
+	slices.Sort(ends)
+	return ends
+}
+
+func mustRunBlocks(t require.TestingT, plan Plan, from, to int) Part {
+	part, err := RunBlocks(context.Background(), plan, from, to, nil)
+	require.NoError(t, err)
+	return part
+}
+
+// Any split of the blocks over parts, and of each part over workers, gives
+// what one run gives; also when the parts went through bytes.
+func TestPartsMergeIntoTheRun(t *testing.T) {
+	few := planFor(wholeNumbers(100), 1)
+	rapid.Check(t, func(t *rapid.T) {
+		plan := few
+		plan.Replicates = rapid.IntRange(200, 900).Draw(t, "replicates")
+		plan.Level = rapid.SampledFrom([]float64{0.5, 0.9, 0.95, 0.99}).Draw(t, "level")
+		plan.Weights = []float64{1, 1.2}
+		want, err := Run(context.Background(), plan, nil)
+		require.NoError(t, err)
+
+		ends := split(t, plan)
+		var parts []Part
+		for i := range len(ends) - 1 {
+			plan.Workers = rapid.IntRange(1, 3).Draw(t, "workers")
+			data, err := mustRunBlocks(t, plan, ends[i], ends[i+1]).MarshalBinary()
+			require.NoError(t, err)
+			var part Part
+			require.NoError(t, part.UnmarshalBinary(data))
+			parts = append(parts, part)
+		}
+		rand.Shuffle(len(parts), func(i, j int) { parts[i], parts[j] = parts[j], parts[i] })
+		got, err := Merge(plan, parts)
+		require.NoError(t, err)
+		assert.Equal(t, want, got)
+	})
+}
+
+func TestMergeRefusesWhatDoesNotFit(t *testing.T) {
+	plan := planFor(wholeNumbers(100), 1)
+	plan.Replicates = 640
+	require.Equal(t, 10, plan.Blocks())
+	first, second := mustRunBlocks(t, plan, 0, 4), mustRunBlocks(t, plan, 4, 10)
+	_, err := Merge(plan, []Part{second, first})
+	require.NoError(t, err)
+
+	other := func(change func(p *Plan)) Part {
+		p := plan
+		change(&p)
+		return mustRunBlocks(t, p, 4, 10)
+	}
+	short := second
+	short.kept = slices.Clone(short.kept)
+	short.kept[3] = short.kept[3][1:]
+	for name, c := range map[string]struct {
+		parts []Part
+		error string
+	}{
+		"none":             {nil, "0 of the 10 blocks"},
+		"one missing":      {[]Part{first}, "4 of the 10 blocks"},
+		"a gap":            {[]Part{first, mustRunBlocks(t, plan, 5, 10)}, "every one of the 10 blocks"},
+		"an overlap":       {[]Part{first, mustRunBlocks(t, plan, 3, 10)}, "every one of the 10 blocks"},
+		"twice":            {[]Part{first, second, second}, "every one of the 10 blocks"},
+		"another seed":     {[]Part{first, other(func(p *Plan) { p.Seed++ })}, "other replicates"},
+		"another level":    {[]Part{first, other(func(p *Plan) { p.Level = 0.9 })}, "other replicates"},
+		"other weights":    {[]Part{first, other(func(p *Plan) { p.Weights = []float64{1.1} })}, "other replicates"},
+		"more replicates":  {[]Part{first, other(func(p *Plan) { p.Replicates++ })}, "other replicates"},
+		"other people":     {[]Part{first, other(func(p *Plan) { *p = planFor(wholeNumbers(101), 1); p.Replicates = 640 })}, "other replicates"},
+		"another place":    {[]Part{first, other(func(p *Plan) { p.Regions = slices.Clone(p.Regions); p.Regions[2] = p.Regions[3] })}, "other replicates"},
+		"a part cut short": {[]Part{first, short}, "other replicates"},
+		"an empty part":    {[]Part{first, second, {}}, "other replicates"},
+	} {
+		_, err := Merge(plan, c.parts)
+		assert.ErrorContains(t, err, c.error, name)
+	}
+	for _, blocks := range [][2]int{{-1, 3}, {4, 3}, {0, 11}} {
+		_, err := RunBlocks(context.Background(), plan, blocks[0], blocks[1], nil)
+		assert.ErrorContains(t, err, "of 10", blocks)
+	}
+}
+
+// What is read from bytes is written as the same bytes, and never more is
+// taken into memory than the bytes hold.
+func FuzzPart(f *testing.F) {
+	plan := planFor(wholeNumbers(10), 1)
+	plan.Replicates, plan.Level = 200, 0.99
+	whole, err := mustRunBlocks(f, plan, 0, plan.Blocks()).MarshalBinary()
+	require.NoError(f, err)
+	f.Add(whole)
+	f.Add(whole[:partHeader])
+	f.Add([]byte{})
+	f.Fuzz(func(t *testing.T, data []byte) {
+		var part Part
+		if part.UnmarshalBinary(data) != nil {
+			return
+		}
+		again, err := part.MarshalBinary()
+		require.NoError(t, err)
+		assert.Equal(t, data, again)
+		if _, err := Merge(plan, []Part{part}); err == nil {
+			assert.Equal(t, part.plan, plan.fingerprint())
+		}
+	})
+}
+
+func TestPartsRefuseOtherBytes(t *testing.T) {
+	plan := planFor(wholeNumbers(10), 1)
+	plan.Replicates, plan.Level = 200, 0.99
+	good, err := mustRunBlocks(t, plan, 0, 2).MarshalBinary()
+	require.NoError(t, err)
+	for name, change := range map[string]func(data []byte) []byte{
+		"nothing":           func([]byte) []byte { return nil },
+		"another format":    func(data []byte) []byte { data[7]++; return data },
+		"cut short":         func(data []byte) []byte { return data[:len(data)-1] },
+		"a value too few":   func(data []byte) []byte { return data[:len(data)-8] },
+		"more than it says": func(data []byte) []byte { return append(data, make([]byte, 8)...) },
+		"not a number":      func(data []byte) []byte { copy(data[len(data)-2:], "\xff\xff"); return data },
+		"from after to":     func(data []byte) []byte { data[16] = 3; return data },
+	} {
+		var part Part
+		assert.Error(t, part.UnmarshalBinary(change(slices.Clone(good))), name)
+		assert.Equal(t, Part{}, part, name)
+	}
+	_, err = Part{}.MarshalBinary()
+	assert.Error(t, err)
+}
