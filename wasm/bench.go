@@ -5,6 +5,7 @@ import (
 	"context"
 	"encoding/json"
 	"errors"
+	"io"
 	"slices"
 	"time"
 
@@ -38,7 +39,7 @@ func (b *bench) serve(r request, post func(reply)) reply {
 		}
 		switch r.Kind {
 		case askColumns:
-			return intake.Columns(b.source(), r.Header)
+			return intake.Columns(b.source(nil), r.Header)
 		case askAnswer:
 			return b.answer(r, post)
 		}
@@ -46,8 +47,28 @@ func (b *bench) serve(r request, post func(reply)) reply {
 	})
 }
 
-func (b *bench) source() intake.Source {
-	return intake.Source{Name: b.name, Reader: bytes.NewReader(b.data)}
+// source is the file to be read; tell, which may be nil, hears how many of its
+// bytes have been.
+func (b *bench) source(tell ask.Progress) intake.Source {
+	var reader io.Reader = bytes.NewReader(b.data)
+	if tell != nil {
+		reader = &told{Reader: reader, total: len(b.data), tell: tell}
+	}
+	return intake.Source{Name: b.name, Reader: reader}
+}
+
+// told is a reader that says how far it is.
+type told struct {
+	io.Reader
+	done, total int
+	tell        ask.Progress
+}
+
+func (t *told) Read(p []byte) (int, error) {
+	n, err := t.Reader.Read(p)
+	t.done += n
+	t.tell(t.done, t.total)
+	return n, err
 }
 
 func (b *bench) answer(r request, post func(reply)) (ask.Answer, error) {
@@ -57,19 +78,19 @@ func (b *bench) answer(r request, post func(reply)) (ask.Answer, error) {
 	question := *r.Question
 	question.Workers = 1 // a browser gives a worker one thread
 	options := intake.Options{Scores: question.Scores, Missing: question.Missing, Header: question.Header}
-	if err := b.readAs(options); err != nil {
+	if err := b.readAs(options, tellProgress(r.ID, stageReading, post, time.Now)); err != nil {
 		return ask.Answer{}, unread{err}
 	}
-	return ask.Judge(context.Background(), question, b.sample, tellProgress(r.ID, post, time.Now))
+	return ask.Judge(context.Background(), question, b.sample, tellProgress(r.ID, stageJudging, post, time.Now))
 }
 
 // readAs reads the file, unless it was read in the same way before.
-func (b *bench) readAs(options intake.Options) error {
+func (b *bench) readAs(options intake.Options, tell ask.Progress) error {
 	if b.read.Scores != nil && slices.Equal(b.read.Scores, options.Scores) &&
 		slices.Equal(b.read.Missing, options.Missing) && b.read.Header == options.Header {
 		return nil
 	}
-	read, err := intake.Read([]intake.Source{b.source()}, options)
+	read, err := intake.Read([]intake.Source{b.source(tell)}, options)
 	if err != nil {
 		return err
 	}
@@ -78,18 +99,18 @@ func (b *bench) readAs(options intake.Options) error {
 	return nil
 }
 
-// tellEvery is how often progress is told: each message costs the page some
-// of its time.
-const tellEvery = 100 * time.Millisecond
+// tellEvery is how often progress is told and shown.
+const tellEvery = 50 * time.Millisecond
 
-func tellProgress(id int, post func(reply), now func() time.Time) ask.Progress {
+// tellProgress says how far a stage of a request is, now and then.
+func tellProgress(id int, stage string, post func(reply), now func() time.Time) ask.Progress {
 	told := now()
 	return func(done, total int) {
 		if now().Sub(told) < tellEvery {
 			return
 		}
 		told = now()
-		data, err := json.Marshal(progress{Done: done, Total: total})
+		data, err := json.Marshal(progress{stage, done, total})
 		if err == nil {
 			post(reply{ID: id, Kind: sayProgress, Data: data})
 		}

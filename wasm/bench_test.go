@@ -3,6 +3,8 @@ package main
 import (
 	"context"
 	"encoding/json"
+	"io"
+	"strings"
 	"testing"
 	"time"
 
@@ -25,7 +27,7 @@ func TestBenchAnswersAsTheCoreDoes(t *testing.T) {
 	got, err := r.answer()
 	require.NoError(t, err)
 
-	scores, err := intake.Read([]intake.Source{b.source()}, intake.Options{Scores: question.Scores, Missing: question.Missing})
+	scores, err := intake.Read([]intake.Source{b.source(nil)}, intake.Options{Scores: question.Scores, Missing: question.Missing})
 	require.NoError(t, err)
 	scores.Demo = true
 	want, err := ask.Judge(context.Background(), question, scores, nil)
@@ -41,7 +43,7 @@ func TestBenchAnswersAsTheCoreDoes(t *testing.T) {
 func TestProgressIsToldNowAndThen(t *testing.T) {
 	clock := time.Unix(0, 0)
 	var said []progress
-	tell := tellProgress(7, func(r reply) {
+	tell := tellProgress(7, stageJudging, func(r reply) {
 		assert.Equal(t, 7, r.ID)
 		assert.Equal(t, sayProgress, r.Kind)
 		p, err := decoded[progress](r)
@@ -52,9 +54,24 @@ func TestProgressIsToldNowAndThen(t *testing.T) {
 		clock = clock.Add(time.Millisecond)
 		tell(done, 1000)
 	}
-	require.Len(t, said, 10)
-	assert.Equal(t, progress{99, 1000}, said[0])
-	assert.Equal(t, progress{999, 1000}, said[9])
+	require.Len(t, said, 20)
+	assert.Equal(t, progress{stageJudging, 49, 1000}, said[0])
+	assert.Equal(t, progress{stageJudging, 999, 1000}, said[19])
+}
+
+func TestReadingTellsHowFarItIs(t *testing.T) {
+	b := &bench{}
+	b.hold("a.csv", []byte(strings.Repeat("7\n", 1_000_000)))
+	var done []int
+	text, err := io.ReadAll(b.source(func(bytes, total int) {
+		assert.Equal(t, 2_000_000, total)
+		done = append(done, bytes)
+	}).Reader)
+	require.NoError(t, err)
+	assert.Len(t, text, 2_000_000)
+	assert.Greater(t, len(done), 10)
+	assert.IsIncreasing(t, done[:len(done)-1])
+	assert.Equal(t, 2_000_000, done[len(done)-1])
 }
 
 func TestBenchReadsAnewOnlyWhatIsReadDifferently(t *testing.T) {

@@ -41,12 +41,15 @@ type data struct {
 // is true for the same data: two files of one name are not.
 func (a data) is(b data) bool { return a.demo == b.demo && a.file == b.file }
 
-// job is what the worker is doing.
+// fetchFile is what the page does itself: it takes a file into memory.
+const fetchFile = "fetch"
+
+// job is what is being done, by the worker unless it is fetchFile.
 type job struct {
 	id       int
 	kind     string
 	version  int   // of the question it answers
-	opens    *data // the data it looks at, for askColumns
+	opens    *data // the data it looks at, for fetchFile and askColumns
 	progress progress
 }
 
@@ -54,7 +57,8 @@ type job struct {
 // element of the page. Its methods are called on the page's one thread.
 type desk struct {
 	start func(receive func(reply)) thread    // starts a worker
-	soon  func(do func())                     // does something on the page's thread
+	soon  func(do func())                     // does something on the page's thread, and shows it
+	aside func(do func())                     // likewise, but what it changes shows itself
 	after func(wait time.Duration, do func()) // likewise, later
 
 	question ask.Question
@@ -124,7 +128,7 @@ func (d *desk) ask() {
 	d.stopped = false
 	delete(d.trouble, atWork)
 	delete(d.trouble, atRead)
-	if d.running != nil && d.running.kind == askColumns {
+	if d.running != nil && d.running.opens != nil {
 		d.waiting = true // what it opens would be lost
 		return
 	}
@@ -169,10 +173,11 @@ func (d *desk) cancel() {
 // drop ends what is running, and its worker with it.
 func (d *desk) drop() {
 	d.waiting = false
-	if d.running == nil {
+	dropped := d.running
+	d.running = nil
+	if dropped == nil || dropped.kind == fetchFile {
 		return
 	}
-	d.running = nil
 	d.worker.stop()
 	d.worker, d.holds = nil, nil
 }
@@ -184,7 +189,13 @@ func (d *desk) send(j job) {
 		of = *j.opens
 	}
 	if d.worker == nil {
-		d.worker = d.start(func(r reply) { d.soon(func() { d.heard(r) }) })
+		d.worker = d.start(func(r reply) {
+			if r.Kind == sayProgress {
+				d.aside(func() { d.heard(r) })
+			} else {
+				d.soon(func() { d.heard(r) })
+			}
+		})
 	}
 	d.lastID++
 	j.id = d.lastID
@@ -226,6 +237,11 @@ func (d *desk) heard(r reply) {
 	} else {
 		d.answered(done, r)
 	}
+	d.goOn()
+}
+
+// goOn asks the question that waits, if nothing is running any more.
+func (d *desk) goOn() {
 	if d.waiting && d.running == nil {
 		d.waiting = false
 		d.ask()
@@ -248,10 +264,24 @@ func (d *desk) answered(done job, r reply) {
 	}
 }
 
-// open looks into a file and, if it has columns, puts it on the desk in
-// place of what was there.
-func (d *desk) open(f *file) {
-	d.look(&data{name: f.name, file: f})
+// open fetches a file, looks into it and, if it has columns, puts it on the
+// desk in place of what was there. fetch does the first in its own time and
+// says what came of it.
+func (d *desk) open(name string, fetch func(fetched func(*file, error))) {
+	d.begin(&job{kind: fetchFile, opens: &data{name: name}})
+	fetching := d.running
+	fetch(func(f *file, err error) {
+		if d.running != fetching {
+			return
+		}
+		if err != nil {
+			d.running = nil
+			d.unopened(err)
+			d.goOn()
+			return
+		}
+		d.look(&data{name: name, file: f})
+	})
 }
 
 // openDemo puts the demo back on the desk with its own question.
@@ -270,16 +300,23 @@ func (d *desk) reread() {
 	if d.running != nil && d.running.opens != nil {
 		again = *d.running.opens
 	}
-	d.look(&again)
+	if d.running == nil || d.running.kind != fetchFile {
+		d.look(&again)
+	}
 	d.waiting = true
 }
 
 func (d *desk) look(at *data) {
+	d.begin(nil)
+	d.send(job{kind: askColumns, opens: at})
+}
+
+// begin makes way for a job that opens data: what it interrupts waits.
+func (d *desk) begin(j *job) {
 	unanswered := d.waiting || (d.running != nil && d.running.kind == askAnswer)
 	d.drop()
 	delete(d.trouble, atData)
-	d.waiting = unanswered
-	d.send(job{kind: askColumns, opens: at})
+	d.waiting, d.running = unanswered, j
 }
 
 // looked puts on the desk what was looked into. The question stays, whichever
@@ -287,8 +324,7 @@ func (d *desk) look(at *data) {
 func (d *desk) looked(done job, r reply) {
 	columns, err := r.columns()
 	if err != nil {
-		d.trouble[atData] = sentence(err)
-		d.waiting = d.waiting && d.ready()
+		d.unopened(err)
 		return
 	}
 	question, same := d.question, done.opens.is(d.data)
@@ -302,6 +338,12 @@ func (d *desk) looked(done job, r reply) {
 	}
 	d.waiting = false
 	d.change(question)
+}
+
+// unopened says why data can't be opened; those on the desk stay.
+func (d *desk) unopened(err error) {
+	d.trouble[atData] = sentence(err)
+	d.waiting = d.waiting && d.ready()
 }
 
 // asked is the question with the score columns that go without saying, if it

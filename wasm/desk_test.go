@@ -2,6 +2,7 @@ package main
 
 import (
 	"encoding/json"
+	"errors"
 	"testing"
 	"time"
 
@@ -56,8 +57,14 @@ func newTried() *tried {
 		return t
 	}
 	d.soon = func(do func()) { do() }
+	d.aside = d.soon
 	d.after = func(_ time.Duration, do func()) { d.later = append(d.later, do) }
 	return d
+}
+
+// open opens a file that is fetched at once.
+func (d *tried) open(f *file) {
+	d.desk.open(f.name, func(fetched func(*file, error)) { fetched(f, nil) })
 }
 
 func (d *tried) thread() *fakeThread { return d.threads[len(d.threads)-1] }
@@ -152,8 +159,8 @@ func TestDeskCancelKeepsTheLastAnswerAsOld(t *testing.T) {
 	d := newTried()
 	d.answered()
 	d.change(asking("<=10"))
-	d.thread().receive(reply{ID: d.running.id, Kind: sayProgress, Data: json.RawMessage(`{"done":3,"total":10}`)})
-	assert.Equal(t, progress{3, 10}, d.running.progress)
+	d.thread().receive(reply{ID: d.running.id, Kind: sayProgress, Data: json.RawMessage(`{"stage":"judging","done":3,"total":10}`)})
+	assert.Equal(t, progress{stageJudging, 3, 10}, d.running.progress)
 	working := d.thread()
 	d.cancel()
 	assert.True(t, working.stopped)
@@ -353,6 +360,81 @@ func TestDeskKeepsATouchedQuestionForAFile(t *testing.T) {
 	d.open(&file{name: "scores.csv"})
 	d.thread().says(twoScores, "")
 	assert.Equal(t, ask.NewQuestion().Cutoffs, d.question.Cutoffs, "the demo's own question goes with the demo")
+}
+
+// fetching is a desk that waits for a file, and how it comes.
+func fetching(d *tried) (fetched func(*file, error)) {
+	d.desk.open("scores.csv", func(f func(*file, error)) { fetched = f })
+	return fetched
+}
+
+func TestDeskFetchesAFile(t *testing.T) {
+	f := &file{name: "scores.csv"}
+	d := newTried()
+	d.answered()
+	worker := d.thread()
+	fetched := fetching(d)
+	assert.Equal(t, fetchFile, d.running.kind)
+	assert.Equal(t, "scores.csv", d.running.opens.name)
+	fetched(f, nil)
+	assert.Equal(t, askColumns, worker.last().Kind)
+	assert.Same(t, f, worker.last().with)
+	assert.False(t, worker.stopped, "it had nothing to do meanwhile")
+
+	t.Run("cancelled", func(t *testing.T) {
+		d := newTried()
+		d.answered()
+		fetched := fetching(d)
+		d.cancel()
+		assert.Nil(t, d.running)
+		assert.False(t, d.stopped, "nothing was being asked")
+		fetched(f, nil)
+		assert.Nil(t, d.running)
+		assert.True(t, d.data.demo)
+		assert.False(t, d.thread().stopped)
+		assert.False(t, d.old())
+	})
+	t.Run("cancelled, with a question that waits", func(t *testing.T) {
+		d := newTried()
+		d.answered()
+		d.change(asking("<=10"))
+		fetching(d)
+		d.cancel()
+		assert.True(t, d.stopped)
+		assert.True(t, d.old())
+	})
+	t.Run("another file meanwhile", func(t *testing.T) {
+		d := newTried()
+		d.answered()
+		late := fetching(d)
+		other := &file{name: "others.csv"}
+		d.open(other)
+		late(f, nil)
+		assert.Same(t, other, d.thread().last().with)
+		d.thread().says(twoScores, "")
+		assert.Same(t, other, d.data.file)
+	})
+	t.Run("it can't be read", func(t *testing.T) {
+		d := newTried()
+		d.answered()
+		d.change(asking("<=10"))
+		fetching(d)(nil, errors.New("the file scores.csv can't be read: it is gone"))
+		assert.Equal(t, "The file scores.csv can't be read: it is gone.", d.trouble[atData])
+		assert.Equal(t, asking("<=10"), *d.thread().last().Question, "what was interrupted is asked again")
+	})
+	t.Run("a question meanwhile", func(t *testing.T) {
+		d := newTried()
+		d.answered()
+		fetched := fetching(d)
+		q := planned("Errors")
+		q.Header = sample.HeaderYes
+		d.openQuestion(q)
+		assert.Equal(t, fetchFile, d.running.kind)
+		fetched(f, nil)
+		assert.Equal(t, sample.HeaderYes, d.thread().last().Header)
+		d.thread().says(twoScores, "")
+		assert.Equal(t, q, *d.thread().last().Question)
+	})
 }
 
 func TestDeskForgetsABadFileWhenSomethingElseIsOpened(t *testing.T) {

@@ -1,6 +1,8 @@
 package main
 
 import (
+	"errors"
+
 	"github.com/maxence-charriere/go-app/v9/pkg/app"
 
 	"tailgap/core/ask"
@@ -47,16 +49,15 @@ func (s *sheet) takePaste(e app.Event) {
 func (s *sheet) take(blob app.Value) {
 	name := blob.Get("name").String()
 	s.show(atData)
-	go func() {
-		copied, err := copied(blob)
-		s.desk.soon(func() {
+	s.desk.open(name, func(fetched func(*file, error)) {
+		go func() {
+			copied, err := copied(blob)
 			if err != nil {
-				s.desk.trouble[atData] = words.Name(name) + " can't be read: " + err.Error() + "."
-				return
+				err = errors.New("the file " + words.Name(name) + " can't be read: " + err.Error())
 			}
-			s.desk.open(&file{name: name, blob: copied})
-		})
-	}()
+			s.desk.soon(func() { fetched(&file{name: name, blob: copied}, err) })
+		}()
+	})
 }
 
 // takeText opens pasted text as a file would be opened.
@@ -65,7 +66,9 @@ func (s *sheet) takeText(text string) {
 		return
 	}
 	s.show(atData)
-	s.desk.open(&file{name: pastedName, blob: blobOf(text)})
+	s.desk.open(pastedName, func(fetched func(*file, error)) {
+		fetched(&file{name: pastedName, blob: blobOf(text)}, nil)
+	})
 }
 
 // takeQuestion opens a question file and asks it of the data on the desk.

@@ -44,11 +44,18 @@ type reply struct {
 	Unread bool `json:"unread,omitempty"`
 }
 
-// progress is the data of sayProgress.
+// progress is the data of sayProgress: how far a stage of the work is.
 type progress struct {
-	Done  int `json:"done"`
-	Total int `json:"total"`
+	Stage string `json:"stage"`
+	Done  int    `json:"done"`
+	Total int    `json:"total"`
 }
+
+// The stages of an answer.
+const (
+	stageReading = "reading" // the file; counted in bytes
+	stageJudging = "judging" // counted in replicates
+)
 
 // unread is what keeps data from being read as a question wants them.
 type unread struct{ error }

@@ -31,14 +31,18 @@ type sheet struct {
 // OnInit lays the demo out. The framework makes the sheet itself, empty.
 func (s *sheet) OnInit() { s.desk, s.width = newDesk(), 1120 }
 
-// slowAfter is how long work may take before its progress is shown.
-const slowAfter = 200 * time.Millisecond
+// slowAfter is how long work may take before its progress is shown. It fades
+// in (web/style.css), so that work that is over soon does not flash.
+const slowAfter = 50 * time.Millisecond
 
 // OnMount gives the desk its way into the page and asks the demo's question.
 func (s *sheet) OnMount(ctx app.Context) {
 	s.page = ctx
 	s.desk.start = startThread
 	s.desk.soon = func(do func()) { ctx.Dispatch(func(app.Context) { s.settle(do) }) }
+	s.desk.aside = func(do func()) {
+		ctx.Dispatcher().Dispatch(app.Dispatch{Mode: app.Next, Source: s, Function: func(app.Context) { do() }})
+	}
 	s.desk.after = func(wait time.Duration, do func()) {
 		ctx.After(wait, func(app.Context) { s.settle(do) })
 	}

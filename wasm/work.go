@@ -1,9 +1,9 @@
 package main
 
 import (
-	"strconv"
-
 	"github.com/maxence-charriere/go-app/v9/pkg/app"
+
+	"tailgap/core/words"
 )
 
 // work says how the computing stands: going on, stopped, or gone wrong. What
@@ -31,14 +31,8 @@ func (s *sheet) state() string {
 }
 
 func (s *sheet) bar() app.UI {
-	p := s.desk.running.progress
-	bar := app.Progress().ID("progress").Aria("label", "How much is done").Max(100)
-	if p.Total > 0 {
-		bar = bar.Value(strconv.Itoa(int(100 * float64(p.Done) / float64(p.Total))))
-	}
 	return app.P().Class("bar").Body(
-		app.Label().For("progress").Text("Working it out"),
-		bar,
+		&gauge{Of: s.desk.running, Name: s.desk.data.name},
 		app.Button().ID("cancel").Text("Cancel").OnClick(s.act("cancel", func(app.Context, app.Event) { s.desk.cancel() })),
 	)
 }
@@ -65,4 +59,43 @@ func (d *desk) oldness() string {
 // trouble is a sentence about something that is wrong, where it is wrong.
 func trouble(text string) app.UI {
 	return when(text != "", func() app.UI { return app.P().Class("trouble").Role("alert").Text(text) })
+}
+
+// gauge shows how far a job is. It looks for itself, so that the rest of the
+// page need not be drawn anew for it.
+type gauge struct {
+	app.Compo
+	Of   *job
+	Name string // of the data on the desk
+}
+
+// OnMount begins to look.
+func (g *gauge) OnMount(ctx app.Context) {
+	ctx.After(tellEvery, func(ctx app.Context) {
+		if g.Mounted() {
+			g.OnMount(ctx)
+		}
+	})
+}
+
+// Render is the bar, and what it is about.
+func (g *gauge) Render() app.UI {
+	const full = 1000
+	p := g.Of.progress
+	bar := app.Progress().ID("progress").Max(full)
+	if p.Total > 0 {
+		bar = bar.Value(itoa(int(full * float64(p.Done) / float64(p.Total))))
+	}
+	return app.Span().Class("gauge").Body(app.Label().For("progress").Text(g.doing()), bar)
+}
+
+// doing says what is being done.
+func (g *gauge) doing() string {
+	switch {
+	case g.Of.opens != nil:
+		return "Opening " + words.Name(g.Of.opens.name)
+	case g.Of.progress.Stage == stageReading:
+		return "Reading " + words.Name(g.Name)
+	}
+	return "Working it out"
 }

@@ -36,7 +36,7 @@ func answered(b *bench, message app.Value, post func(reply)) reply {
 		name := message.Get("name").String()
 		data, err := bytesOf(blob)
 		if err != nil {
-			return reply{ID: r.ID, Kind: r.Kind, Error: name + " can't be read: " + err.Error()}
+			return reply{ID: r.ID, Kind: r.Kind, Error: "the file " + name + " can't be read: " + err.Error()}
 		}
 		b.hold(name, data)
 	}
