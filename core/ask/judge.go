@@ -57,7 +57,7 @@ func JudgeWith(ctx context.Context, question Question, from sample.Sample, progr
 }
 
 func judgeColumn(ctx context.Context, question Question, column sample.Column, index int, runner Runner, report func(done int)) (Result, error) {
-	w, err := newWork(question, column)
+	w, err := newWork(question, column, sample.Count(column.Scores))
 	if err != nil {
 		return Result{}, err
 	}

@@ -2,36 +2,104 @@ package ask
 
 import (
 	"context"
-	"fmt"
+	"encoding/binary"
+	"errors"
+	"math"
 
 	"tailgap/core/resample"
 	"tailgap/core/sample"
 )
 
-// Runner has the replicates of one score column (its index in the sample)
-// made in parts, by Part, in several processes or wherever there is room. The
-// parts must have each of the blocks 0 to blocks (out) once, in any split.
-// progress, which may be called from the same goroutine only, takes the number
-// of replicates that all parts have done.
-type Runner func(ctx context.Context, column, blocks int, progress func(done int)) (parts [][]byte, err error)
+// Runner has the replicates of a job made in parts: by its own Maker, by
+// others that were made from its order in other processes, or by both. The
+// parts must have each of the job's blocks once, in any split. progress, which
+// may be called from the same goroutine only, takes the number of replicates
+// that all of them have made.
+type Runner func(ctx context.Context, job Job, progress func(done int)) (parts [][]byte, err error)
 
-// Part makes the replicates of one score column in the blocks from (in) to
-// (out), for a Runner of JudgeWith: question and scores must be the same as
-// there. It returns Judge's errors, and one for blocks and columns that there
-// are not.
-func Part(ctx context.Context, question Question, scores sample.Sample, column, from, to int, progress func(done int)) ([]byte, error) {
-	question = question.filled()
-	if err := question.Check(); err != nil {
-		return nil, err
-	}
-	if column < 0 || column >= len(scores.Columns) {
-		return nil, fmt.Errorf("there is no score %d among %d", column+1, len(scores.Columns))
-	}
-	w, err := newWork(question, scores.Columns[column])
+// Job is the replicates of one score column.
+type Job struct {
+	Column     int // its index in the sample
+	Blocks     int
+	Replicates int
+	work       *work
+}
+
+// Maker makes replicates of the job here.
+func (j Job) Maker() *Maker { return &Maker{resample.NewMaker(j.work.plan)} }
+
+// Order is all that NewMaker needs to make replicates of the job elsewhere:
+// the question and the count table.
+func (j Job) Order() ([]byte, error) {
+	question, err := WriteQuestion(j.work.question)
 	if err != nil {
 		return nil, err
 	}
-	part, err := resample.RunBlocks(ctx, w.plan, from, to, progress)
+	counts := j.work.table.Counts
+	order := binary.LittleEndian.AppendUint32([]byte(orderFormat), uint32(len(question)))
+	order = append(order, question...)
+	for i, score := range counts.Score {
+		order = binary.LittleEndian.AppendUint64(order, math.Float64bits(score))
+		order = binary.LittleEndian.AppendUint64(order, uint64(counts.Count[i]))
+	}
+	return order, nil
+}
+
+const orderFormat = "tgorder1"
+
+// Maker makes replicates of a job, a range of blocks at a time in any order.
+type Maker struct{ maker *resample.Maker }
+
+// NewMaker makes replicates of the job that gave the order. It returns an error
+// for bytes that are no order, and Judge's for a question that can't be asked
+// of the scores.
+func NewMaker(order []byte) (*Maker, error) {
+	question, counts, err := readOrder(order)
+	if err != nil {
+		return nil, err
+	}
+	w, err := newWork(question, sample.Column{Name: "the score"}, counts)
+	if err != nil {
+		return nil, err
+	}
+	return Job{work: w}.Maker(), nil
+}
+
+func readOrder(order []byte) (question Question, counts sample.Counts, err error) {
+	wrong := errors.New("these bytes are no order for replicates")
+	const header = len(orderFormat) + 4
+	if len(order) < header || string(order[:len(orderFormat)]) != orderFormat {
+		return question, counts, wrong
+	}
+	length, order := int64(binary.LittleEndian.Uint32(order[len(orderFormat):])), order[header:]
+	if length > int64(len(order)) || (int64(len(order))-length)%16 != 0 {
+		return question, counts, wrong
+	}
+	if question, err = ReadQuestion(order[:length]); err != nil {
+		return question, counts, err
+	}
+	for table := order[length:]; len(table) > 0; table = table[16:] {
+		score, count := math.Float64frombits(binary.LittleEndian.Uint64(table)), binary.LittleEndian.Uint64(table[8:])
+		last := len(counts.Score) - 1
+		if !finite(score) || last >= 0 && score <= counts.Score[last] || count == 0 || count > uint64(math.MaxInt32-counts.N) {
+			return question, sample.Counts{}, wrong
+		}
+		counts.Score, counts.Count = append(counts.Score, score), append(counts.Count, int(count))
+		counts.N += int(count)
+	}
+	return question, counts, nil
+}
+
+// Make makes the replicates of the blocks from (in) to (out). progress, which
+// may be nil, takes how many of these are done. It returns an error for blocks
+// that there are not, and the context's when it ends first.
+func (m *Maker) Make(ctx context.Context, from, to int, progress func(done int)) error {
+	return m.maker.Make(ctx, from, to, progress)
+}
+
+// Part is everything made so far, for the job's Runner to return.
+func (m *Maker) Part() ([]byte, error) {
+	part, err := m.maker.Part()
 	if err != nil {
 		return nil, err
 	}
@@ -48,7 +116,7 @@ func (w *work) run(ctx context.Context, column int, runner Runner, progress func
 		w.quantiles, err = resample.Run(ctx, w.plan, progress)
 		return err
 	}
-	encoded, err := runner(ctx, column, w.plan.Blocks(), progress)
+	encoded, err := runner(ctx, Job{column, w.plan.Blocks(), w.question.Replicates, w}, progress)
 	if err != nil {
 		return err
 	}

@@ -47,11 +47,10 @@ type sweepPlan struct {
 	regions    []int
 }
 
-// newWork plans the judging of one column; it refuses a column that has no
+// newWork plans the judging of one column with this count table; it refuses a column that has no
 // spread, a scale of too many steps, a cutoff at which no curve can be read and
 // more replicates than there is memory for.
-func newWork(question Question, column sample.Column) (*work, error) {
-	counts := sample.Count(column.Scores)
+func newWork(question Question, column sample.Column, counts sample.Counts) (*work, error) {
 	moments, err := describe(column.Name, counts)
 	if err != nil {
 		return nil, err

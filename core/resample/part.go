@@ -1,7 +1,6 @@
 package resample
 
 import (
-	"cmp"
 	"errors"
 	"fmt"
 	"hash/fnv"
@@ -11,20 +10,20 @@ import (
 	"tailgap/core/sample"
 )
 
-// Part is what is kept of the replicates of a range of blocks: for each region
-// and weight, and for each group and weight, the largest squared studentised
-// gaps. The parts of a plan can be made anywhere, in any split and order, and
-// give the same quantiles: see Merge.
+// Part is what is kept of the replicates of some blocks: for each region and
+// weight, and for each group and weight, the largest squared studentised gaps.
+// The parts of a plan can be made anywhere, in any split and order, and give
+// the same quantiles: see Merge.
 type Part struct {
-	plan     uint64 // fingerprint of the plan
-	from, to int    // blocks
-	kept     [][]float64
+	plan   uint64 // fingerprint of the plan
+	blocks blocks
+	kept   [][]float64
 }
 
 // newPart puts together what the studies kept of some blocks.
-func newPart(plan Plan, from, to int, studies []*study) (Part, error) {
-	part := Part{from: from, to: to, kept: make([][]float64, plan.places())}
-	count := plan.kept(from, to)
+func newPart(plan Plan, made blocks, studies []*study) (Part, error) {
+	part := Part{blocks: made, kept: make([][]float64, plan.places())}
+	count := plan.kept(made)
 	for i := range part.kept {
 		all := newLargest(max(1, count))
 		for _, s := range studies {
@@ -42,9 +41,9 @@ func newPart(plan Plan, from, to int, studies []*study) (Part, error) {
 // places is how many quantiles the plan asks for.
 func (p Plan) places() int { return (len(p.Regions) + len(p.Groups)) * len(p.Weights) }
 
-// kept is how many values the blocks from (in) to (out) leave for each place.
-func (p Plan) kept(from, to int) int {
-	return min(upperRank(p.Replicates, p.Level), p.replicates(from, to))
+// kept is how many values some blocks leave for each place.
+func (p Plan) kept(made blocks) int {
+	return min(upperRank(p.Replicates, p.Level), p.replicates(made))
 }
 
 // fingerprint tells plans apart by all that a replicate depends on, so that no
@@ -65,26 +64,23 @@ func (p Plan) fingerprint() uint64 {
 // each block of the plan once. It returns an error for any other parts, and
 // for parts of another plan.
 func Merge(plan Plan, parts []Part) (Quantiles, error) {
-	parts = slices.SortedFunc(slices.Values(parts), func(a, b Part) int { return cmp.Or(a.from-b.from, a.to-b.to) })
-	fingerprint, next := plan.fingerprint(), 0
+	var all blocks
+	fingerprint := plan.fingerprint()
 	for _, part := range parts {
 		if part.plan != fingerprint || !part.fits(plan) {
 			return Quantiles{}, errors.New("the parts are of other replicates than these: of another question, or other data")
 		}
-		if part.from != next {
-			return Quantiles{}, fmt.Errorf("the parts don't have every one of the %d blocks of replicates once", plan.Blocks())
-		}
-		next = part.to
+		all = append(all, part.blocks...)
 	}
-	if next != plan.Blocks() {
-		return Quantiles{}, fmt.Errorf("the parts have %d of the %d blocks of replicates", next, plan.Blocks())
+	if !slices.Equal(all.joined(), blocks{{0, plan.Blocks()}}) {
+		return Quantiles{}, fmt.Errorf("the parts don't have every one of the %d blocks of replicates once", plan.Blocks())
 	}
 	return merge(plan, parts), nil
 }
 
 func (p Part) fits(plan Plan) bool {
-	return p.from <= p.to && p.to <= plan.Blocks() && len(p.kept) == plan.places() &&
-		!slices.ContainsFunc(p.kept, func(kept []float64) bool { return len(kept) != plan.kept(p.from, p.to) })
+	return p.blocks.within(plan.Blocks()) && len(p.kept) == plan.places() &&
+		!slices.ContainsFunc(p.kept, func(kept []float64) bool { return len(kept) != plan.kept(p.blocks) })
 }
 
 func merge(plan Plan, parts []Part) Quantiles {

@@ -19,14 +19,17 @@ func split(t *rapid.T, plan Plan) (ends []int) {
 	return ends
 }
 
-func mustRunBlocks(t require.TestingT, plan Plan, from, to int) Part {
-	part, err := RunBlocks(context.Background(), plan, from, to, nil)
+// made is a part of the blocks from (in) to (out).
+func made(t require.TestingT, plan Plan, from, to int) Part {
+	maker := NewMaker(plan)
+	require.NoError(t, maker.Make(context.Background(), from, to, nil))
+	part, err := maker.Part()
 	require.NoError(t, err)
 	return part
 }
 
-// Any split of the blocks over parts, and of each part over workers, gives
-// what one run gives; also when the parts went through bytes.
+// Any split of the blocks over makers, in any order, gives what one run gives;
+// also when the parts went through bytes.
 func TestPartsMergeIntoTheRun(t *testing.T) {
 	few := planFor(wholeNumbers(100), 1)
 	rapid.Check(t, func(t *rapid.T) {
@@ -38,10 +41,22 @@ func TestPartsMergeIntoTheRun(t *testing.T) {
 		require.NoError(t, err)
 
 		ends := split(t, plan)
+		makers := []*Maker{NewMaker(plan), NewMaker(plan), NewMaker(plan)}
+		order := make([]int, len(ends)-1)
+		for i := range order {
+			order[i] = i
+		}
+		for _, i := range rapid.Permutation(order).Draw(t, "order") {
+			told := 0
+			maker := rapid.SampledFrom(makers).Draw(t, "maker")
+			require.NoError(t, maker.Make(context.Background(), ends[i], ends[i+1], func(done int) { told = done }))
+			assert.Equal(t, plan.replicates(blocks{{ends[i], ends[i+1]}}), told)
+		}
 		var parts []Part
-		for i := range len(ends) - 1 {
-			plan.Workers = rapid.IntRange(1, 3).Draw(t, "workers")
-			data, err := mustRunBlocks(t, plan, ends[i], ends[i+1]).MarshalBinary()
+		for _, maker := range makers {
+			made, err := maker.Part()
+			require.NoError(t, err)
+			data, err := made.MarshalBinary()
 			require.NoError(t, err)
 			var part Part
 			require.NoError(t, part.UnmarshalBinary(data))
@@ -54,18 +69,35 @@ func TestPartsMergeIntoTheRun(t *testing.T) {
 	})
 }
 
+// What was stopped in the middle of a range can't be told from what wasn't,
+// so that no part is made of it.
+func TestMakerThatWasStoppedGivesNoPart(t *testing.T) {
+	plan := planFor(wholeNumbers(100), 1)
+	plan.Replicates = 640
+	maker := NewMaker(plan)
+	ctx, stop := context.WithCancel(context.Background())
+	err := maker.Make(ctx, 0, 10, func(done int) {
+		if done == 128 {
+			stop()
+		}
+	})
+	assert.ErrorIs(t, err, context.Canceled)
+	_, err = maker.Part()
+	assert.ErrorContains(t, err, "not finished")
+}
+
 func TestMergeRefusesWhatDoesNotFit(t *testing.T) {
 	plan := planFor(wholeNumbers(100), 1)
 	plan.Replicates = 640
 	require.Equal(t, 10, plan.Blocks())
-	first, second := mustRunBlocks(t, plan, 0, 4), mustRunBlocks(t, plan, 4, 10)
+	first, second := made(t, plan, 0, 4), made(t, plan, 4, 10)
 	_, err := Merge(plan, []Part{second, first})
 	require.NoError(t, err)
 
 	other := func(change func(p *Plan)) Part {
 		p := plan
 		change(&p)
-		return mustRunBlocks(t, p, 4, 10)
+		return made(t, p, 4, 10)
 	}
 	short := second
 	short.kept = slices.Clone(short.kept)
@@ -74,10 +106,10 @@ func TestMergeRefusesWhatDoesNotFit(t *testing.T) {
 		parts []Part
 		error string
 	}{
-		"none":             {nil, "0 of the 10 blocks"},
-		"one missing":      {[]Part{first}, "4 of the 10 blocks"},
-		"a gap":            {[]Part{first, mustRunBlocks(t, plan, 5, 10)}, "every one of the 10 blocks"},
-		"an overlap":       {[]Part{first, mustRunBlocks(t, plan, 3, 10)}, "every one of the 10 blocks"},
+		"none":             {nil, "every one of the 10 blocks"},
+		"one missing":      {[]Part{first}, "every one of the 10 blocks"},
+		"a gap":            {[]Part{first, made(t, plan, 5, 10)}, "every one of the 10 blocks"},
+		"an overlap":       {[]Part{first, made(t, plan, 3, 10)}, "every one of the 10 blocks"},
 		"twice":            {[]Part{first, second, second}, "every one of the 10 blocks"},
 		"another seed":     {[]Part{first, other(func(p *Plan) { p.Seed++ })}, "other replicates"},
 		"another level":    {[]Part{first, other(func(p *Plan) { p.Level = 0.9 })}, "other replicates"},
@@ -91,9 +123,9 @@ func TestMergeRefusesWhatDoesNotFit(t *testing.T) {
 		_, err := Merge(plan, c.parts)
 		assert.ErrorContains(t, err, c.error, name)
 	}
-	for _, blocks := range [][2]int{{-1, 3}, {4, 3}, {0, 11}} {
-		_, err := RunBlocks(context.Background(), plan, blocks[0], blocks[1], nil)
-		assert.ErrorContains(t, err, "of 10", blocks)
+	for _, range_ := range [][2]int{{-1, 3}, {4, 3}, {0, 11}} {
+		err := NewMaker(plan).Make(context.Background(), range_[0], range_[1], nil)
+		assert.ErrorContains(t, err, "of 10", range_)
 	}
 }
 
@@ -102,7 +134,7 @@ func TestMergeRefusesWhatDoesNotFit(t *testing.T) {
 func FuzzPart(f *testing.F) {
 	plan := planFor(wholeNumbers(10), 1)
 	plan.Replicates, plan.Level = 200, 0.99
-	whole, err := mustRunBlocks(f, plan, 0, plan.Blocks()).MarshalBinary()
+	whole, err := made(f, plan, 0, plan.Blocks()).MarshalBinary()
 	require.NoError(f, err)
 	f.Add(whole)
 	f.Add(whole[:partHeader])
@@ -124,7 +156,7 @@ func FuzzPart(f *testing.F) {
 func TestPartsRefuseOtherBytes(t *testing.T) {
 	plan := planFor(wholeNumbers(10), 1)
 	plan.Replicates, plan.Level = 200, 0.99
-	good, err := mustRunBlocks(t, plan, 0, 2).MarshalBinary()
+	good, err := made(t, plan, 0, 2).MarshalBinary()
 	require.NoError(t, err)
 	for name, change := range map[string]func(data []byte) []byte{
 		"nothing":           func([]byte) []byte { return nil },
@@ -133,7 +165,8 @@ func TestPartsRefuseOtherBytes(t *testing.T) {
 		"a value too few":   func(data []byte) []byte { return data[:len(data)-8] },
 		"more than it says": func(data []byte) []byte { return append(data, make([]byte, 8)...) },
 		"not a number":      func(data []byte) []byte { copy(data[len(data)-2:], "\xff\xff"); return data },
-		"from after to":     func(data []byte) []byte { data[16] = 3; return data },
+		"from after to":     func(data []byte) []byte { data[partHeader] = 3; return data },
+		"too many ranges":   func(data []byte) []byte { data[16] = 255; return data },
 	} {
 		var part Part
 		assert.Error(t, part.UnmarshalBinary(change(slices.Clone(good))), name)

@@ -19,7 +19,6 @@ package resample
 
 import (
 	"context"
-	"fmt"
 	"math"
 	"runtime"
 	"sync/atomic"
@@ -53,14 +52,9 @@ type Quantiles struct {
 // of what a seed means, so that changing it changes every answer slightly.
 const blockSize = 64
 
-// Blocks is how many blocks the replicates are made in: what RunBlocks makes
+// Blocks is how many blocks the replicates are made in: what a Maker makes
 // ranges of.
 func (p Plan) Blocks() int { return (p.Replicates + blockSize - 1) / blockSize }
-
-// replicates is how many replicates are in the blocks from (in) to (out).
-func (p Plan) replicates(from, to int) int {
-	return max(0, min(to*blockSize, p.Replicates)-from*blockSize)
-}
 
 // Run draws the replicates and returns their quantiles. It returns the
 // context's error soon after the context ends (within one replicate), having
@@ -68,32 +62,11 @@ func (p Plan) replicates(from, to int) int {
 // number. progress, which may be nil, is called from the calling goroutine
 // with the number of replicates done.
 func Run(ctx context.Context, plan Plan, progress func(done int)) (Quantiles, error) {
-	whole, err := runBlocks(ctx, plan, 0, plan.Blocks(), progress)
-	if err != nil {
-		return Quantiles{}, err
-	}
-	return merge(plan, []Part{whole}), nil
-}
-
-// RunBlocks draws the replicates of the blocks from (in) to (out), as Run
-// does, and returns what Merge makes quantiles of. Besides the context's error
-// it returns one for blocks that the plan doesn't have.
-func RunBlocks(ctx context.Context, plan Plan, from, to int, progress func(done int)) (Part, error) {
-	if from < 0 || to < from || to > plan.Blocks() {
-		return Part{}, fmt.Errorf("there are no blocks %d to %d of %d", from, to, plan.Blocks())
-	}
-	part, err := runBlocks(ctx, plan, from, to, progress)
-	part.plan = plan.fingerprint()
-	return part, err
-}
-
-func runBlocks(ctx context.Context, plan Plan, from, to int, progress func(done int)) (Part, error) {
-	studies := newStudies(plan, to-from)
+	studies := newStudies(plan)
 	reports := make(chan report, len(studies))
-	next := atomic.Int64{}
-	next.Store(int64(from))
+	var next atomic.Int64
 	for _, s := range studies {
-		go s.work(ctx, &next, to, reports)
+		go s.work(ctx, &next, reports)
 	}
 	var failure any
 	done := 0
@@ -115,20 +88,23 @@ func runBlocks(ctx context.Context, plan Plan, from, to int, progress func(done 
 		panic(failure) // here the caller can recover it
 	}
 	if err := ctx.Err(); err != nil {
-		return Part{}, err
+		return Quantiles{}, err
 	}
-	return newPart(plan, from, to, studies)
+	whole, err := newPart(plan, blocks{{0, plan.Blocks()}}, studies)
+	if err != nil {
+		return Quantiles{}, err
+	}
+	return merge(plan, []Part{whole}), nil
 }
 
-// newStudies splits so many blocks over the plan's workers, or one for each
-// core.
-func newStudies(plan Plan, blocks int) []*study {
+// newStudies splits the plan over its workers, or one for each core.
+func newStudies(plan Plan) []*study {
 	workers := plan.Workers
 	if workers <= 0 {
 		workers = runtime.GOMAXPROCS(0)
 	}
 	drawer := newDrawer(plan.Table.Counts)
-	studies := make([]*study, min(workers, blocks))
+	studies := make([]*study, min(workers, plan.Blocks()))
 	for i := range studies {
 		studies[i] = newStudy(plan, drawer)
 	}

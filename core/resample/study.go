@@ -102,14 +102,15 @@ type report struct {
 
 // work takes blocks of replicates, the next that nobody has taken, until they
 // come to the end or the context ends.
-func (s *study) work(ctx context.Context, next *atomic.Int64, end int, reports chan<- report) {
+func (s *study) work(ctx context.Context, next *atomic.Int64, reports chan<- report) {
 	defer func() { reports <- report{ended: true, failure: recover()} }()
 	for {
 		block := int(next.Add(1)) - 1
-		if block >= end || !s.block(ctx, block, s.plan.replicates(block, block+1)) {
+		size := s.plan.replicates(blocks{{block, block + 1}})
+		if size == 0 || !s.block(ctx, block, size) {
 			return
 		}
-		reports <- report{done: s.plan.replicates(block, block+1)}
+		reports <- report{done: size}
 	}
 }
 
