@@ -27,21 +27,33 @@ func (t Table) SampleInside(r Region) Inside {
 
 // Estimate is the region's estimate from the sample.
 func (t Table) Estimate(r Region) *Estimate {
-	var e Estimate
 	sums := t.SampleSums()
-	reading := t.ReadRegion(&r, &sums)
-	e.Set(&r, &sums, &reading, t.SampleInside(r))
-	e.unseen = t.unseenBy(&r, &sums, &reading)
-	return &e
+	return t.estimate(r, &sums, t.SampleInside(r))
 }
 
-// Estimates are the regions' estimates from the sample, in their order.
+// Estimates are the regions' estimates from the sample, in their order: in one
+// pass over the scores for all of them.
 func (t Table) Estimates(regions []Region) []*Estimate {
+	tails := make([]Inside, len(t.U)+1)
+	for i := len(t.U) - 1; i >= 0; i-- {
+		count, u := float64(t.Counts.Count[i]), t.U[i]
+		tails[i] = Inside{tails[i+1].K + count, tails[i+1].S1 + count*u, tails[i+1].S2 + count*u*u}
+	}
+	sums := t.SampleSums()
 	estimates := make([]*Estimate, len(regions))
-	for i, region := range regions {
-		estimates[i] = t.Estimate(region)
+	for i, r := range regions {
+		in, beyond := tails[r.From], tails[r.To]
+		estimates[i] = t.estimate(r, &sums, Inside{in.K - beyond.K, in.S1 - beyond.S1, in.S2 - beyond.S2})
 	}
 	return estimates
+}
+
+func (t Table) estimate(r Region, sums *Sums, in Inside) *Estimate {
+	var e Estimate
+	reading := t.ReadRegion(&r, sums)
+	e.Set(&r, sums, &reading, in)
+	e.unseen = t.unseenBy(&r, sums, &reading)
+	return &e
 }
 
 // Influence is the influence function of the gap of an upper tail, one value

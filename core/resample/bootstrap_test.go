@@ -24,12 +24,12 @@ import (
 func replicates(table gap.Table, regions []gap.Region, seed uint64) [][]float64 {
 	const size = 20_000
 	plan := Plan{Table: table, Regions: regions, Estimates: table.Estimates(regions), Weights: []float64{1}, Level: 0.95, Replicates: size, Seed: seed}
-	s := newStudy(plan, newDrawer(table.Counts))
+	s := newStudy(plan, newCells(&plan))
 	gaps := make([][]float64, len(regions))
 	for block := range size / 100 {
 		s.stream.restart(seed, block)
 		for range 100 {
-			s.drawer.draw(&s.stream, s.counts)
+			s.cells.drawer.draw(&s.stream, s.counts)
 			sums := s.sum()
 			for i := range s.points {
 				s.readings[i].Set(&table, &s.points[i], &sums)

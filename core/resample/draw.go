@@ -9,14 +9,11 @@ type drawer struct {
 	rows   []uint32 // for each person, the index of the score: index draws; nil: conditional binomials
 }
 
-// costOfBinomial is about how many index draws one binomial draw costs.
-const costOfBinomial = 40
-
 // newDrawer chooses the faster way for the table: an index draw for each
 // person, or a binomial draw for each distinct score.
 func newDrawer(counts sample.Counts) drawer {
 	d := drawer{counts: counts}
-	if counts.N <= costOfBinomial*len(counts.Score) {
+	if counts.N <= costOfBinomial*len(counts.Count) {
 		d.rows = make([]uint32, 0, counts.N)
 		for i, count := range counts.Count {
 			for range count {

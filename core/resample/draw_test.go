@@ -133,20 +133,22 @@ func TestUpperRank(t *testing.T) {
 }
 
 func TestQuantilesDoNotDependOnWorkers(t *testing.T) {
-	plan := planFor(wholeNumbers(300), 1)
-	plan.Replicates, plan.Weights = 1000, []float64{1, 1.2, 0.8}
-	one, err := Run(context.Background(), plan, nil)
-	require.NoError(t, err)
-	for _, workers := range []int{2, 3, 16, 100} {
-		plan.Workers = workers
-		many, err := Run(context.Background(), plan, nil)
+	for _, scores := range [][]float64{wholeNumbers(300), scoresOf("normal", 20_000)} { // direct and binned
+		plan := planFor(scores, 1)
+		plan.Replicates, plan.Weights = 400, []float64{1, 1.2, 0.8}
+		one, err := Run(context.Background(), plan, nil)
 		require.NoError(t, err)
-		assert.Equal(t, one, many)
+		for _, workers := range []int{2, 3, 16, 100} {
+			plan.Workers = workers
+			many, err := Run(context.Background(), plan, nil)
+			require.NoError(t, err)
+			assert.Equal(t, one, many)
+		}
+		plan.Seed++
+		other, err := Run(context.Background(), plan, nil)
+		require.NoError(t, err)
+		assert.NotEqual(t, one, other)
 	}
-	plan.Seed++
-	other, err := Run(context.Background(), plan, nil)
-	require.NoError(t, err)
-	assert.NotEqual(t, one, other)
 }
 
 func TestRunReportsProgressAndEndsWithTheContext(t *testing.T) {

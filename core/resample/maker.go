@@ -17,7 +17,7 @@ type Maker struct {
 
 // NewMaker has made nothing yet.
 func NewMaker(plan Plan) *Maker {
-	return &Maker{plan: plan, study: newStudy(plan, newDrawer(plan.Table.Counts))}
+	return &Maker{plan: plan, study: newStudy(plan, newCells(&plan))}
 }
 
 // Make draws the replicates of the blocks from (in) to (out). progress, which

@@ -15,6 +15,35 @@
 // limits (gap.Estimate.ScoreLimits) too. The band for a sweep is made likewise at
 // every threshold, q being the level's quantile of the largest T* over all
 // thresholds of the sweep and one step beyond them.
+//
+// # Many distinct scores
+//
+// A resample needs k, Σu and Σu² beyond every threshold and the totals to Σu⁴,
+// u being a score in standard units. In the direct form it is drawn score by
+// score, which takes as long as there are scores. In the binned form it is
+// drawn in cells: what lies between two neighbouring thresholds of the plan,
+// and each of the 50 outermost scores at either end. The people in the cells
+// are multinomial, as in the direct form. k people in a cell, drawn from its
+// scores with replacement, then have sums of powers with mean k·E uʲ and
+// covariances k·Cov(uⁱ,uʲ) over the cell; the sums are taken to be normal,
+//
+//	Σu  = k·E u  + √k·σ·Z₁
+//	Σuʲ = k·E uʲ + √k·(βⱼσ·Z₁ + γⱼτ·Z₂)   j = 2, 3, 4; γ₂ = 1
+//
+// with σ the SD of u in the cell, βⱼ the slope of uʲ on u, τ the SD of what
+// that leaves of u² and γⱼ the slope on it of what it leaves of uʲ. What is
+// left of u³ and u⁴ then, next to nothing, is added to the totals alone, from
+// two normal numbers with its covariances over all people. So counts are
+// exactly multinomial, every sum beyond a threshold and every total has its
+// exact mean, variance and covariances, and only third and higher moments of
+// the sums within a cell are approximate: where a cell holds many people by the
+// central limit theorem, where it holds few because a narrow cell adds next to
+// nothing to a sum over hundreds of them. Gaps and standard errors follow from
+// the sums as in the direct form. The form is chosen by its cost alone
+// (binnedIsFaster), which is that of the cells against that of the scores, so
+// that tables with many people to a score, and of fewer than some thousand
+// scores, keep the direct form. testdata/bench/README.md has the quantiles of
+// both forms side by side.
 package resample
 
 import (
@@ -103,10 +132,10 @@ func newStudies(plan Plan) []*study {
 	if workers <= 0 {
 		workers = runtime.GOMAXPROCS(0)
 	}
-	drawer := newDrawer(plan.Table.Counts)
+	cells := newCells(&plan)
 	studies := make([]*study, min(workers, plan.Blocks()))
 	for i := range studies {
-		studies[i] = newStudy(plan, drawer)
+		studies[i] = newStudy(plan, cells)
 	}
 	return studies
 }

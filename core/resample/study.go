@@ -2,6 +2,8 @@ package resample
 
 import (
 	"context"
+	"math"
+	"math/rand/v2"
 	"sync/atomic"
 
 	"tailgap/core/gap"
@@ -11,17 +13,18 @@ import (
 // the largest studentised gaps it has seen.
 type study struct {
 	plan     Plan
-	drawer   drawer
+	cells    *cells
 	targets  []target    // by region, then weight
 	points   []gap.Point // each place where the curve is read, once
 	readings []gap.Reading
-	ends     [][2]int // by region, the places of its ends among the points
-	powers   []powers
-	counts   []int32
-	tails    []gap.Inside // sums over the distinct scores from this index up; one more entry than scores
+	ends     [][2]int     // by region, the places of its ends among the points
+	spans    [][2]int     // by region, the first cell inside and the first beyond
+	counts   []int32      // people drawn, by cell
+	tails    []gap.Inside // sums over the cells from this one up; one more entry than cells
 	stream   stream
-	region   []largest // by region, then weight
-	group    []largest // by group, then weight
+	normal   *rand.Rand // normal numbers from the stream
+	region   []largest  // by region, then weight
+	group    []largest  // by group, then weight
 	sup      []fraction
 }
 
@@ -38,19 +41,13 @@ type target struct {
 	above    float64 // and where it is below
 }
 
-// powers of a distinct score in standard units.
-type powers struct{ u1, u2, u3, u4 float64 }
-
-func newStudy(plan Plan, d drawer) *study {
-	distinct := len(plan.Table.U)
+func newStudy(plan Plan, c *cells) *study {
 	s := &study{
-		plan: plan, drawer: d,
-		counts: make([]int32, distinct), tails: make([]gap.Inside, distinct+1),
-		powers: make([]powers, distinct), sup: make([]fraction, len(plan.Weights)),
+		plan: plan, cells: c,
+		counts: make([]int32, len(c.means)), tails: make([]gap.Inside, len(c.means)+1),
+		sup: make([]fraction, len(plan.Weights)),
 	}
-	for i, u := range plan.Table.U {
-		s.powers[i] = powers{u, u * u, u * u * u, u * u * u * u}
-	}
+	s.normal = rand.New(&s.stream)
 	k := upperRank(plan.Replicates, plan.Level)
 	for _, e := range plan.Estimates {
 		p := e.Shrunk()
@@ -64,6 +61,7 @@ func newStudy(plan Plan, d drawer) *study {
 	known := map[gap.Point]int{}
 	for _, r := range plan.Regions {
 		s.ends = append(s.ends, [2]int{s.point(r.Lower, known), s.point(r.Upper, known)})
+		s.spans = append(s.spans, [2]int{c.cell(r.From), c.cell(r.To)})
 	}
 	s.readings = make([]gap.Reading, len(s.points))
 	for range len(plan.Groups) * len(plan.Weights) {
@@ -128,7 +126,7 @@ func (s *study) block(ctx context.Context, block, size int) bool {
 
 // replicate draws one resample and records its studentised gaps.
 func (s *study) replicate() {
-	s.drawer.draw(&s.stream, s.counts)
+	s.cells.drawer.draw(&s.stream, s.counts)
 	sums := s.sum()
 	for i := range s.points {
 		s.readings[i].Set(&s.plan.Table, &s.points[i], &sums)
@@ -150,11 +148,21 @@ func (s *study) replicate() {
 
 // sum fills the tails and returns the moments of the resample.
 func (s *study) sum() gap.Sums {
-	var tail gap.Inside
+	var all gap.Inside
 	var s3, s4 float64
+	if s.cells.spread == nil {
+		all, s3, s4 = s.sumScores()
+	} else {
+		all, s3, s4 = s.sumCells()
+	}
+	return gap.NewSums(all.K, all.S1, all.S2, s3, s4)
+}
+
+// sumScores adds up the scores drawn.
+func (s *study) sumScores() (tail gap.Inside, s3, s4 float64) {
 	for i := len(s.counts) - 1; i >= 0; i-- {
 		if s.counts[i] != 0 {
-			count, p := float64(s.counts[i]), &s.powers[i]
+			count, p := float64(s.counts[i]), &s.cells.means[i]
 			tail.K += count
 			tail.S1 += count * p.u1
 			tail.S2 += count * p.u2
@@ -163,7 +171,33 @@ func (s *study) sum() gap.Sums {
 		}
 		s.tails[i] = tail
 	}
-	return gap.NewSums(tail.K, tail.S1, tail.S2, s3, s4)
+	return tail, s3, s4
+}
+
+// sumCells adds up the people drawn in cells of many scores: their mean, and
+// how they vary about it.
+func (s *study) sumCells() (tail gap.Inside, s3, s4 float64) {
+	s3, s4 = s.cells.rest.of(s.normal.NormFloat64(), s.normal.NormFloat64())
+	for i := len(s.counts) - 1; i >= 0; i-- {
+		if s.counts[i] != 0 {
+			count, p, by := float64(s.counts[i]), &s.cells.means[i], &s.cells.spread[i]
+			tail.K += count
+			tail.S1 += count * p.u1
+			tail.S2 += count * p.u2
+			s3 += count * p.u3
+			s4 += count * p.u4
+			if by.u1 > 0 {
+				root := math.Sqrt(count)
+				along, beside := root*s.normal.NormFloat64(), root*s.normal.NormFloat64()
+				tail.S1 += by.u1 * along
+				tail.S2 += by.u2*along + by.v2*beside
+				s3 += by.u3*along + by.v3*beside
+				s4 += by.u4*along + by.v4*beside
+			}
+		}
+		s.tails[i] = tail
+	}
+	return tail, s3, s4
 }
 
 // judge records the squared studentised gaps of the regions from (in) to
@@ -198,8 +232,8 @@ func (s *study) judge(from, to int, sums *gap.Sums) {
 
 // estimate sets one region's estimate from the resample.
 func (s *study) estimate(e *gap.Estimate, region int, sums *gap.Sums) {
-	r, ends := &s.plan.Regions[region], s.ends[region]
-	above, beyond := &s.tails[r.From], &s.tails[r.To]
+	r, ends, span := &s.plan.Regions[region], s.ends[region], s.spans[region]
+	above, beyond := &s.tails[span[0]], &s.tails[span[1]]
 	inside := gap.Inside{K: above.K - beyond.K, S1: above.S1 - beyond.S1, S2: above.S2 - beyond.S2}
 	if !r.Stretch {
 		e.Set(r, sums, &s.readings[ends[0]], inside)
