@@ -30,6 +30,7 @@ func completeJudge(cmd *cobra.Command) {
 	}
 	cmd.RegisterFlagCompletionFunc("score", completeScore)
 	cmd.MarkFlagFilename("figure", "svg")
+	cmd.MarkFlagFilename("worm", "svg")
 	cmd.MarkFlagFilename("question", "json")
 	cmd.MarkFlagFilename("save-question", "json")
 }

@@ -36,6 +36,7 @@ func TestCompletion(t *testing.T) {
 		{"no file yet", []string{"judge", "--score", ""}, []string{noFiles}},
 		{"no such file", []string{"judge", "nowhere.csv", "--score", ""}, []string{noFiles}},
 		{"figure", []string{"judge", "--figure", ""}, []string{"svg", onlyExtension}},
+		{"worm", []string{"judge", "--worm", ""}, []string{"svg", onlyExtension}},
 		{"no files after version", []string{"version", ""}, []string{noFiles}},
 	} {
 		t.Run(c.name, func(t *testing.T) {

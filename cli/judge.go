@@ -28,6 +28,7 @@ type judging struct {
 	format   string
 	out      string
 	figure   string
+	worm     string
 	save     string
 }
 
@@ -70,9 +71,10 @@ func (j *judging) declare(cmd *cobra.Command) {
 	flags.StringVar(&j.format, "format", "text", "the form of the results, `text|json|csv`")
 	fileFlag(flags, &j.out, "out", "write the results to `FILE`, whole or not at all", true)
 	fileFlag(flags, &j.figure, "figure", "write a figure to `FILE.svg`", false)
+	fileFlag(flags, &j.worm, "worm", "write worm plots, and what the shape of the scores does to the gaps, to `FILE.svg`", false)
 	fileFlag(flags, &j.from, "question", "start from the question in `FILE`; flags that are given override its parts", false)
 	fileFlag(flags, &j.save, "save-question", "write the question to `FILE`: everything that was asked, and none of the data", false)
-	for _, name := range []string{"format", "out", "figure", "question", "save-question"} {
+	for _, name := range []string{"format", "out", "figure", "worm", "question", "save-question"} {
 		flags.SetAnnotation(name, groupOf, []string{"What comes out"})
 	}
 }
@@ -114,14 +116,17 @@ func (j *judging) checkUsage(paths []string) error {
 		return misuse(judgeName, "--demo reads the demo data; leave out %.60q, or --demo", paths[0])
 	case formats[j.format] == nil:
 		return misuse(judgeName, "the format %.40q isn't one; write text, json or csv", j.format)
-	case j.figure != "" && !strings.EqualFold(filepath.Ext(j.figure), ".svg"):
-		return misuse(judgeName, "a figure is an SVG; give --figure a name that ends in .svg, not %.60q", j.figure)
+	}
+	for _, drawing := range []struct{ flag, path string }{{"figure", j.figure}, {"worm", j.worm}} {
+		if drawing.path != "" && !strings.EqualFold(filepath.Ext(drawing.path), ".svg") {
+			return misuse(judgeName, "a figure is an SVG; give --%s a name that ends in .svg, not %.60q", drawing.flag, drawing.path)
+		}
 	}
 	read := slices.Clone(paths)
 	if j.from != "" {
 		read = append(read, j.from)
 	}
-	return checkParcels(judgeName, j.parcels(nil, nil, nil), read)
+	return checkParcels(judgeName, j.parcels(outputs{}), read)
 }
 
 // ask is the question: the file's, the demo's or the usual one, with what

@@ -90,6 +90,14 @@ func TestFigure(t *testing.T) {
 	assert.Contains(t, read(t, path), "DEMO")
 }
 
+func TestWorm(t *testing.T) {
+	path := filepath.Join(t.TempDir(), "worm.svg")
+	_, _, status := tailgap("", "judge", "--demo", "--replicates", "500", "--worm", path)
+	assert.Equal(t, statusFails, status)
+	assert.Contains(t, read(t, path), "Worm plot")
+	assert.Contains(t, read(t, path), "DEMO")
+}
+
 // A figure is an SVG, whatever its name promises; a name that promises
 // something else is refused before anything is read.
 func TestFigureIsAnSVG(t *testing.T) {
@@ -125,6 +133,7 @@ func TestUnwritableOutputIsAFailure(t *testing.T) {
 	for _, args := range [][]string{
 		{"judge", "--demo", "--replicates", "500", "--out", nowhere},
 		{"judge", "--demo", "--replicates", "500", "--figure", nowhere},
+		{"judge", "--demo", "--replicates", "500", "--worm", nowhere},
 		{"judge", "--demo", "--replicates", "500", "--save-question", nowhere},
 		{"demo", "--out", nowhere},
 	} {

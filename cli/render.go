@@ -16,23 +16,31 @@ var formats = map[string]func(ask.Answer) ([]byte, error){
 	"csv":  report.CSV,
 }
 
+// outputs are what may go to files.
+type outputs struct{ results, sheet, worms, question []byte }
+
 // wrap puts what goes to files into parcels.
 func (j *judging) wrap(answer ask.Answer, results []byte) ([]parcel, error) {
-	var sheet, question []byte
+	d := outputs{results: results}
 	var err error
 	if j.figure != "" {
-		sheet = []byte(figure.Sheet(answer))
+		d.sheet = []byte(figure.Sheet(answer))
+	}
+	if j.worm != "" {
+		d.worms = []byte(figure.WormSheet(answer))
 	}
 	if j.save != "" {
-		question, err = ask.WriteQuestion(answer.Question)
+		d.question, err = ask.WriteQuestion(answer.Question)
 	}
-	return j.parcels(results, sheet, question), err
+	return j.parcels(d), err
 }
 
 // parcels are the files that the flags name.
-func (j *judging) parcels(results, sheet, question []byte) []parcel {
+func (j *judging) parcels(d outputs) []parcel {
 	var named []parcel
-	for _, one := range []parcel{{"out", j.out, results}, {"figure", j.figure, sheet}, {"save-question", j.save, question}} {
+	for _, one := range []parcel{
+		{"out", j.out, d.results}, {"figure", j.figure, d.sheet}, {"worm", j.worm, d.worms}, {"save-question", j.save, d.question},
+	} {
 		if one.path != "" && !(one.flag == "out" && one.path == "-") {
 			named = append(named, one)
 		}

@@ -52,26 +52,30 @@ type Farthest struct {
 	Z     float64 `json:"z"`
 }
 
-// ShapeAt is what makes the gap at one cutoff. MeanAndSD, HalfStep, Asymmetry
-// and Rest are its parts: those that are not null add up to GapPoints. The
-// others are each the whole difference that one feature makes: GapPoints less
-// the gap without it, with the curve fitted anew.
+// ShapeAt is what makes the gap at one cutoff, that of the reading that is
+// judged.
 type ShapeAt struct {
 	Cutoff    cutoff.Cutoff `json:"cutoff"`
-	GapPoints float64       `json:"gap_points"`  // of the reading that is judged
-	MeanAndSD *Effect       `json:"mean_and_sd"` // a given curve's are not these people's; null for a fitted curve
-	HalfStep  *Effect       `json:"half_step"`   // the curve is read without it; null where it is read with it, or there is no step
-	Asymmetry *Effect       `json:"asymmetry"`   // would go away if the scores were mirrored about their mean and both put together
-	Rest      *Effect       `json:"rest"`        // left to the tails and the peak of that symmetric score
-
-	Floor    *Effect `json:"floor"`
-	Ceiling  *Effect `json:"ceiling"`
-	Heaps    *Effect `json:"heaps"`
-	Extremes *Effect `json:"extremes"`
-	Farthest *Effect `json:"farthest"` // no interval: one score is what it is
-
+	GapPoints float64       `json:"gap_points"`
+	Effects
 	Quantile   *float64 `json:"quantile"`    // where the cutoff parts the worm; null where all people are on one side of it
 	QuantileTo *float64 `json:"quantile_to"` // likewise the upper end of a stretch
+}
+
+// Effects are what makes a gap. MeanAndSD, HalfStep, Asymmetry and Rest are
+// its parts: those that are not null add up to it. The others are each the
+// whole difference that one feature makes: the gap less the gap without it,
+// with the curve fitted anew.
+type Effects struct {
+	MeanAndSD *Effect `json:"mean_and_sd"` // a given curve's are not these people's; null for a fitted curve
+	HalfStep  *Effect `json:"half_step"`   // the curve is read without it; null where it is read with it, or there is no step
+	Asymmetry *Effect `json:"asymmetry"`   // would go away if the scores were mirrored about their mean and both put together
+	Rest      *Effect `json:"rest"`        // left to the tails and the peak of that symmetric score
+	Floor     *Effect `json:"floor"`
+	Ceiling   *Effect `json:"ceiling"`
+	Heaps     *Effect `json:"heaps"`
+	Extremes  *Effect `json:"extremes"`
+	Farthest  *Effect `json:"farthest"` // no interval: one score is what it is
 }
 
 // Effect is so many points of a gap, above zero where they make the curve too

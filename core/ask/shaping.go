@@ -30,7 +30,7 @@ func (q Question) shapeReplicates() int { return min(shape.Replicates, q.Replica
 
 // find looks at the shape of the scores.
 func (w *work) find(ctx context.Context, report func(done int)) (err error) {
-	if w.found, err = shape.Run(ctx, w.shaping(), report); err == nil {
+	if w.found, err = shape.Run(ctx, w.shaping(), report); err == nil && !w.question.Everyone {
 		w.tested, err = shape.Test(ctx, w.table)
 	}
 	return err
@@ -55,19 +55,23 @@ func (w *work) shape(cutoffs []Finding) *Shape {
 		s.Farthest = &Farthest{Score: f.Farthest, Z: (f.Farthest - w.table.Moments.Mean) / w.table.Moments.SD}
 	}
 	for i, at := range cutoffs {
-		effects := w.found.Cutoffs[i]
 		from, to := w.places(at.Cutoff)
 		s.Cutoffs = append(s.Cutoffs, ShapeAt{
-			Quantile: from, QuantileTo: to,
-			Cutoff: at.Cutoff, GapPoints: at.GapPoints,
-			MeanAndSD: effect(effects[shape.MeanAndSD]), HalfStep: effect(effects[shape.HalfStep]),
-			Asymmetry: effect(effects[shape.Asymmetry]), Rest: effect(effects[shape.Rest]),
-			Floor: effect(effects[shape.Floor]), Ceiling: effect(effects[shape.Ceiling]), Heaps: effect(effects[shape.Heaps]),
-			Extremes: effect(effects[shape.Extremes]), Farthest: effect(effects[shape.Farthest]),
+			Cutoff: at.Cutoff, GapPoints: at.GapPoints, Effects: w.effects(i), Quantile: from, QuantileTo: to,
 		})
 	}
 	s.Tests, s.Worm = w.tests(), w.worm()
 	return s
+}
+
+func (w *work) effects(cutoff int) Effects {
+	found := w.found.Cutoffs[cutoff]
+	return Effects{
+		MeanAndSD: effect(found[shape.MeanAndSD]), HalfStep: effect(found[shape.HalfStep]),
+		Asymmetry: effect(found[shape.Asymmetry]), Rest: effect(found[shape.Rest]),
+		Floor: effect(found[shape.Floor]), Ceiling: effect(found[shape.Ceiling]), Heaps: effect(found[shape.Heaps]),
+		Extremes: effect(found[shape.Extremes]), Farthest: effect(found[shape.Farthest]),
+	}
 }
 
 // places are where the cutoff's ends part the worm.
@@ -90,6 +94,8 @@ func (w *work) tests() Tests {
 		tests.Lilliefors = &Lilliefors{D: l.D, P: l.P}
 	}
 	switch n := w.table.Counts.N; {
+	case w.question.Everyone:
+		tests.LeftOut = "these are all the people, and a test is about those who were not seen"
 	case !w.table.Curve.Fitted:
 		tests.LeftOut = "the tests are for a curve that is fitted to the scores"
 	case n < shape.FewestForLilliefors:

@@ -68,6 +68,9 @@ const rules = `.tailgap text{font:13px/1 Charter,"Iowan Old Style","Source Serif
 	`.tailgap .bar{fill:{moss};fill-opacity:` + barTint + `}` +
 	`.tailgap .beyond{fill:{moss}}` +
 	`.tailgap .skyline{fill:none;stroke:{moss};stroke-width:1}` +
+	`.tailgap .limits{fill:{plum};fill-opacity:` + bandTint + `}` +
+	`.tailgap .limit{fill:none;stroke:{plum};stroke-width:.8;stroke-opacity:` + edgeTint + `}` +
+	`.tailgap .link{fill:none;stroke:{moss};stroke-width:1;stroke-opacity:` + edgeTint + `}` +
 	`.tailgap .share{fill:{plum};fill-opacity:` + areaTint + `}`
 
 var (

@@ -45,10 +45,15 @@ func ends(c cutoff.Cutoff) []float64 {
 // flags names and places the cutoffs. Names are said in words and verdicts
 // with them, unless that takes too many rows.
 func flags(r ask.Result, side cutoff.Side, f Frame, size float64) (laid []flag, rows int) {
-	for style := 0; style < 3; style++ {
+	return lay(len(r.Cutoffs), func(i, style int) flag { return newFlag(i, r.Cutoffs[i], side, f, size, style) })
+}
+
+// lay stacks n flags in the longest of three styles that takes two rows.
+func lay(n int, named func(index, style int) flag) (laid []flag, rows int) {
+	for style := range 3 {
 		laid = laid[:0]
-		for i, finding := range r.Cutoffs {
-			laid = append(laid, newFlag(i, finding, side, f, size, style))
+		for i := range n {
+			laid = append(laid, named(i, style))
 		}
 		rows = stack(laid)
 		if rows <= 2 {
@@ -62,7 +67,20 @@ func flags(r ask.Result, side cutoff.Side, f Frame, size float64) (laid []flag, 
 // "≥ 30: fails" and "≥ 30" beside its mark.
 func newFlag(index int, finding ask.Finding, side cutoff.Side, f Frame, size float64, style int) flag {
 	c := finding.Cutoff
-	l := flag{index: index, cutoff: c, aside: c.Side != side && c.Side != cutoff.Stretch}
+	pole, out := f.pin(c.At)
+	if c.Side == cutoff.Stretch && out < 0 {
+		if pole, out = f.pin(c.To); out > 0 { // the whole frame lies inside the stretch
+			pole, out = f.Left, 0
+		}
+	}
+	return flagAt(index, finding, c.Side != side && c.Side != cutoff.Stretch, pole, out, f, size, style)
+}
+
+// flagAt words a flag whose pole stands at so many px; out says on which side
+// of the frame the cutoff lies outside.
+func flagAt(index int, finding ask.Finding, aside bool, pole float64, out int, f Frame, size float64, style int) flag {
+	c := finding.Cutoff
+	l := flag{index: index, cutoff: c, aside: aside}
 	if !l.aside {
 		l.verdict = verdictOf(finding)
 	}
@@ -70,12 +88,6 @@ func newFlag(index int, finding ask.Finding, side cutoff.Side, f Frame, size flo
 		l.name = strings.TrimPrefix(strings.TrimPrefix(c.Words(), "at "), "from ")
 	} else {
 		l.name = strings.NewReplacer(">=", "≥ ", "<=", "≤ ", ">", "> ", "<", "< ", "..", "–").Replace(c.String())
-	}
-	pole, out := f.pin(c.At)
-	if c.Side == cutoff.Stretch && out < 0 {
-		if pole, out = f.pin(c.To); out > 0 { // the whole frame lies inside the stretch
-			pole, out = f.Left, 0
-		}
 	}
 	l.name = shorten(l.name, size*bolder, (f.Right-f.Left)/2)
 	switch out {

@@ -19,6 +19,16 @@ const (
 // with the counted scores against the curve. It says DEMO when the answer
 // came from the demo.
 func Sheet(a ask.Answer) string {
+	return newSheet(a, "How far the curve is from the count", (*sheet).result)
+}
+
+// WormSheet is a standalone SVG with the worm plot of each result, and what
+// the shape of its scores does to the gaps. It says DEMO likewise.
+func WormSheet(a ask.Answer) string {
+	return newSheet(a, "What the shape of the scores does", (*sheet).shape)
+}
+
+func newSheet(a ask.Answer, title string, result func(s *sheet, index int, r ask.Result)) string {
 	s := &sheet{canvas: canvas{prefix: "sheet"}, q: a.Question, y: sheetMargin}
 	if a.Demo {
 		s.paragraph("strong", words.Demo())
@@ -28,12 +38,12 @@ func Sheet(a ask.Answer) string {
 			s.y += 28
 			s.line("zero", sheetMargin, s.y-14, sheetWidth-sheetMargin, s.y-14)
 		}
-		s.result(i, r)
+		result(s, i, r)
 	}
 	s.y += 10
 	s.sentences(append(a.General(), words.Cautions()...))
 	s.paragraph("soft", words.Method(a))
-	return drawing{width: sheetWidth, height: s.y + 12, title: s.title(a), description: sentences(s.said...), body: s.String()}.
+	return drawing{width: sheetWidth, height: s.y + 12, title: titled(a, title), description: sentences(s.said...), body: s.String()}.
 		document(Options{Width: sheetWidth, Standalone: true, Prefix: "sheet"})
 }
 
@@ -46,8 +56,8 @@ type sheet struct {
 	said []string
 }
 
-func (s *sheet) title(a ask.Answer) string {
-	title := "How far the curve is from the count"
+// titled is a sheet's title, with the scores that it is about.
+func titled(a ask.Answer, title string) string {
 	for i, r := range a.Results {
 		if i == 0 {
 			title += ": "
@@ -82,13 +92,35 @@ func (s *sheet) sentences(texts []string) {
 	}
 }
 
-func (s *sheet) result(index int, r ask.Result) {
+// head says what a result is about.
+func (s *sheet) head(r ask.Result) {
 	s.y += 34
 	s.text("title", "start", sheetMargin, s.y-8, words.Name(r.Score))
 	s.said = append(s.said, words.Name(r.Score))
 	s.paragraph("", sentences(words.Capital(words.Curve(r))))
 	s.paragraph("soft", sentences(words.Capital(words.Sample(r))))
 	s.sentences(r.Warnings)
+}
+
+// shape draws a result's worm and says what its shape does.
+func (s *sheet) shape(index int, r ask.Result) {
+	s.head(r)
+	if worm, ok := drawWorm(s.q, r, Options{Width: sheetWidth - 2*sheetMargin, Selected: -1, Prefix: "sheet-" + strconv.Itoa(index)}); ok {
+		s.y += 14
+		s.place(worm)
+		s.paragraph("soft", words.ReadWorm())
+	}
+	for _, text := range append(words.Worm(s.q, r), words.Shape(s.q, r)...) {
+		s.paragraph("", text)
+	}
+	s.paragraph("soft", words.Normality(r))
+	if words.Tested(r) {
+		s.paragraph("soft", words.NoAnswer())
+	}
+}
+
+func (s *sheet) result(index int, r ask.Result) {
+	s.head(r)
 	drawn := map[int]bool{}
 	for i, sweep := range r.Sweeps {
 		prefix := "sheet-" + strconv.Itoa(index) + "-" + strconv.Itoa(i)

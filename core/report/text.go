@@ -33,7 +33,10 @@ func Text(a ask.Answer) string {
 }
 
 // text is the text so far.
-type text struct{ strings.Builder }
+type text struct {
+	strings.Builder
+	tested bool // what a test of normality is no answer to has been said
+}
 
 func (t *text) gap() {
 	if t.Len() > 0 {
@@ -76,6 +79,7 @@ func (t *text) result(q ask.Question, r ask.Result) {
 	t.list("Warning: ", r.Warnings)
 	t.findings(q, r)
 	t.stretches(q, r)
+	t.shape(q, r)
 }
 
 func (t *text) findings(q ask.Question, r ask.Result) {
@@ -181,5 +185,26 @@ func (t *text) stretches(q ask.Question, r ask.Result) {
 	}
 	for _, sentence := range sentences {
 		t.line(sentence)
+	}
+}
+
+// shape says what the shape of the scores does to the gaps, and what tests of
+// normality have to say.
+func (t *text) shape(q ask.Question, r ask.Result) {
+	sentences := words.Shape(q, r)
+	if tests := words.Normality(r); tests != "" {
+		if words.Tested(r) && !t.tested {
+			tests += " " + words.NoAnswer()
+			t.tested = true
+		}
+		sentences = append(sentences, tests)
+	}
+	if len(sentences) == 0 {
+		return
+	}
+	t.gap()
+	t.line("Shape: what makes the gaps.")
+	for _, sentence := range sentences {
+		t.WriteString(wrapped("- ", "  ", sentence))
 	}
 }

@@ -47,9 +47,13 @@
 //	SE² = Var* + max(0, Q̃(1-Q̃) - Q(1-Q))/(4n)
 //
 // and likewise for heaps, Q being the share of the people at and around the
-// heaps that a region cuts in two. All these have an interval that holds both t·SE each way and the percentile interval:
-// reflection about the mean puts a kink in them where the scores begin, and
-// there either alone is too short. [testdata/shape/README.md] has the
-// coverage. Skewness and kurtosis of strongly skewed or heavy-tailed scores
-// are badly known from any sample: their intervals are too short there.
+// heaps that a region cuts in two. The interval holds both t·SE each way and
+// the percentile interval: reflection about the mean puts a kink into
+// asymmetry and rest where the scores begin, and there either alone is too
+// short. The single most extreme score has no interval: it is what it is.
+//
+// testdata/shape/README.md has the coverage. Skewness and kurtosis of strongly
+// skewed or heavy-tailed scores are badly known from any sample; their
+// intervals are too short there, and end where those of n scores must:
+// |skewness| at (n-2)/√(n-1), kurtosis at 1 and n-2+1/(n-1).
 package shape

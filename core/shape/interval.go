@@ -23,11 +23,17 @@ func assemble(plan *Plan, f Features, estimates *values, replicates []values, bi
 	}
 	out.Skewness = Value{estimates.skewness, plan.studentised(t, n, estimates.skewness, estimates.skewnessVariance,
 		of(func(v *values) float64 { return v.skewness }), of(func(v *values) float64 { return v.skewnessVariance }))}
+	if i := out.Skewness.Interval; i != nil {
+		most := (n - 2) / math.Sqrt(n-1)
+		*i = between(*i, -most, most)
+	}
 	out.ExcessKurtosis = Value{Estimate: estimates.kurtosis - 3}
 	logarithm := func(v *values) float64 { return math.Log(v.kurtosis) }
 	variance := func(v *values) float64 { return v.kurtosisVariance / (v.kurtosis * v.kurtosis) }
 	if i := plan.studentised(t, n, logarithm(estimates), variance(estimates), of(logarithm), of(variance)); i != nil {
-		out.ExcessKurtosis.Interval = &resample.Interval{Low: math.Exp(i.Low) - 3, High: math.Exp(i.High) - 3}
+		i = &resample.Interval{Low: math.Exp(i.Low), High: math.Exp(i.High)}
+		*i = between(*i, 1, n-2+1/(n-1))
+		out.ExcessKurtosis.Interval = &resample.Interval{Low: i.Low - 3, High: i.High - 3}
 	}
 	for c := range estimates.cutoffs {
 		var effects Effects
@@ -62,6 +68,11 @@ func assemble(plan *Plan, f Features, estimates *values, replicates []values, bi
 func ghosts(n, q float64) float64 {
 	shrunk := (n*q + 2) / (n + 4)
 	return math.Max(0, shrunk*(1-shrunk)-q*(1-q)) / (4 * n)
+}
+
+// between is the interval cut off at the least and the most.
+func between(i resample.Interval, least, most float64) resample.Interval {
+	return resample.Interval{Low: math.Max(i.Low, least), High: math.Min(i.High, most)}
 }
 
 // applies is true where a kind makes a part of a cutoff's gap.

@@ -1,6 +1,6 @@
 #!/bin/sh
 # Makes the check values again. Run from testdata:
-#   sh generate/reference.sh            interval/, worked/, nist/: about 2 minutes
+#   sh generate/reference.sh            interval/, shape/, worked/, nist/: about 3 minutes
 #   sh generate/reference.sh all        open/ and expected/ too: about 8 minutes more
 # Needs R and, for python3, NumPy, SciPy and mpmath; "all" also needs the R
 # packages boot, MASS, psychotools, nortest, tseries, fBasics, e1071, jsonlite
@@ -18,6 +18,8 @@ if [ "${1:-}" = all ]; then
 fi
 "$python" generate/nist.py
 "$python" generate/worked.py
+"$python" generate/normality.py
+Rscript generate/shape.R
 Rscript generate/interval.R
 "$python" generate/interval.py
 "$python" generate/fullmethod.py
