@@ -94,7 +94,7 @@ func TestWorm(t *testing.T) {
 	path := filepath.Join(t.TempDir(), "worm.svg")
 	_, _, status := tailgap("", "judge", "--demo", "--replicates", "500", "--worm", path)
 	assert.Equal(t, statusFails, status)
-	assert.Contains(t, read(t, path), "Worm plot")
+	assert.Contains(t, read(t, path), "95% limits")
 	assert.Contains(t, read(t, path), "DEMO")
 }
 

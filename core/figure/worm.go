@@ -186,7 +186,7 @@ func (d *wormDrawing) quantileAxis() {
 		x := d.frame.X(value)
 		d.line("zero", x, d.bottom, x, d.bottom+4)
 		if labels[i] != "" {
-			d.text("halo", "middle", x, d.bottom+8+d.size, signed(value))
+			d.text("halo", "middle", x, d.bottom+8+d.size, labels[i])
 		}
 	}
 	d.line("zero", d.frame.Left, d.bottom, d.frame.Right, d.bottom)

@@ -33,7 +33,8 @@ func JSON(a ask.Answer) ([]byte, error) {
 // ReadJSON reads an answer that JSON wrote. An answer of another
 // version is refused, and one whose question can't be asked; fields it
 // doesn't know are ignored. It is an error if the text is no JSON, goes on
-// after the answer, or has sweeps whose columns differ in length.
+// after the answer, or has a sweep or a worm whose columns
+// differ in length.
 func ReadJSON(text []byte) (ask.Answer, error) {
 	var version struct {
 		Format string `json:"format"`
@@ -56,6 +57,9 @@ func ReadJSON(text []byte) (ask.Answer, error) {
 			if err := checkSweep(s); err != nil {
 				return ask.Answer{}, err
 			}
+		}
+		if err := checkWorm(r); err != nil {
+			return ask.Answer{}, err
 		}
 	}
 	return a, nil
@@ -80,6 +84,19 @@ func unreadable(text []byte, err error) error {
 func position(text []byte, offset int64) (line, column int) {
 	before := text[:min(max(offset-1, 0), int64(len(text)))]
 	return 1 + bytes.Count(before, []byte("\n")), len(before) - bytes.LastIndexByte(before, '\n')
+}
+
+func checkWorm(r ask.Result) error {
+	if r.Shape == nil {
+		return nil
+	}
+	w := r.Shape.Worm
+	for name, values := range map[string][]float64{"quantile": w.Quantile, "deviation": w.Deviation, "limit": w.Limit} {
+		if len(values) != len(w.Score) && !(name == "limit" && values == nil) {
+			return fmt.Errorf("the answer can't be read: the worm of %.40s has %d scores but %d of %s", r.Score, len(w.Score), len(values), name)
+		}
+	}
+	return nil
 }
 
 func checkSweep(s ask.Sweep) error {

@@ -87,11 +87,11 @@ func fixedShare(given gap.Table, ends []gap.Threshold) float64 {
 }
 
 // evaluate computes the values into into, whose cutoffs are there already.
-// It is false where the counts are all on one entry: nothing is computed then.
+// It is false where the counts are all but on one score: nothing is computed then.
 func (e *evaluator) evaluate(plan *Plan, count []int32, into *values) bool {
 	all := e.sum(count, e.before)
 	sums := all.sums()
-	if !(sums.M2 > 0) {
+	if !spread(&sums) {
 		return false
 	}
 	into.moments = e.moments(count, sums.N, sums.Mean)

@@ -7,60 +7,85 @@ import (
 	"tailgap/core/resample"
 )
 
-// assemble gives the estimates their intervals; replicates are nil when
-// everyone was counted. Where the resamples were drawn from bins, heaps have
-// none.
+// assembly gives the estimates their intervals. There are no replicates when
+// everyone was counted.
+type assembly struct {
+	plan       *Plan
+	features   Features
+	estimates  *values
+	replicates []values
+	bins       bool // the replicates were drawn from bins, and heaps have no interval
+	n, t       float64
+}
+
 func assemble(plan *Plan, f Features, estimates *values, replicates []values, bins bool) Findings {
-	n := float64(plan.Table.Counts.N)
-	out := Findings{Features: f, Replicates: len(replicates)}
-	t := resample.StudentT(plan.Table.Counts.N, plan.Level)
-	of := func(get func(*values) float64) []float64 {
-		all := make([]float64, len(replicates))
-		for i := range replicates {
-			all[i] = get(&replicates[i])
-		}
-		return all
-	}
-	out.Skewness = Value{estimates.skewness, plan.studentised(t, n, estimates.skewness, estimates.skewnessVariance,
-		of(func(v *values) float64 { return v.skewness }), of(func(v *values) float64 { return v.skewnessVariance }))}
-	if i := out.Skewness.Interval; i != nil {
-		most := (n - 2) / math.Sqrt(n-1)
-		*i = between(*i, -most, most)
-	}
-	out.ExcessKurtosis = Value{Estimate: estimates.kurtosis - 3}
-	logarithm := func(v *values) float64 { return math.Log(v.kurtosis) }
-	variance := func(v *values) float64 { return v.kurtosisVariance / (v.kurtosis * v.kurtosis) }
-	if i := plan.studentised(t, n, logarithm(estimates), variance(estimates), of(logarithm), of(variance)); i != nil {
-		i = &resample.Interval{Low: math.Exp(i.Low), High: math.Exp(i.High)}
-		*i = between(*i, 1, n-2+1/(n-1))
-		out.ExcessKurtosis.Interval = &resample.Interval{Low: i.Low - 3, High: i.High - 3}
-	}
+	n := plan.Table.Counts.N
+	a := assembly{plan, f, estimates, replicates, bins, float64(n), resample.StudentT(n, plan.Level)}
+	out := Findings{Skewness: a.skewness(), ExcessKurtosis: a.excessKurtosis(), Features: f, Replicates: len(replicates)}
 	for c := range estimates.cutoffs {
-		var effects Effects
-		estimate := &estimates.cutoffs[c]
-		for kind := range kinds {
-			if !plan.applies(kind, c, f) || math.IsNaN(estimate.value[kind]) {
-				continue
-			}
-			v := Value{Estimate: estimate.value[kind]}
-			all := of(func(v *values) float64 { return v.cutoffs[c].value[kind] })
-			switch {
-			case kind == MeanAndSD || kind == HalfStep:
-				v.Interval = plan.studentised(t, n, v.Estimate, estimate.variance[kind], all,
-					of(func(v *values) float64 { return v.cutoffs[c].variance[kind] }))
-			case kind == Asymmetry || kind == Rest:
-				v.Interval = plan.hull(t, v.Estimate, all, ghosts(n, estimate.outside))
-			case kind == Farthest || kind == Heaps && bins:
-			case kind == Heaps:
-				v.Interval = plan.hull(t, v.Estimate, all, ghosts(n, estimate.astride))
-			default:
-				v.Interval = plan.hull(t, v.Estimate, all, 0)
-			}
-			effects[kind] = &v
-		}
-		out.Cutoffs = append(out.Cutoffs, effects)
+		out.Cutoffs = append(out.Cutoffs, a.effects(c))
 	}
 	return out
+}
+
+// of is a value of every replicate.
+func (a *assembly) of(get func(*values) float64) []float64 {
+	all := make([]float64, len(a.replicates))
+	for i := range a.replicates {
+		all[i] = get(&a.replicates[i])
+	}
+	return all
+}
+
+func (a *assembly) skewness() Value {
+	value, variance := func(v *values) float64 { return v.skewness }, func(v *values) float64 { return v.skewnessVariance }
+	out := Value{Estimate: a.estimates.skewness, Interval: a.studentised(value, variance)}
+	if out.Interval != nil {
+		most := (a.n - 2) / math.Sqrt(a.n-1)
+		*out.Interval = between(*out.Interval, -most, most)
+	}
+	return out
+}
+
+func (a *assembly) excessKurtosis() Value {
+	logarithm := func(v *values) float64 { return math.Log(v.kurtosis) }
+	variance := func(v *values) float64 { return v.kurtosisVariance / (v.kurtosis * v.kurtosis) }
+	out := Value{Estimate: a.estimates.kurtosis - 3}
+	if i := a.studentised(logarithm, variance); i != nil {
+		kurtosis := between(resample.Interval{Low: math.Exp(i.Low), High: math.Exp(i.High)}, 1, a.n-2+1/(a.n-1))
+		out.Interval = &resample.Interval{Low: kurtosis.Low - 3, High: kurtosis.High - 3}
+	}
+	return out
+}
+
+// between is the interval cut off at the least and the most.
+func between(i resample.Interval, least, most float64) resample.Interval {
+	return resample.Interval{Low: math.Max(i.Low, least), High: math.Min(i.High, most)}
+}
+
+// effects are those at one cutoff.
+func (a *assembly) effects(c int) (effects Effects) {
+	parts := &a.estimates.cutoffs[c]
+	for kind := range kinds {
+		if !a.plan.applies(kind, c, a.features) || math.IsNaN(parts.value[kind]) {
+			continue
+		}
+		value := func(v *values) float64 { return v.cutoffs[c].value[kind] }
+		v := &Value{Estimate: parts.value[kind]}
+		switch {
+		case kind == MeanAndSD || kind == HalfStep:
+			v.Interval = a.studentised(value, func(v *values) float64 { return v.cutoffs[c].variance[kind] })
+		case kind == Asymmetry || kind == Rest:
+			v.Interval = a.hull(value, ghosts(a.n, parts.outside))
+		case kind == Farthest || kind == Heaps && a.bins:
+		case kind == Heaps:
+			v.Interval = a.hull(value, ghosts(a.n, parts.astride))
+		default:
+			v.Interval = a.hull(value, 0)
+		}
+		effects[kind] = v
+	}
+	return effects
 }
 
 // ghosts is the variance that four made-up people, two of them in the share q,
@@ -68,11 +93,6 @@ func assemble(plan *Plan, f Features, estimates *values, replicates []values, bi
 func ghosts(n, q float64) float64 {
 	shrunk := (n*q + 2) / (n + 4)
 	return math.Max(0, shrunk*(1-shrunk)-q*(1-q)) / (4 * n)
-}
-
-// between is the interval cut off at the least and the most.
-func between(i resample.Interval, least, most float64) resample.Interval {
-	return resample.Interval{Low: math.Max(i.Low, least), High: math.Min(i.High, most)}
 }
 
 // applies is true where a kind makes a part of a cutoff's gap.
@@ -103,33 +123,34 @@ func (p *Plan) applies(kind Kind, c int, f Features) bool {
 }
 
 // studentised is the interval of max(t, q) standard errors each way, q the
-// level's quantile of the studentised replicates; nil where there is no
-// standard error.
-func (p *Plan) studentised(t, n, estimate, variance float64, all, variances []float64) *resample.Interval {
-	if !(variance > 0) {
+// level's quantile of the studentised replicates, of a value with n times its
+// variance; nil where there is no standard error.
+func (a *assembly) studentised(value, variance func(*values) float64) *resample.Interval {
+	estimate, least := value(a.estimates), variance(a.estimates)
+	if !(least > 0) {
 		return nil
 	}
+	variances := a.of(variance)
 	var squares []float64
-	for i, x := range all {
+	for i, x := range a.of(value) {
 		d := x - estimate
-		if square := d * d * n / math.Max(variances[i], 0.05*variance); !math.IsNaN(square) {
+		if square := d * d * a.n / math.Max(variances[i], 0.05*least); !math.IsNaN(square) {
 			squares = append(squares, square)
 		}
 	}
-	if !p.enough(len(squares)) {
+	if !a.plan.enough(len(squares)) {
 		return nil
 	}
 	slices.Sort(squares)
-	q := math.Sqrt(quantile(squares, p.Level))
-	margin := math.Max(t, q) * math.Sqrt(variance/n)
+	margin := math.Max(a.t, math.Sqrt(quantile(squares, a.plan.Level))) * math.Sqrt(least/a.n)
 	return &resample.Interval{Low: estimate - margin, High: estimate + margin}
 }
 
 // hull is the interval that holds t standard errors of the replicates each
 // way and their percentile interval; extra is added to their variance.
-func (p *Plan) hull(t, estimate float64, all []float64, extra float64) *resample.Interval {
-	all = slices.DeleteFunc(all, math.IsNaN)
-	if !p.enough(len(all)) {
+func (a *assembly) hull(value func(*values) float64, extra float64) *resample.Interval {
+	all := slices.DeleteFunc(a.of(value), math.IsNaN)
+	if !a.plan.enough(len(all)) {
 		return nil
 	}
 	mean, squares := 0.0, 0.0
@@ -139,9 +160,9 @@ func (p *Plan) hull(t, estimate float64, all []float64, extra float64) *resample
 	for _, x := range all {
 		squares += (x - mean) * (x - mean)
 	}
-	margin := t * math.Sqrt(squares/float64(len(all)-1)+extra)
+	estimate, tail := value(a.estimates), (1-a.plan.Level)/2
+	margin := a.t * math.Sqrt(squares/float64(len(all)-1)+extra)
 	slices.Sort(all)
-	tail := (1 - p.Level) / 2
 	around := resample.Interval{Low: estimate - margin, High: estimate + margin}
 	return new(around.Hull(resample.Interval{Low: quantile(all, tail), High: quantile(all, 1-tail)}))
 }

@@ -51,7 +51,7 @@ func (e *evaluator) edges() []int {
 }
 
 // blockSize is how many replicates share one stream of random numbers.
-const blockSize = 50
+const blockSize = 16
 
 // ownStream keeps the numbers drawn here apart from those of the intervals of
 // the gaps, which have the same seed.
@@ -59,51 +59,21 @@ const ownStream = 0x5368617065 // any number but 0
 
 // draw evaluates the replicates. Those without a spread are left out.
 func draw(ctx context.Context, plan *Plan, newEvaluator func() *evaluator, progress func(done int)) ([]values, error) {
-	all := make([]values, plan.Replicates)
-	drawn := make([]bool, plan.Replicates)
 	workers := plan.Workers
 	if workers <= 0 {
 		workers = runtime.GOMAXPROCS(0)
 	}
 	workers = min(workers, (plan.Replicates+blockSize-1)/blockSize)
-	var next atomic.Int64
-	type report struct {
-		done    int
-		ended   bool
-		failure any
-	}
-	reports := make(chan report, workers)
 	first := newEvaluator()
-	drawer := resample.NewDrawer(first.table.Counts)
-	work := func(e *evaluator) {
-		defer func() { reports <- report{ended: true, failure: recover()} }()
-		var stream resample.Stream
-		count := make([]int32, len(e.table.U))
-		for {
-			block := int(next.Add(1)) - 1
-			from, to := block*blockSize, min((block+1)*blockSize, plan.Replicates)
-			if from >= to {
-				return
-			}
-			stream.Restart(plan.Seed^ownStream, block)
-			for i := from; i < to; i++ {
-				if ctx.Err() != nil {
-					return
-				}
-				drawer.Draw(&stream, count)
-				all[i].cutoffs = make([]parts, len(plan.Cutoffs))
-				drawn[i] = e.evaluate(plan, count, &all[i])
-			}
-			reports <- report{done: to - from}
-		}
-	}
-	go work(first)
+	d := &draws{plan: plan, drawer: resample.NewDrawer(first.table.Counts),
+		all: make([]values, plan.Replicates), spread: make([]bool, plan.Replicates), reports: make(chan report, workers)}
+	go d.work(ctx, first)
 	for range workers - 1 {
-		go work(newEvaluator())
+		go d.work(ctx, newEvaluator())
 	}
 	var failure any
 	for done := 0; workers > 0; {
-		r := <-reports
+		r := <-d.reports
 		switch {
 		case r.ended:
 			workers--
@@ -118,13 +88,57 @@ func draw(ctx context.Context, plan *Plan, newEvaluator func() *evaluator, progr
 	if failure != nil {
 		panic(failure) // here the caller can recover it
 	}
-	kept := all[:0]
-	for i := range all {
-		if drawn[i] {
-			kept = append(kept, all[i])
+	kept := d.all[:0]
+	for i, v := range d.all {
+		if d.spread[i] {
+			kept = append(kept, v)
 		}
 	}
 	return kept, ctx.Err()
+}
+
+// draws are the replicates in the making. Each has its place, so that it
+// doesn't matter which worker makes it.
+type draws struct {
+	plan    *Plan
+	drawer  resample.Drawer
+	all     []values
+	spread  []bool // those that have a spread
+	next    atomic.Int64
+	reports chan report
+}
+
+// report is what a worker tells: so many replicates done, or that it has
+// ended, and with what panic if there was one.
+type report struct {
+	done    int
+	ended   bool
+	failure any
+}
+
+// work takes blocks of replicates, the next that nobody has taken, until there
+// are no more or the context ends.
+func (d *draws) work(ctx context.Context, e *evaluator) {
+	defer func() { d.reports <- report{ended: true, failure: recover()} }()
+	var stream resample.Stream
+	count := make([]int32, len(e.table.U))
+	for {
+		block := int(d.next.Add(1)) - 1
+		from, to := block*blockSize, min((block+1)*blockSize, len(d.all))
+		if from >= to {
+			return
+		}
+		stream.Restart(d.plan.Seed^ownStream, block)
+		for i := from; i < to; i++ {
+			if ctx.Err() != nil {
+				return
+			}
+			d.drawer.Draw(&stream, count)
+			d.all[i].cutoffs = make([]parts, len(d.plan.Cutoffs))
+			d.spread[i] = e.evaluate(d.plan, count, &d.all[i])
+		}
+		d.reports <- report{done: to - from}
+	}
 }
 
 // usable is the share of the replicates that must have a value for it to get

@@ -77,18 +77,19 @@ type weighted struct {
 func (e *evaluator) newHeaps(scale sample.Scale) []heap {
 	var heaps []heap
 	for _, at := range e.features.Heaps.At {
-		if h := e.newHeap(scale, at); !e.bins && h.around != nil {
+		if h, ok := e.newHeap(scale, at); ok && !e.bins {
 			heaps = append(heaps, h)
 		}
 	}
 	return heaps
 }
 
-func (e *evaluator) newHeap(scale sample.Scale, at int) heap {
+// newHeap is the heap at an entry; none where the scale has no score around it.
+func (e *evaluator) newHeap(scale sample.Scale, at int) (h heap, ok bool) {
 	counts, index := e.table.Counts, scale.Index(e.table.Counts.Score[at])
 	lowest, highest := math.Min(scale.Low, counts.Min()), math.Max(scale.High, counts.Max())
 	steps := e.features.Heaps.Spacing / scale.Step / 2
-	h := heap{at: at}
+	h.at = at
 	total, inside := 0.0, make([]float64, len(e.regions))
 	for k := -math.Floor(steps + 0.1); k <= steps+0.1; k++ {
 		score := scale.Score(index + k)
@@ -118,7 +119,7 @@ func (e *evaluator) newHeap(scale sample.Scale, at int) heap {
 		inside[i] = inside[i]/total - e.regions[i].holds(counts.Score[at], scale.Step/4)
 	}
 	h.inside = inside
-	return h
+	return h, total > 1
 }
 
 // holds is 1 for a score inside the region as it is judged, up to noise, and 0

@@ -10,8 +10,8 @@ import (
 )
 
 const (
-	// mostSentences is how many sentences the shape of a score gets; those
-	// about the largest effects stay.
+	// mostSentences is how many sentences the shape of a score gets: those
+	// with a figure, and of the others those about the largest effects.
 	mostSentences = 6
 	// mostNamed is how many cutoffs a sentence names.
 	mostNamed = 3
@@ -65,7 +65,8 @@ func Shape(q ask.Question, r ask.Result) []string {
 	return sentences
 }
 
-// said is a sentence with the size of the largest effect in it.
+// said is a sentence with the size of the largest effect in it; infinite where
+// it is said whatever the effect.
 type said struct {
 	text string
 	size float64
@@ -175,9 +176,9 @@ func parts(q ask.Question, r ask.Result, l lead, of func(ask.ShapeAt) *ask.Effec
 	case l.figure == "":
 		return said{Capital(text) + ".", size}
 	case text == "":
-		return said{Capital(l.figure) + ".", size}
+		return said{Capital(l.figure) + ".", math.Inf(1)}
 	default:
-		return said{Capital(l.figure) + ": " + text + ".", size}
+		return said{Capital(l.figure) + ": " + text + ".", math.Inf(1)}
 	}
 }
 
