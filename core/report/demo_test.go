@@ -79,5 +79,5 @@ func TestReadJSONRefusesABrokenWorm(t *testing.T) {
 	text, err := JSON(a)
 	require.NoError(t, err)
 	_, err = ReadJSON(text)
-	assert.EqualError(t, err, "the answer can't be read: the worm of vocabulary has 37 scores but 36 of deviation")
+	assert.EqualError(t, err, "the answer can't be read: the worm of \"vocabulary\" has 37 scores but 36 of deviation")
 }

@@ -33,8 +33,8 @@ func JSON(a ask.Answer) ([]byte, error) {
 // ReadJSON reads an answer that JSON wrote. An answer of another
 // version is refused, and one whose question can't be asked; fields it
 // doesn't know are ignored. It is an error if the text is no JSON, goes on
-// after the answer, or has a sweep or a worm whose columns
-// differ in length.
+// after the answer, or has a sweep or a worm whose columns differ in
+// length.
 func ReadJSON(text []byte) (ask.Answer, error) {
 	var version struct {
 		Format string `json:"format"`
@@ -91,9 +91,13 @@ func checkWorm(r ask.Result) error {
 		return nil
 	}
 	w := r.Shape.Worm
-	for name, values := range map[string][]float64{"quantile": w.Quantile, "deviation": w.Deviation, "limit": w.Limit} {
-		if len(values) != len(w.Score) && !(name == "limit" && values == nil) {
-			return fmt.Errorf("the answer can't be read: the worm of %.40s has %d scores but %d of %s", r.Score, len(w.Score), len(values), name)
+	for _, column := range []struct {
+		name     string
+		values   []float64
+		optional bool
+	}{{"quantile", w.Quantile, false}, {"deviation", w.Deviation, false}, {"limit", w.Limit, true}} {
+		if len(column.values) != len(w.Score) && !(column.optional && column.values == nil) {
+			return fmt.Errorf("the answer can't be read: the worm of %.40q has %d scores but %d of %s", r.Score, len(w.Score), len(column.values), column.name)
 		}
 	}
 	return nil
