@@ -69,7 +69,7 @@ func PeopleToSettle(t Tolerance, n int, level float64, limits func(weight float6
 		}
 		l := limits(side.edge.Weight)
 		room := side.sign * (side.edge.At - l.Gap) // below zero: outside this edge
-		reach := l.High - l.Gap // of the limit that has to clear the edge
+		reach := l.High - l.Gap                    // of the limit that has to clear the edge
 		if (side.sign > 0) == (room < 0) {
 			reach = l.Gap - l.Low
 		}

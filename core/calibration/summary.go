@@ -1,0 +1,191 @@
+package calibration
+
+import (
+	"fmt"
+	"io"
+	"math"
+	"slices"
+	"strings"
+)
+
+// Summary is the spread of a figure over cells: its worst, its 5th percentile
+// (the value with a twentieth of the cells below it) and its mean.
+type Summary struct{ Worst, Fifth, Mean float64 }
+
+func summarise(values []float64) Summary {
+	if len(values) == 0 {
+		return Summary{math.NaN(), math.NaN(), math.NaN()}
+	}
+	sorted := slices.Sorted(slices.Values(values))
+	sum := 0.0
+	for _, v := range sorted {
+		sum += v
+	}
+	return Summary{sorted[0], sorted[len(sorted)/20], sum / float64(len(sorted))}
+}
+
+// Coverage is that of the intervals over all cells of the tallies that want
+// is true for.
+func Coverage(tallies []Tally, want func(t Tally) bool) Summary {
+	var values []float64
+	for _, t := range tallies {
+		if want(t) {
+			for _, c := range t.Cells {
+				values = append(values, t.Coverage(c))
+			}
+		}
+	}
+	return summarise(values)
+}
+
+// BandCoverage is that of the bands likewise.
+func BandCoverage(tallies []Tally, want func(t Tally) bool) Summary {
+	var values []float64
+	for _, t := range tallies {
+		if want(t) {
+			values = append(values, t.BandCoverage())
+		}
+	}
+	return summarise(values)
+}
+
+// RelativeWidth is the median, over the cells, of the mean width over the
+// oracle's. Cells in which the oracle's interval is narrower than a hundredth
+// of a point are left out.
+func RelativeWidth(tallies []Tally, want func(t Tally) bool) float64 {
+	var values []float64
+	for _, t := range tallies {
+		for _, c := range t.Cells {
+			if want(t) && c.Oracle >= 0.01 {
+				values = append(values, c.Width/c.Oracle)
+			}
+		}
+	}
+	return median(values)
+}
+
+// Wrong is how often a verdict at the boundary was wrong: the median and the
+// largest part of the samples over all cells.
+func Wrong(tallies []Tally, want func(t Tally) bool, of func(c Cell) int) (middle, largest float64) {
+	var values []float64
+	for _, t := range tallies {
+		if want(t) {
+			for _, c := range t.Cells {
+				values = append(values, float64(of(c))/float64(t.Samples))
+			}
+		}
+	}
+	return median(values), slices.Max(values)
+}
+
+func median(values []float64) float64 {
+	if len(values) == 0 {
+		return math.NaN()
+	}
+	sorted := slices.Sorted(slices.Values(values))
+	return (sorted[(len(sorted)-1)/2] + sorted[len(sorted)/2]) / 2
+}
+
+// StrongSkew is the population that defeats every method: no sample shows its
+// SD.
+const StrongSkew = "lognormal, log-SD 0.8"
+
+// Groups are the populations of the study, by what part they had in the choice
+// of the method.
+func Groups() []struct {
+	Name string
+	Has  func(t Tally) bool
+} {
+	in := func(populations []Population) func(t Tally) bool {
+		names := map[string]bool{}
+		for _, p := range populations {
+			names[p.Name] = true
+		}
+		return func(t Tally) bool { return names[t.Population] }
+	}
+	return []struct {
+		Name string
+		Has  func(t Tally) bool
+	}{
+		{"eleven populations the method was chosen by", in(chosen())},
+		{"the same without the strong lognormal", func(t Tally) bool { return in(chosen())(t) && t.Population != StrongSkew }},
+		{"more it was checked with", in(checked())},
+		{"four that played no part in any choice", in(fresh())},
+	}
+}
+
+// WriteSummary writes the results as a page of Markdown tables.
+func WriteSummary(w io.Writer, results []Result) error {
+	page := &strings.Builder{}
+	for _, r := range results {
+		if r.Name == Main {
+			mainTables(page, r.Tallies)
+		}
+	}
+	otherTable(page, results)
+	_, err := io.WriteString(w, page.String())
+	return err
+}
+
+func mainTables(page *strings.Builder, tallies []Tally) {
+	page.WriteString("## Fitted curves, level 0.95\n\nCoverage of the interval over populations and cutoffs (worst cell, 5th percentile of the cells, mean), its width over the oracle's (median cell), coverage of the band (worst, mean population).\n\n")
+	page.WriteString("| populations | n | worst | 5th | mean | width | band, worst | mean |\n| --- | --- | --- | --- | --- | --- | --- | --- |\n")
+	for _, group := range Groups() {
+		for _, n := range sizes {
+			want := func(t Tally) bool { return t.N == n && group.Has(t) }
+			c, b := Coverage(tallies, want), BandCoverage(tallies, want)
+			fmt.Fprintf(page, "| %s | %d | %.3f | %.3f | %.3f | %.2f | %.3f | %.3f |\n", group.Name, n, c.Worst, c.Fifth, c.Mean, RelativeWidth(tallies, want), b.Worst, b.Mean)
+		}
+	}
+	page.WriteString("\nEach population: the interval's worst cutoff / mean over cutoffs, and the band.\n\n| population |")
+	for _, n := range sizes {
+		fmt.Fprintf(page, " n = %d | band |", n)
+	}
+	page.WriteString("\n| --- |" + strings.Repeat(" --- | --- |", len(sizes)) + "\n")
+	for _, p := range Populations() {
+		fmt.Fprintf(page, "| %s |", p.Name)
+		for _, n := range sizes {
+			want := func(t Tally) bool { return t.N == n && t.Population == p.Name }
+			c := Coverage(tallies, want)
+			fmt.Fprintf(page, " %.3f / %.3f | %.3f |", c.Worst, c.Mean, BandCoverage(tallies, want).Mean)
+		}
+		page.WriteString("\n")
+	}
+	page.WriteString("\nVerdicts when the tolerance is the true gap itself, in percent of the samples; false trust: some threshold in the trusted range though its gap is beyond 2 points.\n\n")
+	page.WriteString("| n | false holds, median cell | largest | false fails, median cell | largest | false trust, largest |\n| --- | --- | --- | --- | --- | --- |\n")
+	for _, n := range sizes {
+		want := func(t Tally) bool { return t.N == n }
+		holds, mostHolds := Wrong(tallies, want, func(c Cell) int { return c.FalseHolds })
+		fails, mostFails := Wrong(tallies, want, func(c Cell) int { return c.FalseFails })
+		trust := 0.0
+		for _, t := range tallies {
+			if want(t) {
+				trust = max(trust, float64(t.FalseTrust)/float64(t.Samples))
+			}
+		}
+		fmt.Fprintf(page, "| %d | %.1f | %.1f | %.1f | %.1f | %.1f |\n", n, 100*holds, 100*mostHolds, 100*fails, 100*mostFails, 100*trust)
+	}
+}
+
+func otherTable(page *strings.Builder, results []Result) {
+	page.WriteString("\n## Other ways of asking\n\nFive populations, n = 50 and 300; columns as above.\n\n")
+	page.WriteString("| asked | n | worst | 5th | mean | width | band, worst | false holds, median | largest |\n| --- | --- | --- | --- | --- | --- | --- | --- | --- |\n")
+	for _, r := range results {
+		if r.Name == Main {
+			continue
+		}
+		for _, n := range sizes {
+			want := func(t Tally) bool { return t.N == n }
+			c := Coverage(r.Tallies, want)
+			if math.IsNaN(c.Mean) {
+				continue
+			}
+			band := "–"
+			if r.Sweeps {
+				band = fmt.Sprintf("%.3f", BandCoverage(r.Tallies, want).Worst)
+			}
+			holds, most := Wrong(r.Tallies, want, func(c Cell) int { return c.FalseHolds })
+			fmt.Fprintf(page, "| %s | %d | %.3f | %.3f | %.3f | %.2f | %s | %.1f | %.1f |\n", r.Name, n, c.Worst, c.Fifth, c.Mean, RelativeWidth(r.Tallies, want), band, 100*holds, 100*most)
+		}
+	}
+}
