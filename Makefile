@@ -6,7 +6,7 @@ WASM     := GOOS=js GOARCH=wasm
 SUDO     := $(shell [ "$$(id -u)" = 0 ] || echo sudo)
 INSTALL  := $(SUDO) apt-get update && $(SUDO) apt-get install -y
 
-.PHONY: build page demo test tools lint wasm-test bench fuzz fmt reference clean
+.PHONY: build page demo test tools lint wasm-test bench calibrate fuzz fmt reference clean
 .DEFAULT_GOAL := build
 
 ## build: bin/tailgap, with the page in it, and dist/tailgap.html
@@ -70,6 +70,10 @@ fuzz:
 			$(GO) test -run '^$$' -fuzz "^$$name\$$" -fuzztime $(FUZZTIME) "./$$(dirname "$$file")"; \
 		done; \
 	done
+
+## calibrate: simulate how often intervals, bands and verdicts are right, into testdata/calibration; most of an hour
+calibrate:
+	$(GO) run ./cli/calibrate -out testdata/calibration
 
 ## reference: recompute the published check values in testdata; needs R and Python
 reference:

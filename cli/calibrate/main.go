@@ -57,7 +57,7 @@ func calibrate(ctx context.Context, out, only string, samples int) error {
 		"slice-bands.csv": func(w io.Writer) error { return calibration.WriteBands(w, slice) },
 		"cells.csv":       func(w io.Writer) error { return calibration.WriteCells(w, full) },
 		"bands.csv":       func(w io.Writer) error { return calibration.WriteBands(w, full) },
-		"summary.md":      func(w io.Writer) error { return calibration.WriteSummary(w, full) },
+		"README.md":       func(w io.Writer) error { return calibration.WriteSummary(w, full) },
 	} {
 		var page bytes.Buffer
 		if err := write(&page); err != nil {

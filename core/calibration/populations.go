@@ -9,11 +9,30 @@ import (
 	"tailgap/core/curve"
 )
 
-// Populations are those of the study, in three groups: those by which the
-// method was chosen, more that it was looked at with afterwards, and those that
-// played no part in any choice.
-func Populations() []Population {
-	return append(append(chosen(), checked()...), fresh()...)
+// Group is some of the study's populations, by what part they had in the
+// choice of the method.
+type Group struct {
+	Name        string
+	Populations []Population
+}
+
+// Groups are all populations of the study.
+func Groups() []Group {
+	return []Group{
+		{"eleven that the method was chosen by", chosen()},
+		{"eight that it was checked with", checked()},
+		{"three more it was tuned with", tuned()},
+		{"four that had no part in it", fresh()},
+		{"gross errors", grossErrors()},
+	}
+}
+
+// Populations are those of all groups.
+func Populations() (all []Population) {
+	for _, group := range Groups() {
+		all = append(all, group.Populations...)
+	}
+	return all
 }
 
 func chosen() []Population {
@@ -50,11 +69,14 @@ func checked() []Population {
 		logNormal("lognormal, log-SD 0.4", 0.4),
 		gammaTwo(),
 		logistic(),
+	}
+}
+
+// tuned are scores as they are met with in questionnaires and at the clock.
+func tuned() []Population {
+	return []Population{
 		discrete("one five-point item", 1, 1, []float64{0.05, 0.1, 0.2, 0.4, 0.25}),
 		minutes(),
-		rounded("two in a hundred far off: 0.98 normal(27, 5) + 0.02 normal(-20, 20), rounded", -120, 80, func(x float64) float64 {
-			return 0.98*normalBelow(x, 27, 5) + 0.02*normalBelow(x, -20, 20)
-		}),
 		exponentiallyModified(),
 	}
 }
@@ -67,6 +89,16 @@ func fresh() []Population {
 		}),
 		weibull(),
 		laplace(),
+	}
+}
+
+// grossErrors are rare, and far enough off to make the SD: the samples without
+// one can't tell, whatever the method.
+func grossErrors() []Population {
+	return []Population{
+		rounded("two in a hundred far off: 0.98 normal(27, 5) + 0.02 normal(-20, 20), rounded", -120, 80, func(x float64) float64 {
+			return 0.98*normalBelow(x, 27, 5) + 0.02*normalBelow(x, -20, 20)
+		}),
 	}
 }
 

@@ -5,6 +5,7 @@ import (
 	"hash/fnv"
 	"math"
 	"math/rand/v2"
+	"slices"
 
 	"tailgap/core/curve"
 	"tailgap/core/gap"
@@ -41,17 +42,10 @@ func (s Study) try(ctx context.Context, c Case, i int) trial {
 	random := rand.New(rand.NewPCG(s.Seed, c.seed(i)))
 	scores := make([]float64, c.N)
 	c.Population.Draw(random, scores)
-	counts := sample.Count(scores)
-	if len(counts.Score) < 2 {
+	if slices.Min(scores) == slices.Max(scores) {
 		return trial{none: true}
 	}
-	moments := counts.Moments()
-	j := judging{
-		Study: s, population: c.Population,
-		table: gap.NewTable(counts, moments, s.curve(c.Population, moments, random)),
-		scale: sample.NewScale(counts, moments.SD, sample.StepChoice{None: c.Population.Step == 0, Size: c.Population.Step}, nil),
-		seed:  random.Uint64(),
-	}
+	j := s.judging(c.Population, scores, random)
 	if s.OfCount {
 		return j.ofCount(ctx)
 	}
@@ -65,6 +59,17 @@ type judging struct {
 	table      gap.Table
 	scale      sample.Scale
 	seed       uint64
+}
+
+func (s Study) judging(p Population, scores []float64, random *rand.Rand) judging {
+	counts := sample.Count(scores)
+	moments := counts.Moments()
+	return judging{
+		Study: s, population: p,
+		table: gap.NewTable(counts, moments, s.curve(p, moments, random)),
+		scale: sample.NewScale(counts, moments.SD, sample.StepChoice{None: p.Step == 0, Size: p.Step}, nil),
+		seed:  random.Uint64(),
+	}
 }
 
 func (j judging) split(at float64, strict bool) gap.Threshold {
