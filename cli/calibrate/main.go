@@ -7,6 +7,7 @@ package main
 import (
 	"bytes"
 	"context"
+	"errors"
 	"flag"
 	"fmt"
 	"io"
@@ -20,17 +21,18 @@ import (
 func main() {
 	out := flag.String("out", "testdata/calibration", "the folder to write to")
 	only := flag.String("only", "", "run this one of the studies and print its summary; write nothing")
+	sliceOnly := flag.Bool("slice", false, "make the slice again and nothing else")
 	samples := flag.Int("samples", 0, "so many samples in each case, instead of the study's own number")
 	flag.Parse()
 	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt)
 	defer stop()
-	if err := calibrate(ctx, *out, *only, *samples); err != nil {
+	if err := calibrate(ctx, *out, *only, *sliceOnly, *samples); err != nil {
 		fmt.Fprintln(os.Stderr, "calibrate:", err)
 		os.Exit(1)
 	}
 }
 
-func calibrate(ctx context.Context, out, only string, samples int) error {
+func calibrate(ctx context.Context, out, only string, sliceOnly bool, samples int) error {
 	if only != "" {
 		var studies []calibration.Named
 		for _, study := range calibration.Full() {
@@ -48,26 +50,33 @@ func calibrate(ctx context.Context, out, only string, samples int) error {
 	if err != nil {
 		return err
 	}
+	if err := write(out, "slice-", slice); err != nil || sliceOnly {
+		return err
+	}
 	full, err := run(ctx, calibration.Full(), samples)
 	if err != nil {
 		return err
 	}
-	for name, write := range map[string]func(io.Writer) error{
-		"slice-cells.csv": func(w io.Writer) error { return calibration.WriteCells(w, slice) },
-		"slice-bands.csv": func(w io.Writer) error { return calibration.WriteBands(w, slice) },
-		"cells.csv":       func(w io.Writer) error { return calibration.WriteCells(w, full) },
-		"bands.csv":       func(w io.Writer) error { return calibration.WriteBands(w, full) },
-		"README.md":       func(w io.Writer) error { return calibration.WriteSummary(w, full) },
-	} {
-		var page bytes.Buffer
-		if err := write(&page); err != nil {
-			return err
-		}
-		if err := os.WriteFile(filepath.Join(out, name), page.Bytes(), 0o644); err != nil {
-			return err
-		}
+	if err := write(out, "", full); err != nil {
+		return err
 	}
-	return nil
+	return writeFile(out, "README.md", func(w io.Writer) error { return calibration.WriteSummary(w, full) })
+}
+
+// write writes the tables of some results, their names led by prefix.
+func write(out, prefix string, results []calibration.Result) error {
+	return errors.Join(
+		writeFile(out, prefix+"cells.csv", func(w io.Writer) error { return calibration.WriteCells(w, results) }),
+		writeFile(out, prefix+"bands.csv", func(w io.Writer) error { return calibration.WriteBands(w, results) }),
+	)
+}
+
+func writeFile(out, name string, write func(w io.Writer) error) error {
+	var page bytes.Buffer
+	if err := write(&page); err != nil {
+		return err
+	}
+	return os.WriteFile(filepath.Join(out, name), page.Bytes(), 0o644)
 }
 
 // run runs the studies, saying on the way what is done.

@@ -22,6 +22,8 @@ type Table struct {
 	Moments sample.Moments
 	Curve   curve.Normal
 	U       []float64 // the distinct scores, in SDs from the mean
+
+	unseenAt [2]float64 // where the people unseen stand, in SDs from the mean
 }
 
 // NewTable standardises the count table by its mean and SD, which must be
@@ -31,6 +33,7 @@ func NewTable(counts sample.Counts, moments sample.Moments, c curve.Normal) Tabl
 	for i, score := range counts.Score {
 		t.U[i] = t.standard(score)
 	}
+	t.unseenAt = t.unseenPlaces()
 	return t
 }
 

@@ -10,26 +10,27 @@ type unseen struct {
 }
 
 const (
+	// tailReach is how many mean excesses beyond the last score an unseen person
+	// stands: 24^¼. Beyond any point of an exponential tail the excess X, in
+	// units of its mean, has E X⁴ = 24; a score acts on the gap by its square,
+	// and that counts by its square again.
+	tailReach = 2.2133638394006434
+
 	// outermostPart of the people at each end, but at least leastOutermost of
 	// them, say how fast the scores thin out there.
 	outermostPart  = 10
 	leastOutermost = 5
 )
 
-// tailReach is how many mean excesses beyond the last score an unseen person
-// stands. Beyond any point of an exponential tail the excess X, in units of
-// its mean, has E X⁴ = 24; a score acts on the gap by its square, and that
-// counts by its square again.
-var tailReach = math.Pow(24, 0.25)
-
 // unseenPlaces are where the unseen stand at the lower and the upper end, in
 // SDs from the mean: tailReach times the mean excess of the outermost tenth
 // beyond the outermost score.
-func (t Table) unseenPlaces() (low, high float64) {
+func (t Table) unseenPlaces() [2]float64 {
 	last := len(t.U) - 1
-	low = t.U[0] + tailReach*t.meanExcess(func(i int) int { return i })
-	high = t.U[last] + tailReach*t.meanExcess(func(i int) int { return last - i })
-	return low, high
+	return [2]float64{
+		t.U[0] + tailReach*t.meanExcess(func(i int) int { return i }),
+		t.U[last] + tailReach*t.meanExcess(func(i int) int { return last - i }),
+	}
 }
 
 // meanExcess is how far, on average, the outermost people are from the next
@@ -56,8 +57,7 @@ func (t Table) unseenBy(r *Region, sums *Sums, reading *Reading) (by []unseen) {
 	if !t.Curve.Fitted {
 		return nil
 	}
-	low, high := t.unseenPlaces()
-	for _, u := range []float64{low, high} {
+	for _, u := range t.unseenAt {
 		by = append(by, unseen{influence: reading.influence(u-sums.Mean, sums), inside: t.insideBy(r, u)})
 	}
 	return by
