@@ -75,7 +75,7 @@ func (s shown) bandLimits(group int, weight float64) verdict.Limits {
 	if s.question.Everyone {
 		return l
 	}
-	band := resample.BandOf(s.estimate(), weight, s.quantiles.Group[group][s.weightIndex(weight)])
+	band := resample.BandOf(s.estimate(), weight, s.quantiles.Group[group][s.weightIndex(weight)], s.sparse)
 	if s.lower {
 		band = band.Mirror(1 - weight)
 	}

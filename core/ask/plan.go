@@ -27,6 +27,7 @@ type work struct {
 	sweeps    []sweepPlan
 	quantiles resample.Quantiles
 	t         float64 // Student's t at the question's level
+	sparse    resample.Sparse
 	found     shape.Findings
 	tested    shape.Tests
 }
@@ -71,6 +72,7 @@ func newWork(question Question, column sample.Column, counts sample.Counts) (*wo
 		known:     map[key]int{},
 		t:         resample.StudentT(counts.N, question.Level),
 	}
+	w.sparse = resample.BandSparse(counts.N, question.Level, w.scale.Step > 0)
 	if !w.countable() {
 		return nil, fmt.Errorf("the steps of %v on the scale of %s are too many to count; check the step and the range", w.scale.Step, column.Name)
 	}

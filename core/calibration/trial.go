@@ -82,6 +82,7 @@ type judged struct {
 	plan      resample.Plan
 	quantiles resample.Quantiles
 	t         float64
+	sparse    resample.Sparse
 }
 
 // resample draws the replicates; those regions from the sweep on are one group.
@@ -96,7 +97,8 @@ func (j judging) resample(ctx context.Context, weight float64, regions [][]gap.T
 	}
 	plan.Estimates = j.table.Estimates(plan.Regions)
 	quantiles, err := resample.Run(ctx, plan, nil)
-	return judged{j, plan, quantiles, resample.StudentT(j.table.Counts.N, j.Level)}, err == nil
+	n := j.table.Counts.N
+	return judged{j, plan, quantiles, resample.StudentT(n, j.Level), resample.BandSparse(n, j.Level, j.scale.Step > 0)}, err == nil
 }
 
 func (j judged) interval(region int) resample.Interval {
@@ -104,7 +106,7 @@ func (j judged) interval(region int) resample.Interval {
 }
 
 func (j judged) band(region int) resample.Interval {
-	return j.interval(region).Hull(resample.BandOf(j.plan.Estimates[region], 1, j.quantiles.Group[0][0]))
+	return j.interval(region).Hull(resample.BandOf(j.plan.Estimates[region], 1, j.quantiles.Group[0][0], j.sparse))
 }
 
 // inPoints judges the gaps at the cutoffs and, for upper tails, over the sweep.

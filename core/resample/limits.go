@@ -39,10 +39,31 @@ func IntervalOf(e *gap.Estimate, weight, quantile, t float64, tail bool) Interva
 	return i
 }
 
-// BandOf is the simultaneous limits at one threshold: quantile is that of the
+// Sparse says where a band holds the score limits too: where fewer than People
+// are on either side of a threshold, at the quantile T.
+type Sparse struct{ People, T float64 }
+
+// BandSparse is a band's Sparse at the level, for n people. On a scale with a
+// step it is as for one cutoff. Without one the outermost thresholds stand at
+// the outermost scores themselves, wherever those fell, which no replicate
+// shows: few people there are too few more often, and what the level leaves is
+// divided by ten.
+func BandSparse(n int, level float64, step bool) Sparse {
+	if step {
+		return Sparse{gap.FewPeople, StudentT(n, level)}
+	}
+	return Sparse{3 * gap.FewPeople, StudentT(n, 1-(1-level)/10)}
+}
+
+// BandOf are the simultaneous limits at one threshold: quantile is that of the
 // largest studentised replicate over the whole sweep.
-func BandOf(e *gap.Estimate, weight, quantile float64) Interval {
-	return margins(e, weight, quantile)
+func BandOf(e *gap.Estimate, weight, quantile float64, sparse Sparse) Interval {
+	i := margins(e, weight, quantile)
+	if math.Min(e.Inside, e.N-e.Inside) < sparse.People && weight > 0 {
+		low, high := e.ScoreLimits(weight, sparse.T)
+		i = i.Hull(Interval{low, high})
+	}
+	return i
 }
 
 func margins(e *gap.Estimate, weight, quantile float64) Interval {

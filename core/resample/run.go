@@ -14,7 +14,8 @@
 // tail with fewer than ten people on one side it is widened to hold the score
 // limits (gap.Estimate.ScoreLimits) too. The band for a sweep is made likewise at
 // every threshold, q being the level's quantile of the largest T* over all
-// thresholds of the sweep and one step beyond them.
+// thresholds of the sweep and one step beyond them; where few people are on
+// one side it holds the score limits at [BandSparse]'s quantile.
 //
 // # Many distinct scores
 //
