@@ -16,13 +16,23 @@ import (
 	"tailgap/core/intake"
 )
 
-func silent(reply) {}
+// heard keeps what a bench says on the way; nobody answers.
+type heard []reply
+
+func (h *heard) say(r reply, _ ...[]byte) { *h = append(*h, r) }
+func (h *heard) hear() message            { panic("nobody is there") }
+
+// served is what a bench answers to a request.
+func served(b *bench, r request) reply {
+	answer, _ := b.serve(message{request: r}, &heard{})
+	return answer
+}
 
 func TestBenchAnswersAsTheCoreDoes(t *testing.T) {
 	question := demo.Question()
 	question.Replicates = 500
-	b := &bench{}
-	r := b.serve(request{ID: 7, Kind: askAnswer, Demo: true, Question: &question}, silent)
+	b := newBench()
+	r := served(b, request{ID: 7, Kind: askAnswer, Demo: true, Question: &question})
 	assert.Equal(t, 7, r.ID)
 	got, err := r.answer()
 	require.NoError(t, err)
@@ -37,30 +47,29 @@ func TestBenchAnswersAsTheCoreDoes(t *testing.T) {
 	gotText, err := json.Marshal(got)
 	require.NoError(t, err)
 	assert.JSONEq(t, string(wantText), string(gotText))
-
 }
 
 func TestProgressIsToldNowAndThen(t *testing.T) {
 	clock := time.Unix(0, 0)
-	var said []progress
-	tell := tellProgress(7, stageJudging, func(r reply) {
-		assert.Equal(t, 7, r.ID)
-		assert.Equal(t, sayProgress, r.Kind)
-		p, err := decoded[progress](r)
-		require.NoError(t, err)
-		said = append(said, p)
-	}, func() time.Time { return clock })
+	b := &bench{now: func() time.Time { return clock }}
+	var said heard
+	tell := b.tellProgress(7, stageJudging, &said)
 	for done := range 1000 { // a second of work
 		clock = clock.Add(time.Millisecond)
 		tell(done, 1000)
 	}
 	require.Len(t, said, 20)
-	assert.Equal(t, progress{stageJudging, 49, 1000}, said[0])
-	assert.Equal(t, progress{stageJudging, 999, 1000}, said[19])
+	for i, r := range said {
+		assert.Equal(t, 7, r.ID)
+		assert.Equal(t, sayProgress, r.Kind)
+		p, err := decoded[progress](r)
+		require.NoError(t, err)
+		assert.Equal(t, progress{stageJudging, 50*i + 49, 1000}, p)
+	}
 }
 
 func TestReadingTellsHowFarItIs(t *testing.T) {
-	b := &bench{}
+	b := newBench()
 	b.hold("a.csv", []byte(strings.Repeat("7\n", 1_000_000)))
 	var done []int
 	text, err := io.ReadAll(b.source(func(bytes, total int) {
@@ -75,12 +84,12 @@ func TestReadingTellsHowFarItIs(t *testing.T) {
 }
 
 func TestBenchReadsAnewOnlyWhatIsReadDifferently(t *testing.T) {
-	b := &bench{}
+	b := newBench()
 	b.hold("a.csv", []byte("a,b\n1,5\n2,6\n4,7\n99,9\n"))
 	used := func(question ask.Question) int {
 		t.Helper()
 		question.Replicates = 200
-		r := b.serve(request{Kind: askAnswer, Question: &question}, silent)
+		r := served(b, request{Kind: askAnswer, Question: &question})
 		a, err := r.answer()
 		require.NoError(t, err)
 		return a.Results[0].Sample.Used
@@ -109,13 +118,16 @@ func TestBenchFailsInSentences(t *testing.T) {
 		{"no such column", "a,b\n1,2\n", request{Kind: askAnswer, Question: &question}, `there is no column "c"`},
 		{"an empty file", "", request{Kind: askColumns}, "empty"},
 		{"no question", "a\n1\n", request{Kind: askAnswer}, "without a question"},
+		{"no order", "a\n1\n", request{Kind: askMaker}, "without an order"},
+		{"blocks of nothing", "a\n1\n", request{Kind: askBlocks, To: 1}, "without an order"},
+		{"a part of nothing", "a\n1\n", request{Kind: askPart}, "part of nothing"},
 		{"an unknown wish", "a\n1\n", request{Kind: "dance"}, "doesn't know"},
 	}
 	for _, test := range tests {
 		t.Run(test.name, func(t *testing.T) {
-			b := &bench{}
+			b := newBench()
 			b.hold("x.csv", []byte(test.data))
-			r := b.serve(test.r, silent)
+			r := served(b, test.r)
 			assert.Contains(t, r.Error, test.want)
 			assert.Nil(t, r.Data)
 			assert.Equal(t, test.name == "no such column", r.Unread, "the question can't be asked of the data")

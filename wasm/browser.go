@@ -51,9 +51,8 @@ func widthOf(id string) int {
 
 // save hands a text to the person as a file.
 func save(name, kind string, text []byte) {
-	array := app.Window().Get("Uint8Array").New(len(text))
-	app.CopyBytesToJS(array, text)
-	blob := app.Window().Get("Blob").New(app.Window().Get("Array").Call("of", array), map[string]any{"type": kind})
+	array := arrayOf(text)
+	blob := app.Window().Get("Blob").New(list(array), map[string]any{"type": kind})
 	address := app.Window().Get("URL").Call("createObjectURL", blob)
 	link := app.Window().Get("document").Call("createElement", "a")
 	link.Set("href", address)

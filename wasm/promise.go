@@ -28,30 +28,3 @@ func await(promise app.Value) (app.Value, error) {
 	o := <-done
 	return o.value, o.err
 }
-
-// bytesOf reads a file that the browser holds.
-func bytesOf(blob app.Value) ([]byte, error) {
-	buffer, err := await(blob.Call("arrayBuffer"))
-	if err != nil {
-		return nil, err
-	}
-	array := app.Window().Get("Uint8Array").New(buffer)
-	data := make([]byte, array.Length())
-	app.CopyBytesToGo(data, array)
-	return data, nil
-}
-
-// copied is a copy of a file in memory, so that what is asked twice is asked of
-// the same bytes, even if the file on the disk has changed meanwhile.
-func copied(blob app.Value) (app.Value, error) {
-	buffer, err := await(blob.Call("arrayBuffer"))
-	if err != nil {
-		return nil, err
-	}
-	return blobOf(buffer), nil
-}
-
-// blobOf makes a file in memory of one part: a buffer or a text.
-func blobOf(part any) app.Value {
-	return app.Window().Get("Blob").New(app.Window().Get("Array").Call("of", part))
-}

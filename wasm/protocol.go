@@ -10,27 +10,53 @@ import (
 	"tailgap/core/sample"
 )
 
-// What the page asks of the worker. Data of more than a few bytes travels
-// beside the message, as the browser's own file.
+// What the desk asks of the worker that leads. Data of more than a few bytes
+// travel beside the message, as parcels.
 const (
-	askColumns = "columns" // which columns has the file?
-	askAnswer  = "answer"  // what is the answer to this question?
+	askColumns = "columns" // which columns has the file? (beside it: the file, unless the worker has it)
+	askAnswer  = "answer"  // what is the answer to this question? (likewise)
 )
 
-// What the worker says; to a request it also says askColumns or askAnswer.
+// What the crew asks of its workers while they share the replicates.
+const (
+	askMaker  = "maker"  // get ready to make them (beside it: the order)
+	askBlocks = "blocks" // make these blocks
+	askPart   = "part"   // hand over what was made
+	askMerge  = "merge"  // of the lead: put this together and go on (beside it: the parts)
+)
+
+// What a worker says of its own accord; to a request it says the request's kind.
 const (
 	sayProgress = "progress"
+	sayShare    = "share"  // the lead: there is enough to do for others (beside it: the order)
 	sayBroken   = "broken" // the worker itself can't go on
 )
 
-// request is one message to the worker.
+// request is one message to a worker.
 type request struct {
 	ID       int           `json:"id"`
 	Kind     string        `json:"kind"`
-	Name     string        `json:"name"` // the file, as the user knows it
-	Demo     bool          `json:"demo"` // the demo instead of a file
-	Header   sample.Header `json:"header"`
+	Name     string        `json:"name,omitempty"` // the file, as the user knows it
+	Demo     bool          `json:"demo,omitempty"` // the demo instead of a file
+	Header   sample.Header `json:"header,omitempty"`
 	Question *ask.Question `json:"question,omitempty"`
+	Helpers  int           `json:"helpers,omitempty"` // workers that could help with it
+
+	From int `json:"from,omitempty"` // blocks, from (in) to (out)
+	To   int `json:"to,omitempty"`
+	Made int `json:"made,omitempty"` // blocks that all workers have made so far
+}
+
+// parcel is bytes in the browser's hands: a file, or what one worker has for
+// another. The page passes it on and never looks inside.
+type parcel any
+
+// share is the data of sayShare: the blocks that are still to be made, and how
+// many of them make a good portion.
+type share struct {
+	From    int `json:"from"`
+	Blocks  int `json:"blocks"` // in all
+	Portion int `json:"portion"`
 }
 
 // reply is one message from the worker: data, or an error that is a sentence

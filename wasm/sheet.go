@@ -38,7 +38,7 @@ const slowAfter = 50 * time.Millisecond
 // OnMount gives the desk its way into the page and asks the demo's question.
 func (s *sheet) OnMount(ctx app.Context) {
 	s.page = ctx
-	s.desk.start = startThread
+	s.desk.start = startCrew
 	s.desk.soon = func(do func()) { ctx.Dispatch(func(app.Context) { s.settle(do) }) }
 	s.desk.aside = func(do func()) {
 		ctx.Dispatcher().Dispatch(app.Dispatch{Mode: app.Next, Source: s, Function: func(app.Context) { do() }})

@@ -27,9 +27,9 @@ func sheetWith(t *testing.T, text string, change func(q *ask.Question)) *sheet {
 	q := demo.Question()
 	q.Replicates = 200
 	change(&q)
-	b := &bench{}
+	b := newBench()
 	b.hold("made.csv", []byte(text))
-	r := b.serve(request{Kind: askAnswer, Demo: text == "", Question: &q}, silent)
+	r := served(b, request{Kind: askAnswer, Demo: text == "", Question: &q})
 	a, err := r.answer()
 	require.NoError(t, err)
 	s := &sheet{}

@@ -6,69 +6,90 @@ import (
 	"github.com/maxence-charriere/go-app/v9/pkg/app"
 )
 
-// thread is a running worker as the page sees it.
+// thread is what computes, as the desk sees it.
 type thread interface {
-	// post sends a request, with the file it is about unless the worker has
+	// post sends a request, with the file it is about unless the thread has
 	// that one already.
 	post(r request, with *file)
-	// stop ends the worker at once, whatever it is doing.
+	// stop ends the thread at once, whatever it is doing.
 	stop()
 }
 
-// file is a file in the browser's hands: the page passes it on and never
-// looks inside.
+// file is a file that the page has in memory.
 type file struct {
 	name string
-	blob app.Value
+	blob parcel
 }
 
-// browserThread is a Web Worker.
-type browserThread struct {
+// mostWorkers is how many workers there are at most: each takes memory.
+const mostWorkers = 8
+
+// startCrew starts as many workers as the machine has cores, the first of them
+// now; receive gets what they say to the desk.
+func startCrew(receive func(reply)) thread {
+	cores := app.Window().Get("navigator").Get("hardwareConcurrency")
+	most := 1
+	if cores.Truthy() {
+		most = min(cores.Int(), mostWorkers)
+	}
+	return newCrew(startWorker, most, receive)
+}
+
+// webWorker is a worker of the browser.
+type webWorker struct {
 	worker app.Value
 	closes []app.Func
 }
 
-// startThread starts a worker; receive gets everything it says.
-func startThread(receive func(reply)) thread {
-	t := &browserThread{worker: app.Window().Call("tailgapWorker")}
-	t.on("message", func(event app.Value) {
+// startWorker starts a worker; receive gets everything it says.
+func startWorker(receive func(reply, []parcel)) hand {
+	w := &webWorker{worker: app.Window().Call("tailgapWorker")}
+	w.on("message", func(event app.Value) {
+		data := event.Get("data")
 		var r reply
-		if err := json.Unmarshal([]byte(event.Get("data").String()), &r); err != nil {
+		if err := json.Unmarshal([]byte(data.Get("text").String()), &r); err != nil {
 			r = reply{Kind: sayBroken, Error: err.Error()}
 		}
-		receive(r)
+		parcels := make([]parcel, data.Get("parcels").Length())
+		for i := range parcels {
+			parcels[i] = data.Get("parcels").Index(i)
+		}
+		receive(r, parcels)
 	})
-	t.on("error", func(event app.Value) {
-		receive(reply{Kind: sayBroken, Error: event.Get("message").String()})
+	w.on("error", func(event app.Value) {
+		receive(reply{Kind: sayBroken, Error: event.Get("message").String()}, nil)
 	})
-	return t
+	return w
 }
 
-func (t *browserThread) on(event string, do func(app.Value)) {
+func (w *webWorker) on(event string, do func(app.Value)) {
 	handler := app.FuncOf(func(_ app.Value, args []app.Value) any {
 		do(args[0])
 		return nil
 	})
-	t.worker.Call("addEventListener", event, handler)
-	t.closes = append(t.closes, handler)
+	w.worker.Call("addEventListener", event, handler)
+	w.closes = append(w.closes, handler)
 }
 
-func (t *browserThread) post(r request, with *file) {
+func (w *webWorker) post(r request, with ...parcel) {
 	text, err := json.Marshal(r)
 	if err != nil {
 		app.Log(err)
 		return
 	}
-	message := map[string]any{"text": string(text)}
-	if with != nil {
-		message["name"], message["file"] = with.name, with.blob
+	parcels, given := make([]any, len(with)), []any{}
+	for i, p := range with {
+		parcels[i] = p
+		if r.Kind == askMerge { // nobody else wants them: they need not be copied
+			given = append(given, p.(app.Value).Get("buffer"))
+		}
 	}
-	t.worker.Call("postMessage", message)
+	w.worker.Call("postMessage", map[string]any{"text": string(text), "parcels": list(parcels...)}, list(given...))
 }
 
-func (t *browserThread) stop() {
-	t.worker.Call("terminate")
-	for _, handler := range t.closes {
+func (w *webWorker) stop() {
+	w.worker.Call("terminate")
+	for _, handler := range w.closes {
 		handler.Release()
 	}
 }

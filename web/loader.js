@@ -1,6 +1,6 @@
 "use strict";
 // Starts the program that stands, packed, in this same file: once for the
-// page and once more in a worker for the computing. Nothing is fetched.
+// page and once more in each worker for the computing. Nothing is fetched.
 
 // The page keeps nothing. Whatever asks for the browser's storage, the
 // framework included, gets a drawer without a bottom.
@@ -53,7 +53,7 @@ const inWorker = `
     } catch (error) {
       reason = String(error);
     }
-    postMessage(JSON.stringify({ kind: "broken", error: reason }));
+    postMessage({ text: JSON.stringify({ kind: "broken", error: reason }), parcels: [] });
   };`;
 
 function unpack(text) {

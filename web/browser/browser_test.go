@@ -9,6 +9,7 @@ import (
 	"testing"
 	"time"
 
+	tab "github.com/chromedp/cdproto/page"
 	"github.com/chromedp/cdproto/runtime"
 	"github.com/chromedp/chromedp"
 	"github.com/stretchr/testify/require"
@@ -101,14 +102,17 @@ type page struct {
 	file string // the page's address
 }
 
-// openPage opens the page in a tab of its own and waits for the demo's
-// answer. When the test is over, nothing may have been requested but the file
+// openPage opens the page in a tab of its own, once the scripts have run there,
+// and waits for the demo's answer. When the test is over, nothing may have been requested but the file
 // and its own blobs, and nothing complained about.
-func openPage(t *testing.T, width int) *page {
+func openPage(t *testing.T, width int, scripts ...string) *page {
 	t.Helper()
 	path, err := filepath.Abs(pageFile)
 	require.NoError(t, err)
 	p := newTab(t, "file://"+path)
+	for _, script := range scripts {
+		p.before(script)
+	}
 	p.do(chromedp.EmulateViewport(int64(width), 900), chromedp.Navigate(p.file))
 	p.settled()
 	t.Cleanup(func() {
@@ -138,6 +142,15 @@ func (p *page) do(actions ...chromedp.Action) {
 	if err := chromedp.Run(ctx, actions...); err != nil {
 		require.NoError(p, err, "the page says:\n%s", p.text())
 	}
+}
+
+// before has a script run in the tab before any page does.
+func (p *page) before(script string) {
+	p.Helper()
+	p.do(chromedp.ActionFunc(func(ctx context.Context) error {
+		_, err := tab.AddScriptToEvaluateOnNewDocument(script).Do(ctx)
+		return err
+	}))
 }
 
 // text is what can be read on the page, for a test that fails.

@@ -1,11 +1,9 @@
 package browser
 
 import (
-	"context"
 	"path/filepath"
 	"testing"
 
-	script "github.com/chromedp/cdproto/page"
 	"github.com/chromedp/chromedp"
 	"github.com/stretchr/testify/assert"
 	"github.com/stretchr/testify/require"
@@ -162,10 +160,8 @@ func TestPageSaysThatABrowserIsTooOld(t *testing.T) {
 	path, err := filepath.Abs(pageFile)
 	require.NoError(t, err)
 	p := newTab(t, "file://"+path)
-	p.do(chromedp.ActionFunc(func(ctx context.Context) error {
-		_, err := script.AddScriptToEvaluateOnNewDocument(`delete globalThis.DecompressionStream`).Do(ctx)
-		return err
-	}), chromedp.Navigate(p.file))
+	p.before(`delete globalThis.DecompressionStream`)
+	p.do(chromedp.Navigate(p.file))
 	p.until(`document.querySelector(".trouble")`)
 	assert.Contains(t, get[string](p, `document.querySelector(".trouble").innerText`), "too old for this page")
 	assert.Zero(t, get[int](p, `document.querySelectorAll("#start").length`), "it doesn't go on saying that it loads")
