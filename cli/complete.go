@@ -59,6 +59,6 @@ func columnsNamed(cmd *cobra.Command, args []string) []intake.Column {
 		defer file.Close()
 		source = intake.Source{Name: args[0], Reader: file}
 	}
-	columns, _ := intake.Columns(source, sample.HeaderAuto)
+	columns, _ := intake.Columns(cmd.Context(), source, sample.HeaderAuto)
 	return columns
 }

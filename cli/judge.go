@@ -154,7 +154,7 @@ func (j *judging) read(ctx context.Context, paths []string, question ask.Questio
 	options := intake.Options{Scores: question.Scores, Missing: question.Missing, Header: question.Header}
 	if j.demo {
 		source := intake.Source{Name: demo.Name, Reader: bytes.NewReader(demo.CSV())}
-		scores, err := intake.Read([]intake.Source{source}, options)
+		scores, err := intake.Read(ctx, []intake.Source{source}, options)
 		scores.Demo = true
 		return scores, err
 	}
@@ -164,7 +164,7 @@ func (j *judging) read(ctx context.Context, paths []string, question ask.Questio
 	if err != nil {
 		return sample.Sample{}, err
 	}
-	return intake.Read(in.sources, options)
+	return intake.Read(ctx, in.sources, options)
 }
 
 // write writes everything that comes out and ends the run by its verdicts.

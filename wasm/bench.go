@@ -61,7 +61,7 @@ func (b *bench) serve(m message, line line) (r reply, parcels [][]byte) {
 			if m.Kind == askAnswer {
 				return b.answer(m.request, line)
 			}
-			return intake.Columns(b.source(nil), m.Header)
+			return intake.Columns(context.Background(), b.source(nil), m.Header)
 		case askMaker:
 			if len(m.parcels) != 1 {
 				return nil, errors.New("the page asked for replicates without an order")
@@ -134,7 +134,7 @@ func (b *bench) readAs(options intake.Options, tell ask.Progress) error {
 		slices.Equal(b.read.Missing, options.Missing) && b.read.Header == options.Header {
 		return nil
 	}
-	read, err := intake.Read([]intake.Source{b.source(tell)}, options)
+	read, err := intake.Read(context.Background(), []intake.Source{b.source(tell)}, options)
 	if err != nil {
 		return err
 	}

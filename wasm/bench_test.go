@@ -37,7 +37,7 @@ func TestBenchAnswersAsTheCoreDoes(t *testing.T) {
 	got, err := r.answer()
 	require.NoError(t, err)
 
-	scores, err := intake.Read([]intake.Source{b.source(nil)}, intake.Options{Scores: question.Scores, Missing: question.Missing})
+	scores, err := intake.Read(context.Background(), []intake.Source{b.source(nil)}, intake.Options{Scores: question.Scores, Missing: question.Missing})
 	require.NoError(t, err)
 	scores.Demo = true
 	want, err := ask.Judge(context.Background(), question, scores, nil)

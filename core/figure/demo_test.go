@@ -20,7 +20,7 @@ func judged(t *testing.T, change func(*ask.Question)) ask.Answer {
 	q := demo.Question()
 	q.Replicates = 1000
 	change(&q)
-	from, err := intake.Read([]intake.Source{{Name: demo.Name, Reader: bytes.NewReader(demo.CSV())}},
+	from, err := intake.Read(context.Background(), []intake.Source{{Name: demo.Name, Reader: bytes.NewReader(demo.CSV())}},
 		intake.Options{Scores: q.Scores, Missing: q.Missing, Header: q.Header})
 	require.NoError(t, err)
 	from.Demo = true

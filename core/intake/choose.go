@@ -1,6 +1,7 @@
 package intake
 
 import (
+	"context"
 	"io"
 	"strconv"
 
@@ -19,11 +20,11 @@ const looked = 200 // rows that Columns looks at
 
 // Columns reads the head of a source and says what columns it has. It refuses
 // what Read refuses, as far as it reads.
-func Columns(source Source, header sample.Header) ([]Column, error) {
+func Columns(ctx context.Context, source Source, header sample.Header) ([]Column, error) {
 	if err := checkHeader(header); err != nil {
 		return nil, err
 	}
-	r, err := open(source.Reader, Options{Header: header})
+	r, err := open(ctx, source.Reader, Options{Header: header})
 	if err != nil {
 		return nil, err
 	}

@@ -1,6 +1,7 @@
 package intake_test
 
 import (
+	"context"
 	"strings"
 	"testing"
 
@@ -13,7 +14,7 @@ import (
 )
 
 func TestColumns(t *testing.T) {
-	columns, err := intake.Columns(from(string(demo.CSV()))[0], sample.HeaderAuto)
+	columns, err := intake.Columns(context.Background(), from(string(demo.CSV()))[0], sample.HeaderAuto)
 	require.NoError(t, err)
 	var numeric []string
 	for i, c := range columns {
@@ -42,7 +43,7 @@ func TestColumnsWithAndWithoutNames(t *testing.T) {
 	}
 	for _, test := range tests {
 		t.Run(test.name, func(t *testing.T) {
-			columns, err := intake.Columns(from(test.text)[0], test.header)
+			columns, err := intake.Columns(context.Background(), from(test.text)[0], test.header)
 			require.NoError(t, err)
 			assert.Equal(t, test.want, columns)
 		})
@@ -52,11 +53,11 @@ func TestColumnsWithAndWithoutNames(t *testing.T) {
 // Asking the way a Column says leads to that column.
 func TestColumnsSayHowToAsk(t *testing.T) {
 	const text = "a,a,A,b,2,a , b\n0,1,2,3,4,5,6\n"
-	columns, err := intake.Columns(from(text)[0], sample.HeaderYes)
+	columns, err := intake.Columns(context.Background(), from(text)[0], sample.HeaderYes)
 	require.NoError(t, err)
 	require.Len(t, columns, 7)
 	for i, c := range columns {
-		s, err := intake.Read(from(text), intake.Options{Scores: []string{c.Ask}, Header: sample.HeaderYes})
+		s, err := intake.Read(context.Background(), from(text), intake.Options{Scores: []string{c.Ask}, Header: sample.HeaderYes})
 		require.NoError(t, err, c.Ask)
 		assert.Equal(t, []float64{float64(i)}, s.Columns[0].Scores, c.Ask)
 	}
@@ -84,17 +85,17 @@ func TestColumnsRefuses(t *testing.T) {
 		"Results\na,b\n1,2\n":   "line 1 has one cell where line 2 has 2; take out the lines above the header row",
 		"a,b\n\"1,2\n3,\"4\"\n": "a quote that opens in the row on line 2 isn't closed properly, so that it runs together with the rows down to line 3; close it where it belongs or take it out",
 	} {
-		_, err := intake.Columns(from(text)[0], sample.HeaderAuto)
+		_, err := intake.Columns(context.Background(), from(text)[0], sample.HeaderAuto)
 		assert.EqualError(t, err, want)
 	}
-	_, err := intake.Columns(from("a\n")[0], "perhaps")
+	_, err := intake.Columns(context.Background(), from("a\n")[0], "perhaps")
 	assert.EqualError(t, err, `the header setting "perhaps" can't be read; write auto, yes or no`)
 }
 
 // Only the head is read: what is wrong further down doesn't matter yet.
 func TestColumnsReadsTheHead(t *testing.T) {
 	text := "a,b\n" + strings.Repeat("1,x\n", 100_000)
-	columns, err := intake.Columns(from(text + "\x00")[0], sample.HeaderAuto)
+	columns, err := intake.Columns(context.Background(), from(text + "\x00")[0], sample.HeaderAuto)
 	require.NoError(t, err)
 	assert.Len(t, columns, 2)
 }

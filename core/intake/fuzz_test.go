@@ -2,6 +2,7 @@ package intake_test
 
 import (
 	"bytes"
+	"context"
 	"math"
 	"strings"
 	"testing"
@@ -36,21 +37,21 @@ func FuzzRead(f *testing.F) {
 		if score != "" {
 			options.Scores = strings.Split(score, "|")
 		}
-		s, err := intake.Read([]intake.Source{{Reader: bytes.NewReader(text)}}, options)
+		s, err := intake.Read(context.Background(), []intake.Source{{Reader: bytes.NewReader(text)}}, options)
 		checkOutcome(t, s, err)
 
-		slow, slowErr := intake.Read([]intake.Source{{Reader: iotest.OneByteReader(bytes.NewReader(text))}}, options)
+		slow, slowErr := intake.Read(context.Background(), []intake.Source{{Reader: iotest.OneByteReader(bytes.NewReader(text))}}, options)
 		assert.Equal(t, err, slowErr)
 		assert.Equal(t, s, slow)
 
 		if !bytes.ContainsRune(text, '\r') && !bytes.HasPrefix(text, []byte("\n")) {
 			windows := bytes.ReplaceAll(text, []byte("\n"), []byte("\r\n"))
-			other, otherErr := intake.Read([]intake.Source{{Reader: bytes.NewReader(windows)}}, options)
+			other, otherErr := intake.Read(context.Background(), []intake.Source{{Reader: bytes.NewReader(windows)}}, options)
 			assert.Equal(t, err, otherErr)
 			assert.Equal(t, s, other)
 		}
 
-		columns, err := intake.Columns(intake.Source{Reader: bytes.NewReader(text)}, options.Header)
+		columns, err := intake.Columns(context.Background(), intake.Source{Reader: bytes.NewReader(text)}, options.Header)
 		assert.Equal(t, err == nil, len(columns) > 0)
 		for i, c := range columns {
 			assert.Equal(t, i+1, c.Number)

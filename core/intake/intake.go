@@ -7,6 +7,7 @@
 package intake
 
 import (
+	"context"
 	"errors"
 	"fmt"
 	"io"
@@ -34,9 +35,10 @@ type Options struct {
 //
 // It refuses what isn't plain text, a column that isn't there or isn't
 // certain, infinite values, decimals written in two ways, quotes that run
-// rows together, and a column without a usable score. A reader's own error
-// is wrapped.
-func Read(sources []Source, options Options) (sample.Sample, error) {
+// rows together, and a column without a usable score. A reader's own error is
+// wrapped, and so is the context's when it ends before all is read; a reader
+// that waits is not interrupted.
+func Read(ctx context.Context, sources []Source, options Options) (sample.Sample, error) {
 	if len(sources) == 0 {
 		return sample.Sample{}, errors.New("no usable score: there is no input")
 	}
@@ -50,7 +52,7 @@ func Read(sources []Source, options Options) (sample.Sample, error) {
 			name = source.label(i)
 		}
 		var err error
-		if tallies, err = readSource(source.Reader, name, options, tallies); err != nil && name != "" {
+		if tallies, err = readSource(ctx, source.Reader, name, options, tallies); err != nil && name != "" {
 			return sample.Sample{}, fmt.Errorf("%s: %w", name, err)
 		} else if err != nil {
 			return sample.Sample{}, err
@@ -83,8 +85,8 @@ func checkHeader(header sample.Header) error {
 
 // readSource adds one source to the tallies; with none yet, it starts them.
 // The name is empty when there is no other source to tell it from.
-func readSource(source io.Reader, name string, options Options, tallies []*tally) ([]*tally, error) {
-	r, err := open(source, options)
+func readSource(ctx context.Context, source io.Reader, name string, options Options, tallies []*tally) ([]*tally, error) {
+	r, err := open(ctx, source, options)
 	if err != nil {
 		return nil, err
 	}

@@ -2,6 +2,7 @@ package intake_test
 
 import (
 	"bytes"
+	"context"
 	"fmt"
 	"math/rand/v2"
 	"testing"
@@ -51,7 +52,7 @@ func BenchmarkReadOneColumn(b *testing.B) {
 
 func read(b *testing.B, text []byte, options intake.Options) sample.Sample {
 	b.Helper()
-	s, err := intake.Read([]intake.Source{{Reader: bytes.NewReader(text)}}, options)
+	s, err := intake.Read(context.Background(), []intake.Source{{Reader: bytes.NewReader(text)}}, options)
 	if err != nil {
 		b.Fatal(err)
 	}

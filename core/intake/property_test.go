@@ -1,6 +1,7 @@
 package intake_test
 
 import (
+	"context"
 	"fmt"
 	"io"
 	"strconv"
@@ -125,7 +126,7 @@ func drawTable(t *rapid.T) table {
 func TestWhatIsWrittenIsRead(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		table := drawTable(t)
-		s, err := intake.Read(from(table.text), table.options)
+		s, err := intake.Read(context.Background(), from(table.text), table.options)
 		require.NoError(t, err, "%q", table.text)
 		assert.Equal(t, table.want, s.Columns[0], "%q", table.text)
 	})
@@ -138,9 +139,9 @@ func TestChunksDontMatter(t *testing.T) {
 	}
 	rapid.Check(t, func(t *rapid.T) {
 		table := drawTable(t)
-		want, wantErr := intake.Read(from(table.text), table.options)
+		want, wantErr := intake.Read(context.Background(), from(table.text), table.options)
 		for name, reader := range readers {
-			s, err := intake.Read([]intake.Source{{Reader: reader(strings.NewReader(table.text))}}, table.options)
+			s, err := intake.Read(context.Background(), []intake.Source{{Reader: reader(strings.NewReader(table.text))}}, table.options)
 			assert.Equal(t, wantErr, err, name)
 			assert.Equal(t, want, s, name)
 		}
@@ -153,12 +154,12 @@ func TestLineEndsAcrossBuffers(t *testing.T) {
 		for shift := range 8 {
 			rows := 15_000
 			text := "id,score" + strings.Repeat("x", shift) + lineEnd + strings.Repeat("123,45"+lineEnd, rows)
-			s, err := intake.Read(from(text), intake.Options{Scores: []string{"2"}})
+			s, err := intake.Read(context.Background(), from(text), intake.Options{Scores: []string{"2"}})
 			require.NoError(t, err)
 			assert.Len(t, s.Columns[0].Scores, rows, "%q, %d", lineEnd, shift)
 			assert.Equal(t, rows, s.Columns[0].Rows)
 			one := "12" + strings.Repeat("0", shift) + lineEnd + strings.Repeat("123456"+lineEnd, rows)
-			s, err = intake.Read(from(one), intake.Options{})
+			s, err = intake.Read(context.Background(), from(one), intake.Options{})
 			require.NoError(t, err)
 			assert.Len(t, s.Columns[0].Scores, rows+1)
 			assert.Empty(t, s.Columns[0].Dropped)
@@ -172,9 +173,9 @@ func TestPoolingConcatenates(t *testing.T) {
 		a, b := drawTable(t), drawTable(t)
 		a.options.Header, b.options.Header = "", ""
 		options := intake.Options{Scores: []string{"score"}, Missing: a.options.Missing}
-		first, errA := intake.Read(from(a.text), options)
-		second, errB := intake.Read(from(b.text), options)
-		both, err := intake.Read(from(a.text, b.text), options)
+		first, errA := intake.Read(context.Background(), from(a.text), options)
+		second, errB := intake.Read(context.Background(), from(b.text), options)
+		both, err := intake.Read(context.Background(), from(a.text, b.text), options)
 		if errA != nil || errB != nil {
 			return // without a header there is no column of that name
 		}

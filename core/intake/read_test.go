@@ -1,6 +1,7 @@
 package intake_test
 
 import (
+	"context"
 	"strings"
 	"testing"
 
@@ -122,7 +123,7 @@ func TestRead(t *testing.T) {
 			for _, d := range test.dropped {
 				rows += d.Count
 			}
-			s, err := intake.Read(from(test.text), options)
+			s, err := intake.Read(context.Background(), from(test.text), options)
 			require.NoError(t, err)
 			assert.Equal(t, []sample.Column{{Name: test.label, Rows: rows, Scores: test.scores, Dropped: test.dropped}}, s.Columns)
 			assert.False(t, s.Demo)
@@ -131,7 +132,7 @@ func TestRead(t *testing.T) {
 }
 
 func TestReadSeveralColumns(t *testing.T) {
-	s, err := intake.Read(from("id;words;vocabulary\n1;60,5;30\n2;;99\n3;48\n"), intake.Options{Scores: []string{"vocabulary", "2"}, Missing: []string{"99"}})
+	s, err := intake.Read(context.Background(), from("id;words;vocabulary\n1;60,5;30\n2;;99\n3;48\n"), intake.Options{Scores: []string{"vocabulary", "2"}, Missing: []string{"99"}})
 	require.NoError(t, err)
 	assert.Equal(t, []sample.Column{
 		{Name: "vocabulary", Rows: 3, Scores: []float64{30}, Dropped: []sample.Dropped{left("coded 99", 1, "line 3"), left("past the end of their row", 1, "line 4")}},
@@ -141,21 +142,21 @@ func TestReadSeveralColumns(t *testing.T) {
 
 // Sources may be written differently; a column counts as the same by its name.
 func TestReadSeveralSources(t *testing.T) {
-	s, err := intake.Read(from("id,score\n1,12.5\n2,\n", "SCORE;id\n3,5;1\n;2\n?;3\n"), intake.Options{Scores: []string{"score"}})
+	s, err := intake.Read(context.Background(), from("id,score\n1,12.5\n2,\n", "SCORE;id\n3,5;1\n;2\n?;3\n"), intake.Options{Scores: []string{"score"}})
 	require.NoError(t, err)
 	assert.Equal(t, []sample.Column{{Name: "score", Rows: 5, Scores: []float64{12.5, 3.5}, Dropped: []sample.Dropped{
 		left("blank", 2, "line 3 of north.csv"), left("unreadable", 1, "line 4 of south.csv"),
 	}}}, s.Columns)
 
 	for _, sources := range [][]intake.Source{from("id,score\n", "1,12\n2,15\n"), from("1,12\n2,15\n", "id,score\n")} {
-		s, err = intake.Read(sources, intake.Options{Scores: []string{"2"}})
+		s, err = intake.Read(context.Background(), sources, intake.Options{Scores: []string{"2"}})
 		require.NoError(t, err, "one source may have no rows, or no header")
 		assert.Equal(t, []sample.Column{{Name: "score", Rows: 2, Scores: []float64{12, 15}}}, s.Columns)
 	}
 }
 
 func TestReadDemo(t *testing.T) {
-	s, err := intake.Read(from(string(demo.CSV())), intake.Options{Scores: []string{"vocabulary", "form_minutes"}, Missing: demo.Missing()})
+	s, err := intake.Read(context.Background(), from(string(demo.CSV())), intake.Options{Scores: []string{"vocabulary", "form_minutes"}, Missing: demo.Missing()})
 	require.NoError(t, err)
 	for _, column := range s.Columns {
 		assert.Equal(t, 412, column.Rows)
@@ -177,7 +178,7 @@ func TestReadOpenData(t *testing.T) {
 	for dataset, names := range columns {
 		file, err := testdata.Files.Open("open/" + dataset + ".csv")
 		require.NoError(t, err)
-		s, err := intake.Read([]intake.Source{{Reader: file}}, intake.Options{Scores: names})
+		s, err := intake.Read(context.Background(), []intake.Source{{Reader: file}}, intake.Options{Scores: names})
 		require.NoError(t, err)
 		for i, name := range names {
 			assert.Equal(t, name, s.Columns[i].Name)
@@ -193,7 +194,7 @@ func TestReadOpenData(t *testing.T) {
 // and said to be one.
 func TestMarksThatMayPartThousands(t *testing.T) {
 	doubts := func(text string) []string {
-		s, err := intake.Read([]intake.Source{{Name: "a.csv", Reader: strings.NewReader(text)}}, intake.Options{Scores: []string{"score"}})
+		s, err := intake.Read(context.Background(), []intake.Source{{Name: "a.csv", Reader: strings.NewReader(text)}}, intake.Options{Scores: []string{"score"}})
 		require.NoError(t, err)
 		return s.Columns[0].Doubts
 	}

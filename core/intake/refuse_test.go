@@ -1,6 +1,7 @@
 package intake_test
 
 import (
+	"context"
 	"errors"
 	"fmt"
 	"io"
@@ -123,7 +124,7 @@ func TestReadRefuses(t *testing.T) {
 	for _, test := range tests {
 		t.Run(test.name, func(t *testing.T) {
 			options := intake.Options{Scores: test.ask, Header: test.header, Missing: test.missing}
-			s, err := intake.Read(from(test.text), options)
+			s, err := intake.Read(context.Background(), from(test.text), options)
 			assert.EqualError(t, err, test.want)
 			assert.Empty(t, s.Columns)
 		})
@@ -148,19 +149,19 @@ func TestReadRefusesAmongSources(t *testing.T) {
 	}
 	for _, test := range tests {
 		t.Run(test.name, func(t *testing.T) {
-			_, err := intake.Read(from(test.north, test.south), intake.Options{Scores: test.ask})
+			_, err := intake.Read(context.Background(), from(test.north, test.south), intake.Options{Scores: test.ask})
 			assert.EqualError(t, err, test.want)
 		})
 	}
-	_, err := intake.Read(nil, intake.Options{})
+	_, err := intake.Read(context.Background(), nil, intake.Options{})
 	assert.EqualError(t, err, "no usable score: there is no input")
-	_, err = intake.Read([]intake.Source{{Reader: strings.NewReader("1\n")}, {Reader: strings.NewReader("")}}, intake.Options{})
+	_, err = intake.Read(context.Background(), []intake.Source{{Reader: strings.NewReader("1\n")}, {Reader: strings.NewReader("")}}, intake.Options{})
 	assert.EqualError(t, err, "source 2: no usable score: the input is empty", "a source without a name")
 }
 
 // Decimal marks must agree within a source only.
 func TestDecimalMarksMayDifferBetweenSources(t *testing.T) {
-	s, err := intake.Read(from("score\n3.5\n", "score\n3,5\n"), intake.Options{})
+	s, err := intake.Read(context.Background(), from("score\n3.5\n", "score\n3,5\n"), intake.Options{})
 	require.NoError(t, err)
 	assert.Equal(t, []float64{3.5, 3.5}, s.Columns[0].Scores)
 }
@@ -174,7 +175,7 @@ func TestReadWrapsAReadersError(t *testing.T) {
 	} {
 		text := strings.Repeat("12\n", rows)
 		source := io.MultiReader(strings.NewReader(text), iotest.ErrReader(broken))
-		_, err := intake.Read([]intake.Source{{Reader: source}}, intake.Options{})
+		_, err := intake.Read(context.Background(), []intake.Source{{Reader: source}}, intake.Options{})
 		assert.ErrorIs(t, err, broken)
 		assert.EqualError(t, err, want)
 	}
@@ -183,10 +184,10 @@ func TestReadWrapsAReadersError(t *testing.T) {
 // A quote that opens in a large file must not load the rest of it.
 func TestReadRefusesARowWithoutEnd(t *testing.T) {
 	source := io.MultiReader(strings.NewReader("id,score\n1,12\n2,\""), &endless{})
-	_, err := intake.Read([]intake.Source{{Reader: source}}, intake.Options{Scores: []string{"score"}})
+	_, err := intake.Read(context.Background(), []intake.Source{{Reader: source}}, intake.Options{Scores: []string{"score"}})
 	assert.EqualError(t, err, "the row below line 2 is longer than 16 million bytes; close the quote that is open there, or check that this is a file of scores")
 
-	_, err = intake.Read([]intake.Source{{Reader: &endless{}}}, intake.Options{})
+	_, err = intake.Read(context.Background(), []intake.Source{{Reader: &endless{}}}, intake.Options{})
 	assert.EqualError(t, err, "the first row is longer than 16 million bytes; close the quote that is open there, or check that this is a file of scores")
 }
 
@@ -202,4 +203,38 @@ func (e *endless) Read(p []byte) (int, error) {
 	}
 	e.read += len(p)
 	return len(p), nil
+}
+
+// When the context ends, no more than what is being read is read.
+func TestReadEndsWithTheContext(t *testing.T) {
+	for _, reads := range []int{1, 2, 40} {
+		ctx, cancel := context.WithCancel(context.Background())
+		source := &watched{Reader: strings.NewReader(strings.Repeat("12\n", 2_000_000))}
+		source.before = func() {
+			if source.reads == reads {
+				cancel()
+			}
+		}
+		_, err := intake.Read(ctx, []intake.Source{{Reader: source}}, intake.Options{})
+		assert.ErrorIs(t, err, context.Canceled)
+		assert.Equal(t, reads, source.reads)
+		assert.LessOrEqual(t, source.most, 64<<10)
+
+		_, err = intake.Columns(ctx, from("a,b\n1,2\n")[0], sample.HeaderAuto)
+		assert.ErrorIs(t, err, context.Canceled)
+	}
+}
+
+// watched counts how often it is read and how much is taken at a time.
+type watched struct {
+	io.Reader
+	before      func()
+	reads, most int
+}
+
+func (w *watched) Read(p []byte) (int, error) {
+	w.reads++
+	w.before()
+	w.most = max(w.most, len(p))
+	return w.Reader.Read(p)
 }

@@ -2,6 +2,7 @@ package intake
 
 import (
 	"bufio"
+	"context"
 	"encoding/csv"
 	"errors"
 	"fmt"
@@ -35,8 +36,8 @@ type rows struct {
 
 // open finds out how a source is written and which columns it has. Errors are
 // sentences for the user, naming no source.
-func open(source io.Reader, options Options) (*rows, error) {
-	text, err := newPlainText(source)
+func open(ctx context.Context, source io.Reader, options Options) (*rows, error) {
+	text, err := newPlainText(ctx, source)
 	if err != nil {
 		return nil, err
 	}

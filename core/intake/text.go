@@ -2,6 +2,7 @@ package intake
 
 import (
 	"bytes"
+	"context"
 	"errors"
 	"fmt"
 	"io"
@@ -26,8 +27,9 @@ var foreign = [...]struct{ mark, message string }{
 
 // plainText hands a source on as clean text: no byte order mark, line ends LF
 // or CR LF. It fails, and keeps failing, at a zero byte, at a row that has no
-// end, and where the source fails.
+// end, where the source fails, and when the context has ended.
 type plainText struct {
+	ctx     context.Context
 	source  io.Reader
 	err     error
 	afterCR bool
@@ -40,7 +42,7 @@ type plainText struct {
 }
 
 // newPlainText looks at the first bytes. Its error is a sentence for the user.
-func newPlainText(source io.Reader) (*plainText, error) {
+func newPlainText(ctx context.Context, source io.Reader) (*plainText, error) {
 	head := make([]byte, 4)
 	n, err := io.ReadFull(source, head)
 	if err != nil && err != io.EOF && err != io.ErrUnexpectedEOF {
@@ -53,7 +55,7 @@ func newPlainText(source io.Reader) (*plainText, error) {
 		}
 	}
 	head = bytes.TrimPrefix(head, []byte(byteOrderMark))
-	return &plainText{source: io.MultiReader(bytes.NewReader(head), source)}, nil
+	return &plainText{ctx: ctx, source: io.MultiReader(bytes.NewReader(head), source)}, nil
 }
 
 // Read implements io.Reader.
@@ -64,6 +66,9 @@ func (t *plainText) Read(p []byte) (int, error) {
 			where = fmt.Sprintf("the row below line %d", t.rowAfter)
 		}
 		t.err = fmt.Errorf("%s is longer than %d million bytes; close the quote that is open there, or check that this is a file of scores", where, longestRow>>20)
+	}
+	if err := t.ctx.Err(); err != nil && t.err == nil {
+		t.err = stopped(t.lines, err)
 	}
 	if t.err != nil {
 		return 0, t.err

@@ -2,6 +2,7 @@ package report
 
 import (
 	"bytes"
+	"context"
 	"strconv"
 	"testing"
 
@@ -18,7 +19,7 @@ import (
 func demoAnswer(t *testing.T, q ask.Question) ask.Answer {
 	t.Helper()
 	source := intake.Source{Name: demo.Name, Reader: bytes.NewReader(demo.CSV())}
-	read, err := intake.Read([]intake.Source{source}, intake.Options{Scores: q.Scores, Missing: q.Missing, Header: q.Header})
+	read, err := intake.Read(context.Background(), []intake.Source{source}, intake.Options{Scores: q.Scores, Missing: q.Missing, Header: q.Header})
 	require.NoError(t, err)
 	read.Demo = true
 	a, err := ask.Judge(t.Context(), q, read, nil)

@@ -1,6 +1,9 @@
 package sample
 
-import "slices"
+import (
+	"context"
+	"slices"
+)
 
 // Counts is the count table: the distinct scores, ascending, with how many
 // people have each. It is all that an unweighted analysis needs.
@@ -12,20 +15,8 @@ type Counts struct {
 
 // Count tallies the scores, which must be finite, and leaves them as they are.
 func Count(scores []float64) Counts {
-	tally := make(map[float64]int)
-	for _, score := range scores {
-		tally[score]++
-	}
-	table := Counts{Score: make([]float64, 0, len(tally)), N: len(scores)}
-	for score := range tally {
-		table.Score = append(table.Score, score+0) // +0 turns -0 into 0
-	}
-	slices.Sort(table.Score)
-	table.Count = make([]int, len(table.Score))
-	for i, score := range table.Score {
-		table.Count[i] = tally[score]
-	}
-	return table
+	counts, _ := CountContext(context.Background(), scores, nil)
+	return counts
 }
 
 // Min is the lowest score seen; the table must not be empty.
