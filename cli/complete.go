@@ -25,7 +25,7 @@ func completeJudge(cmd *cobra.Command) {
 	for _, flag := range []string{"tolerance", "too-high", "too-low"} {
 		fixed(flag, "1pt\tpercentage points", "20%count\ta part of the counted share", "40heads\tpeople, with --heads")
 	}
-	for _, flag := range []string{"missing", "range", "mean", "sd", "heads", "level", "replicates", "seed", "workers"} {
+	for _, flag := range []string{"missing", "range", "mean", "sd", "norm-n", "heads", "level", "replicates", "seed", "workers"} {
 		fixed(flag)
 	}
 	cmd.RegisterFlagCompletionFunc("score", completeScore)

@@ -85,6 +85,8 @@ func (f *questionFlags) declare() {
 		number("mean", "54.6"), func(q *ask.Question, v float64) { given(q).Mean = v })
 	value(f, "sd", "judge the curve with the SD `NUMBER`, above 0, and the mean of --mean",
 		number("sd", "13.1"), func(q *ask.Question, v float64) { given(q).SD = v })
+	value(f, "norm-n", "add the sampling error of a mean and SD that come from `NUMBER` norm people; none takes them as exact (default none)",
+		normPeople, func(q *ask.Question, v *int) { given(q).NormN = v })
 	yes(f, "half-step", "judge with the half-step (continuity correction); both are always shown",
 		func(q *ask.Question, v bool) { q.HalfStep = v })
 
@@ -123,6 +125,9 @@ func (f *questionFlags) apply(question ask.Question) (ask.Question, error) {
 	}
 	if question.Curve == nil && changed("mean") != changed("sd") {
 		return question, misuse(command, "a given curve needs both --mean and --sd; without either it is fitted to the scores")
+	}
+	if question.Curve == nil && changed("norm-n") && !changed("mean") {
+		return question, misuse(command, "--norm-n says how many people a given mean and SD come from; give them with --mean and --sd")
 	}
 	for _, change := range f.changes {
 		change(&question)
@@ -166,6 +171,16 @@ func limit(s string) (*verdict.Limit, error) {
 		return nil, nil
 	}
 	v, err := verdict.ParseLimit(s)
+	return &v, err
+}
+
+// normPeople reads a number of people; none takes away the one that a question
+// file has.
+func normPeople(s string) (*int, error) {
+	if strings.TrimSpace(s) == "none" {
+		return nil, nil
+	}
+	v, err := whole("norm-n", "870")(s)
 	return &v, err
 }
 

@@ -20,17 +20,17 @@ import (
 var everyFlag = []string{
 	"--score", "score", "--missing", "-9,99", "--missing", " n/a ", "--header", "yes",
 	"--cutoff", "<= 45", "--cutoff", "48..52", "--step", "1", "--range", "-10:110",
-	"--mean", "49.5", "--sd", "10.5", "--half-step", "--too-high", "1pt", "--too-low", "40heads",
+	"--mean", "49.5", "--sd", "10.5", "--norm-n", "870", "--half-step", "--too-high", "1pt", "--too-low", "40heads",
 	"--heads", "4000", "--level", "0.9", "--replicates", "700", "--seed", "18446744073709551615", "--everyone",
 }
 
 func everyFlagAsks() ask.Question {
-	heads := 4000.0
+	heads, people := 4000.0, 870
 	return ask.Question{
 		Format: ask.QuestionFormat, Scores: []string{"score"}, Missing: []string{"-9", "99", "n/a"}, Header: sample.HeaderYes,
 		Cutoffs: []cutoff.Cutoff{{Side: cutoff.AtMost, At: 45}, {Side: cutoff.Stretch, At: 48, To: 52}},
 		Step:    sample.StepChoice{Size: 1}, Range: &sample.Range{Low: -10, High: 110},
-		Curve: &curve.Given{Mean: 49.5, SD: 10.5}, HalfStep: true,
+		Curve: &curve.Given{Mean: 49.5, SD: 10.5, NormN: &people}, HalfStep: true,
 		TooHigh: &verdict.Limit{Size: 1}, TooLow: &verdict.Limit{Size: 40, Unit: verdict.Heads},
 		Heads: &heads, Everyone: true, Level: 0.9, Replicates: 700, Seed: 1<<64 - 1,
 	}
@@ -82,7 +82,7 @@ func TestFlagsOverrideTheFile(t *testing.T) {
 	scores := bell(t, 200)
 	path := filepath.Join(t.TempDir(), "question.json")
 	answered(t, append([]string{scores, "--save-question", path}, everyFlag...)...)
-	five, six := 5.0, verdict.Limit{Size: 6, Unit: verdict.OfCount}
+	five, fifty, six := 5.0, 50, verdict.Limit{Size: 6, Unit: verdict.OfCount}
 	for _, c := range []struct {
 		flags  []string
 		change func(*ask.Question)
@@ -98,6 +98,8 @@ func TestFlagsOverrideTheFile(t *testing.T) {
 		{[]string{"--range", "0:100"}, func(q *ask.Question) { q.Range = &sample.Range{Low: 0, High: 100} }},
 		{[]string{"--mean", "-3"}, func(q *ask.Question) { q.Curve.Mean = -3 }},
 		{[]string{"--sd", "5"}, func(q *ask.Question) { q.Curve.SD = 5 }},
+		{[]string{"--norm-n", "50"}, func(q *ask.Question) { q.Curve.NormN = &fifty }},
+		{[]string{"--norm-n", "none"}, func(q *ask.Question) { q.Curve.NormN = nil }},
 		{[]string{"--half-step=false"}, func(q *ask.Question) { q.HalfStep = false }},
 		{[]string{"--everyone=false"}, func(q *ask.Question) { q.Everyone = false }},
 		{[]string{"--too-high", "6%count"}, func(q *ask.Question) { q.TooHigh = &six }},

@@ -14,7 +14,7 @@ import (
 
 // Files holds everything that tests of core read.
 //
-//go:embed open expected nist interval shape worked/normality.json calibration/*.csv
+//go:embed open expected nist interval shape worked calibration/*.csv
 var Files embed.FS
 
 // Open returns the values of one column of the open data, without the blank

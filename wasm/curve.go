@@ -1,6 +1,9 @@
 package main
 
 import (
+	"fmt"
+	"strconv"
+
 	"github.com/maxence-charriere/go-app/v9/pkg/app"
 
 	"tailgap/core/curve"
@@ -10,9 +13,12 @@ import (
 // given by its mean and SD.
 func (s *sheet) curveEditor() app.UI {
 	given := s.draft.given || s.desk.question.Curve != nil
-	mean, sd := s.draft.mean, s.draft.sd
+	mean, sd, people := s.draft.mean, s.draft.sd, s.draft.people
 	if c := s.desk.question.Curve; c != nil {
-		mean, sd = plain(c.Mean), plain(c.SD)
+		mean, sd, people = plain(c.Mean), plain(c.SD), ""
+		if c.NormN != nil {
+			people = strconv.Itoa(*c.NormN)
+		}
 	}
 	return app.Span().Class("fields").Body(
 		app.Label().Body(
@@ -34,12 +40,17 @@ func (s *sheet) curveEditor() app.UI {
 				s.curveField("mean", mean),
 				app.Label().For("sd").Text("SD"),
 				s.curveField("sd", sd),
+				app.Label().For("norm-n").Text("norm people"),
+				s.curveField("norm-n", people).Aria("describedby", "hint-norm-n"),
 			)
+		}),
+		when(given, func() app.UI {
+			return app.Small().ID("hint-norm-n").Text("how many people mean and SD come from; empty if they are to count as exact")
 		}),
 	)
 }
 
-func (s *sheet) curveField(id, value string) app.UI {
+func (s *sheet) curveField(id, value string) app.HTMLInput {
 	return app.Input().ID(id).Class("figure").AutoComplete(false).Value(value).
 		OnChange(s.act(id, func(app.Context, app.Event) { s.curveTyped() }))
 }
@@ -51,9 +62,10 @@ func (s *sheet) fitCurve() {
 	s.change(atCurve, q, nil)
 }
 
-// curveTyped takes in the mean and the SD once both are there.
+// curveTyped takes in the mean and the SD once both are there, and how many
+// people they come from.
 func (s *sheet) curveTyped() {
-	s.draft.given, s.draft.mean, s.draft.sd = true, valueOf("mean"), valueOf("sd")
+	s.draft.given, s.draft.mean, s.draft.sd, s.draft.people = true, valueOf("mean"), valueOf("sd"), valueOf("norm-n")
 	if s.draft.mean == "" || s.draft.sd == "" {
 		return // not finished
 	}
@@ -62,7 +74,23 @@ func (s *sheet) curveTyped() {
 	if err == nil {
 		err = errSD
 	}
+	people, errPeople := normPeople(s.draft.people)
+	if err == nil {
+		err = errPeople
+	}
 	q := s.desk.question
-	q.Curve = &curve.Given{Mean: mean, SD: sd}
+	q.Curve = &curve.Given{Mean: mean, SD: sd, NormN: people}
 	s.change(atCurve, q, err)
+}
+
+// normPeople reads how many people norms come from; nil where nothing is said.
+func normPeople(text string) (*int, error) {
+	if text == "" {
+		return nil, nil
+	}
+	people, err := whole(text)
+	if err != nil {
+		return nil, fmt.Errorf("%.40q is no number of norm people; write a whole number, or nothing if mean and SD are to count as exact", text)
+	}
+	return &people, nil
 }

@@ -39,7 +39,7 @@ func curveWords(q ask.Question) string {
 	if q.Curve == nil {
 		return "the normal curve fitted to them"
 	}
-	return "the normal curve with mean " + words.Number(q.Curve.Mean) + " and SD " + words.Number(q.Curve.SD)
+	return "the normal curve " + words.GivenCurve(*q.Curve)
 }
 
 func headsWords(q ask.Question) string {

@@ -66,6 +66,10 @@ func TestSheetShowsEveryKindOfAnswer(t *testing.T) {
 		{"a given curve, parts of the count", "", func(q *ask.Question) {
 			q.Curve, q.TooHigh, q.Heads = &curve.Given{Mean: 20, SD: 5}, limit(t, "20%count"), nil
 		}},
+		{"norms from people", "", func(q *ask.Question) {
+			people := 870
+			q.Curve = &curve.Given{Mean: 20, SD: 5, NormN: &people}
+		}},
 		{"no tolerance and no heads", twoColumns, own},
 		{"no cutoff", twoColumns, func(q *ask.Question) { own(q); q.Cutoffs = nil }},
 		{"no step", twoColumns, func(q *ask.Question) { own(q); q.Step = sample.StepChoice{None: true} }},

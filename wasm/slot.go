@@ -9,11 +9,12 @@ import (
 
 // draft is what an open editor knows that the question can't hold yet.
 type draft struct {
-	side  *cutoff.Side // of the cutoff being edited
-	given bool         // a given curve, before its mean and SD are both there
-	mean  string
-	sd    string
-	unit  string // of the limit being edited, before its size is there
+	side   *cutoff.Side // of the cutoff being edited
+	given  bool         // a given curve, before its mean and SD are both there
+	mean   string
+	sd     string
+	people string // norm people
+	unit   string // of the limit being edited, before its size is there
 }
 
 // slot is one part of the sentence, with the mark that follows it, and below

@@ -70,12 +70,14 @@ type Described struct {
 	RangeSource    string           `json:"range_source"` // "observed" or "stated"
 }
 
-// Curve is the curve that was judged. Source is "fitted" or "given".
+// Curve is the curve that was judged. Source is "fitted" or "given"; NormN is
+// how many people a given one was estimated from, null where it is known.
 type Curve struct {
 	Kind   string  `json:"kind"`
 	Mean   float64 `json:"mean"`
 	SD     float64 `json:"sd"`
 	Source string  `json:"source"`
+	NormN  *int    `json:"norm_n"`
 }
 
 // Finding is the answer at one cutoff. Its own Reading is the one that is

@@ -45,9 +45,13 @@ func (s shown) gap(weight float64) float64 {
 	return s.curveShare() - weight*s.countedShare()
 }
 
-// interval is the interval of curve share - weight·counted share, with the
-// given quantile of the studentised replicates.
-func (s shown) interval(weight, quantile float64) resample.Interval {
+// interval is the interval of curve share - weight·counted share; with a
+// fitted curve by the quantile of the studentised replicates at the weight of.
+func (s shown) interval(weight, of float64) resample.Interval {
+	if !s.table.Curve.Fitted {
+		return resample.ApartOf(s.apart(resample.Miss(s.question.Level)), weight)
+	}
+	quantile := s.quantiles.Region[s.region][s.weightIndex(of)]
 	i := resample.IntervalOf(s.estimate(), weight, quantile, s.t, s.tail)
 	if s.lower {
 		return i.Mirror(1 - weight)
@@ -60,9 +64,13 @@ func (s shown) interval(weight, quantile float64) resample.Interval {
 func (s shown) limits(weight float64) verdict.Limits {
 	l := verdict.Limits{Gap: s.gap(weight)}
 	l.Low, l.High = l.Gap, l.Gap
-	if !s.question.Everyone {
-		i := s.interval(weight, s.quantiles.Region[s.region][s.weightIndex(weight)])
-		l.Low, l.High = i.Low, i.High
+	if s.question.Everyone {
+		return l
+	}
+	i := s.interval(weight, weight)
+	l.Low, l.High = i.Low, i.High
+	if !s.table.Curve.Fitted {
+		l.FixedLow, l.FixedHigh = s.apart(resample.Miss(s.question.Level)).CurveParts(weight)
 	}
 	return l
 }
@@ -75,7 +83,13 @@ func (s shown) bandLimits(group int, weight float64) verdict.Limits {
 	if s.question.Everyone {
 		return l
 	}
-	band := resample.BandOf(s.estimate(), weight, s.quantiles.Group[group][s.weightIndex(weight)], s.sparse)
+	quantile := s.quantiles.Group[group][s.weightIndex(weight)]
+	if !s.table.Curve.Fitted {
+		i := resample.ApartOf(s.apart(resample.BandMiss(quantile, s.question.Level)), weight)
+		l.Low, l.High = i.Low, i.High
+		return l
+	}
+	band := resample.BandOf(s.estimate(), weight, quantile, s.sparse)
 	if s.lower {
 		band = band.Mirror(1 - weight)
 	}
@@ -84,6 +98,9 @@ func (s shown) bandLimits(group int, weight float64) verdict.Limits {
 }
 
 func (w *work) weightIndex(weight float64) int {
+	if w.table.Curve.Known() {
+		return 0
+	}
 	for i, known := range w.plan.Weights {
 		if known == weight {
 			return i

@@ -16,7 +16,10 @@ const (
 	maxCutoffs    = 1000
 	maxWorkers    = 1024
 	maxHeads      = 1e12
-	minLevel      = 0.5
+	// minNormN is the fewest norm people for whom the limits were seen to keep
+	// their level, stretches and bands included (see core/gap).
+	minNormN = 5
+	minLevel = 0.5
 )
 
 // Check returns an error, a sentence for the person who asks, when the
@@ -42,6 +45,9 @@ func (q Question) Check() error {
 	}
 	if q.Curve != nil && (!(q.Curve.SD > 0) || !finite(q.Curve.SD) || !finite(q.Curve.Mean)) {
 		return fmt.Errorf("a curve with mean %v and SD %v can't be drawn; the SD must be above zero and both must be finite", q.Curve.Mean, q.Curve.SD)
+	}
+	if q.Curve != nil && q.Curve.NormN != nil && (*q.Curve.NormN < minNormN || *q.Curve.NormN > maxHeads) {
+		return fmt.Errorf("norms from %d people can't be used; say how many people their mean and SD were estimated from, %d or more, or leave it out if they are to count as exact", *q.Curve.NormN, minNormN)
 	}
 	if err := q.checkCutoffs(); err != nil {
 		return err

@@ -21,23 +21,24 @@ import (
 func TestQuestionsThatCantBeAnswered(t *testing.T) {
 	number := func(x float64) *float64 { return &x }
 	for sentence, change := range map[string]func(q *ask.Question){
-		`the question has the format "tailgap/question/2"; this program reads "tailgap/question/1"`:                                        func(q *ask.Question) { q.Format = "tailgap/question/2" },
-		`the level 95 is not between 0 and 1; write 0.95 for 95% intervals`:                                                                func(q *ask.Question) { q.Level = 95 },
-		`the level 0 is not between 0 and 1; write 0.95 for 95% intervals`:                                                                 func(q *ask.Question) { q.Level = 0 },
-		`the level 1 is not between 0 and 1; write 0.95 for 95% intervals`:                                                                 func(q *ask.Question) { q.Level = 1 },
-		`an interval at the level 0.3 misses more often than it hits and settles nothing; ask for 0.5 or more, such as 0.95`:               func(q *ask.Question) { q.Level = 0.3 },
-		`the level NaN is not between 0 and 1; write 0.95 for 95% intervals`:                                                               func(q *ask.Question) { q.Level = math.NaN() },
-		`199 replicates can't be used; ask for between 200 and 1000000`:                                                                    func(q *ask.Question) { q.Replicates = 199 },
-		`1000001 replicates can't be used; ask for between 200 and 1000000`:                                                                func(q *ask.Question) { q.Replicates = 1_000_001 },
-		`a level of 0.999 needs more than 200 replicates: ask for 1000 or more`:                                                            func(q *ask.Question) { q.Level, q.Replicates = 0.999, 200 },
-		`-1 workers can't share the work; ask for 1 to 1024, or 0 for one for each core`:                                                   func(q *ask.Question) { q.Workers = -1 },
-		`a curve with mean 50 and SD 0 can't be drawn; the SD must be above zero and both must be finite`:                                  func(q *ask.Question) { q.Curve = &curve.Given{Mean: 50} },
-		`a curve with mean +Inf and SD 1 can't be drawn; the SD must be above zero and both must be finite`:                                func(q *ask.Question) { q.Curve = &curve.Given{Mean: math.Inf(1), SD: 1} },
-		`the cutoff >=5 is there twice; leave one out`:                                                                                     func(q *ask.Question) { q.Cutoffs = append(question(">=5").Cutoffs, question(">= 5").Cutoffs...) },
-		`0 heads can't be counted; say how many people the share will be applied to, a number above zero and up to a million million`:      func(q *ask.Question) { q.Heads = number(0) },
-		`the tolerance 40heads needs to know of how many people; say it with heads, such as 4000`:                                          func(q *ask.Question) { q.TooLow = &verdict.Limit{Size: 40, Unit: verdict.Heads} },
-		`no curve is too low by more than all of the count, so 100%count says nothing; leave out the limit on too low, or make it smaller`: func(q *ask.Question) { q.TooHigh, q.TooLow = ofCount(100), ofCount(100) },
-		`the tolerance -1pt can't be used; it must be zero or more`:                                                                        func(q *ask.Question) { q.TooHigh = points(-1) },
+		`the question has the format "tailgap/question/2"; this program reads "tailgap/question/1"`:                                                              func(q *ask.Question) { q.Format = "tailgap/question/2" },
+		`the level 95 is not between 0 and 1; write 0.95 for 95% intervals`:                                                                                      func(q *ask.Question) { q.Level = 95 },
+		`the level 0 is not between 0 and 1; write 0.95 for 95% intervals`:                                                                                       func(q *ask.Question) { q.Level = 0 },
+		`the level 1 is not between 0 and 1; write 0.95 for 95% intervals`:                                                                                       func(q *ask.Question) { q.Level = 1 },
+		`an interval at the level 0.3 misses more often than it hits and settles nothing; ask for 0.5 or more, such as 0.95`:                                     func(q *ask.Question) { q.Level = 0.3 },
+		`the level NaN is not between 0 and 1; write 0.95 for 95% intervals`:                                                                                     func(q *ask.Question) { q.Level = math.NaN() },
+		`199 replicates can't be used; ask for between 200 and 1000000`:                                                                                          func(q *ask.Question) { q.Replicates = 199 },
+		`1000001 replicates can't be used; ask for between 200 and 1000000`:                                                                                      func(q *ask.Question) { q.Replicates = 1_000_001 },
+		`a level of 0.999 needs more than 200 replicates: ask for 1000 or more`:                                                                                  func(q *ask.Question) { q.Level, q.Replicates = 0.999, 200 },
+		`-1 workers can't share the work; ask for 1 to 1024, or 0 for one for each core`:                                                                         func(q *ask.Question) { q.Workers = -1 },
+		`a curve with mean 50 and SD 0 can't be drawn; the SD must be above zero and both must be finite`:                                                        func(q *ask.Question) { q.Curve = &curve.Given{Mean: 50} },
+		`a curve with mean +Inf and SD 1 can't be drawn; the SD must be above zero and both must be finite`:                                                      func(q *ask.Question) { q.Curve = &curve.Given{Mean: math.Inf(1), SD: 1} },
+		`norms from 4 people can't be used; say how many people their mean and SD were estimated from, 5 or more, or leave it out if they are to count as exact`: func(q *ask.Question) { q.Curve = norms(50, 10, 4) },
+		`the cutoff >=5 is there twice; leave one out`:                                                                                                           func(q *ask.Question) { q.Cutoffs = append(question(">=5").Cutoffs, question(">= 5").Cutoffs...) },
+		`0 heads can't be counted; say how many people the share will be applied to, a number above zero and up to a million million`:                            func(q *ask.Question) { q.Heads = number(0) },
+		`the tolerance 40heads needs to know of how many people; say it with heads, such as 4000`:                                                                func(q *ask.Question) { q.TooLow = &verdict.Limit{Size: 40, Unit: verdict.Heads} },
+		`no curve is too low by more than all of the count, so 100%count says nothing; leave out the limit on too low, or make it smaller`:                       func(q *ask.Question) { q.TooHigh, q.TooLow = ofCount(100), ofCount(100) },
+		`the tolerance -1pt can't be used; it must be zero or more`:                                                                                              func(q *ask.Question) { q.TooHigh = points(-1) },
 	} {
 		q := question()
 		change(&q)
@@ -140,10 +141,11 @@ func TestQuestionFiles(t *testing.T) {
 	q := question(">=70", "20..30")
 	q.Missing, q.Scores = []string{"-9"}, []string{"vocabulary"}
 	q.TooHigh, q.TooLow = points(1), ofCount(20)
-	q.Range, q.Curve = &sample.Range{Low: 0, High: 83}, &curve.Given{Mean: 54.6, SD: 13.1}
+	q.Range, q.Curve = &sample.Range{Low: 0, High: 83}, norms(54.6, 13.1, 870)
 	text, err := ask.WriteQuestion(q)
 	require.NoError(t, err)
 	assert.Contains(t, string(text), `">=70"`, "signs are left readable")
+	assert.Contains(t, string(text), `"norm_n": 870`)
 	back, err := ask.ReadQuestion(text)
 	require.NoError(t, err)
 	assert.Equal(t, q, back)
@@ -165,22 +167,26 @@ func TestQuestionFiles(t *testing.T) {
 		`{"cutoffs":[]}`:                     `the question file has no format; this program reads "tailgap/question/1"`,
 		`{"format":"tailgap/question/9"}`:    `the question file has the format "tailgap/question/9"; this program reads "tailgap/question/1"`,
 		`{"format":"tailgap/question/1"} {}`: `this is not a question file, which is a JSON object with a format: line 1 is not JSON`,
-		`{"format":"tailgap/question/1","colour":1}`:                         `the question file can't be read: there is no "colour" in a question`,
-		`{"format":"tailgap/question/1","cutoffs":["x"]}`:                    `the question file can't be read: the cutoff "x" can't be read; write it as >=50, >50, <=20, <20 or 20..30, decimals with a point`,
-		`{"format":"tailgap/question/1","too_high":"1%"}`:                    `the question file can't be read: the tolerance "1%" could mean two things; write 1pt for percentage points or 1%count for a part of the counted share`,
-		`{"format":"tailgap/question/1","level":"high"}`:                     `the question file can't be read: "level" can't be a text in quotes; write a number`,
-		`{"format":"tailgap/question/1","step":1}`:                           `the question file can't be read: "step" can't be a number; write a text in quotes`,
-		`{"format":"tailgap/question/1","seed":-1}`:                          `the question file can't be read: "seed" can't be the number -1; write a whole number from 0 up`,
-		`{"format":"tailgap/question/1","curve":[50,10]}`:                    `the question file can't be read: "curve" can't be a list in brackets; write an object in braces`,
-		`{"format":"tailgap/question/1","scores":"vocabulary"}`:              `the question file can't be read: "scores" can't be a text in quotes; write a list in brackets`,
-		`{"format":"tailgap/question/1","everyone":{}}`:                      `the question file can't be read: "everyone" can't be an object in braces; write true or false`,
-		`{"format":"tailgap/question/1","cutoffs":[null]}`:                   `the question file can't be read: "cutoffs" holds a null; write a value, or leave it out`,
-		`{"format":"tailgap/question/1","curve":{"sd":13.1}}`:                `the question file can't be read: a given curve needs both mean and sd; without a curve it is fitted to the scores`,
-		`{"format":"tailgap/question/1","curve":{"mean":null,"sd":13.1}}`:    `the question file can't be read: "mean" holds a null; write a value, or leave it out`,
-		`{"format":"tailgap/question/1","level":0.9,"Level":0.5}`:            `the question file can't be read: "Level" is there twice in the question; leave one out`,
-		`{"format":"tailgap/question/1","curve":{"mean":1,"mean":2,"sd":1}}`: `the question file can't be read: "mean" is there twice in "curve"; leave one out`,
-		`{"format":"tailgap/question/1","level":1.5}`:                        `the level 1.5 is not between 0 and 1; write 0.95 for 95% intervals`,
-		`{"format":"tailgap/question/1","header":"perhaps"}`:                 `the question file can't be read: the header setting "perhaps" can't be read; write auto, yes or no`,
+		`{"format":"tailgap/question/1","colour":1}`:                                 `the question file can't be read: there is no "colour" in a question`,
+		`{"format":"tailgap/question/1","cutoffs":["x"]}`:                            `the question file can't be read: the cutoff "x" can't be read; write it as >=50, >50, <=20, <20 or 20..30, decimals with a point`,
+		`{"format":"tailgap/question/1","too_high":"1%"}`:                            `the question file can't be read: the tolerance "1%" could mean two things; write 1pt for percentage points or 1%count for a part of the counted share`,
+		`{"format":"tailgap/question/1","level":"high"}`:                             `the question file can't be read: "level" can't be a text in quotes; write a number`,
+		`{"format":"tailgap/question/1","step":1}`:                                   `the question file can't be read: "step" can't be a number; write a text in quotes`,
+		`{"format":"tailgap/question/1","seed":-1}`:                                  `the question file can't be read: "seed" can't be the number -1; write a whole number from 0 up`,
+		`{"format":"tailgap/question/1","curve":[50,10]}`:                            `the question file can't be read: "curve" can't be a list in brackets; write an object in braces`,
+		`{"format":"tailgap/question/1","scores":"vocabulary"}`:                      `the question file can't be read: "scores" can't be a text in quotes; write a list in brackets`,
+		`{"format":"tailgap/question/1","everyone":{}}`:                              `the question file can't be read: "everyone" can't be an object in braces; write true or false`,
+		`{"format":"tailgap/question/1","cutoffs":[null]}`:                           `the question file can't be read: "cutoffs" holds a null; write a value, or leave it out`,
+		`{"format":"tailgap/question/1","curve":{"sd":13.1}}`:                        `the question file can't be read: a given curve needs both mean and sd; without a curve it is fitted to the scores`,
+		`{"format":"tailgap/question/1","curve":{"mean":null,"sd":13.1}}`:            `the question file can't be read: "mean" holds a null; write a value, or leave it out`,
+		`{"format":"tailgap/question/1","curve":{"norm_n":870}}`:                     `the question file can't be read: a given curve needs both mean and sd; without a curve it is fitted to the scores`,
+		`{"format":"tailgap/question/1","curve":{"mean":50,"sd":10,"norm_n":null}}`:  `the question file can't be read: "norm_n" holds a null; write a value, or leave it out`,
+		`{"format":"tailgap/question/1","curve":{"mean":50,"sd":10,"norm_n":870.5}}`: `the question file can't be read: "curve.norm_n" can't be the number 870.5; write a whole number from 0 up`,
+		`{"format":"tailgap/question/1","curve":{"mean":50,"sd":10,"norm_n":3}}`:     `norms from 3 people can't be used; say how many people their mean and SD were estimated from, 5 or more, or leave it out if they are to count as exact`,
+		`{"format":"tailgap/question/1","level":0.9,"Level":0.5}`:                    `the question file can't be read: "Level" is there twice in the question; leave one out`,
+		`{"format":"tailgap/question/1","curve":{"mean":1,"mean":2,"sd":1}}`:         `the question file can't be read: "mean" is there twice in "curve"; leave one out`,
+		`{"format":"tailgap/question/1","level":1.5}`:                                `the level 1.5 is not between 0 and 1; write 0.95 for 95% intervals`,
+		`{"format":"tailgap/question/1","header":"perhaps"}`:                         `the question file can't be read: the header setting "perhaps" can't be read; write auto, yes or no`,
 	} {
 		_, err := ask.ReadQuestion([]byte(text))
 		assert.EqualError(t, err, sentence)

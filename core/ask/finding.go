@@ -30,8 +30,11 @@ func (w *work) result() Result {
 		step := w.scale.Step
 		r.Sample.Step = &step
 	}
-	if w.table.Curve.Fitted {
+	switch {
+	case w.table.Curve.Fitted:
 		r.Curve.Source = "fitted"
+	case w.table.Curve.NormN > 0:
+		r.Curve.NormN = &w.table.Curve.NormN
 	}
 	for _, c := range w.question.Cutoffs {
 		r.Cutoffs = append(r.Cutoffs, w.finding(c))
@@ -82,6 +85,10 @@ func (s shown) method() string {
 	switch {
 	case s.question.Everyone:
 		return "exact"
+	case s.table.Curve.Known():
+		return "exact binomial, Clopper-Pearson"
+	case !s.table.Curve.Fitted:
+		return "exact binomial and the norms' own sampling, MOVER"
 	case s.tail && s.estimate().Few():
 		return "ghost-studentised, hull with score limits"
 	}
@@ -89,10 +96,7 @@ func (s shown) method() string {
 }
 
 func (s shown) ratioLimits(ratio float64) (low, high *float64) {
-	quantile := s.quantiles.Region[s.region][0]
-	return resample.RatioLimits(ratio, func(weight float64) resample.Interval {
-		return s.interval(weight, quantile)
-	})
+	return resample.RatioLimits(ratio, func(weight float64) resample.Interval { return s.interval(weight, 1) })
 }
 
 func (w *work) heads(r Reading) *HeadCount {

@@ -32,12 +32,15 @@ func TestGoldenAnswers(t *testing.T) {
 		change          func(q *ask.Question)
 		cutoffs         []string
 	}{
-		"points":     {"pima", "glu", func(q *ask.Question) { q.TooHigh, q.TooLow, q.Heads = points(2), points(4), &heads }, []string{">=140", "<100", ">=200", "100..125"}},
-		"half-step":  {"mathexam", "nsolved", func(q *ask.Question) { q.TooHigh, q.HalfStep = points(3), true }, []string{"<=4", ">10"}},
-		"of-count":   {"pima", "age", func(q *ask.Question) { q.TooHigh, q.TooLow = ofCount(20), ofCount(20) }, []string{">=40", "<=21"}},
-		"no-step":    {"faithful", "eruptions", func(q *ask.Question) { q.TooHigh, q.TooLow = points(5), points(5) }, []string{">=4.5", "2..3"}},
-		"small":      {"cd4", "oneyear", func(q *ask.Question) { q.Level = 0.9 }, []string{">=5.5", "<3"}},
-		"given":      {"crimtab", "finger_cm", func(q *ask.Question) { q.Curve, q.TooLow = &curve.Given{Mean: 11.5, SD: 0.55}, points(1) }, []string{">=12.5"}},
+		"points":    {"pima", "glu", func(q *ask.Question) { q.TooHigh, q.TooLow, q.Heads = points(2), points(4), &heads }, []string{">=140", "<100", ">=200", "100..125"}},
+		"half-step": {"mathexam", "nsolved", func(q *ask.Question) { q.TooHigh, q.HalfStep = points(3), true }, []string{"<=4", ">10"}},
+		"of-count":  {"pima", "age", func(q *ask.Question) { q.TooHigh, q.TooLow = ofCount(20), ofCount(20) }, []string{">=40", "<=21"}},
+		"no-step":   {"faithful", "eruptions", func(q *ask.Question) { q.TooHigh, q.TooLow = points(5), points(5) }, []string{">=4.5", "2..3"}},
+		"small":     {"cd4", "oneyear", func(q *ask.Question) { q.Level = 0.9 }, []string{">=5.5", "<3"}},
+		"given":     {"crimtab", "finger_cm", func(q *ask.Question) { q.Curve, q.TooLow = &curve.Given{Mean: 11.5, SD: 0.55}, points(1) }, []string{">=12.5"}},
+		"norms": {"faithful", "waiting", func(q *ask.Question) {
+			q.Curve, q.TooHigh, q.TooLow, q.Level = norms(71, 13.6, 200), points(8), ofCount(30), 0.9
+		}, []string{">=90", "<=45", "60..80"}},
 		"outliers":   {"newcomb", "time", func(q *ask.Question) { q.TooHigh, q.Range = points(5), &sample.Range{Low: -50, High: 50} }, []string{">=24", "<=0"}},
 		"no-cutoffs": {"faithful", "waiting", func(q *ask.Question) { q.Everyone, q.TooHigh, q.TooLow = true, points(5), points(5) }, nil},
 	}
@@ -60,7 +63,7 @@ func TestGoldenAnswers(t *testing.T) {
 	}
 }
 
-func encode(t *testing.T, answer ask.Answer) []byte {
+func encode(t require.TestingT, answer ask.Answer) []byte {
 	var text bytes.Buffer
 	encoder := json.NewEncoder(&text)
 	encoder.SetEscapeHTML(false)

@@ -7,11 +7,9 @@ import (
 
 	"github.com/stretchr/testify/assert"
 	"github.com/stretchr/testify/require"
-	"gonum.org/v1/gonum/stat/distuv"
 	"pgregory.net/rapid"
 
 	"tailgap/core/ask"
-	"tailgap/core/curve"
 	"tailgap/core/cutoff"
 	"tailgap/core/sample"
 	"tailgap/core/verdict"
@@ -87,21 +85,6 @@ func TestEveryoneIsExact(t *testing.T) {
 	assert.Nil(t, r.Sweeps[0].Low)
 	assert.Nil(t, r.Sweeps[0].BandHigh)
 	assert.NotNil(t, r.Sweeps[0].Trusted)
-}
-
-// A given curve leaves only the count random: the interval holds the curve's
-// share less Wilson's limits of the count where few are beyond.
-func TestGivenCurve(t *testing.T) {
-	q := question(">=200")
-	q.Curve = &curve.Given{Mean: 120, SD: 30}
-	f := judge(t, q, testdata.Open("pima", "glu")).Cutoffs[0]
-	share := distuv.UnitNormal.CDF(-(200 - 120) / 30.0)
-	assert.InDelta(t, share, f.CurveShare, 1e-14)
-	assert.Equal(t, 0, f.Counted)
-	assert.Nil(t, f.Ratio)
-	tq := distuv.StudentsT{Sigma: 1, Nu: 531}.Quantile(0.975)
-	wilson := tq * tq / (532 + tq*tq) // Wilson's upper limit of 0 in 532
-	assert.InDelta(t, 100*(share-wilson), *f.GapLow, 1e-9)
 }
 
 // Trusted stretches are the thresholds whose band is inside the tolerance,

@@ -26,6 +26,7 @@ type work struct {
 	known     map[key]int
 	sweeps    []sweepPlan
 	quantiles resample.Quantiles
+	aparts    map[apartKey]gap.Apart
 	t         float64 // Student's t at the question's level
 	sparse    resample.Sparse
 	found     shape.Findings
@@ -58,7 +59,7 @@ func newWork(question Question, column sample.Column, counts sample.Counts) (*wo
 	}
 	normal := curve.FitNormal(moments)
 	if given := question.Curve; given != nil {
-		normal = curve.Normal{Mean: given.Mean, SD: given.SD}
+		normal = given.Normal()
 	}
 	heads := 0.0
 	if question.Heads != nil {
@@ -70,6 +71,7 @@ func newWork(question Question, column sample.Column, counts sample.Counts) (*wo
 		scale:     sample.NewScale(counts, moments.SD, question.Step, question.Range),
 		tolerance: verdict.NewTolerance(question.TooHigh, question.TooLow, heads),
 		known:     map[key]int{},
+		aparts:    map[apartKey]gap.Apart{},
 		t:         resample.StudentT(counts.N, question.Level),
 	}
 	w.sparse = resample.BandSparse(counts.N, question.Level, w.scale.Step > 0)
@@ -90,7 +92,10 @@ func newWork(question Question, column sample.Column, counts sample.Counts) (*wo
 		}
 	}
 	w.plan.Table, w.plan.Estimates = w.table, w.table.Estimates(w.plan.Regions)
-	w.plan.Weights = w.tolerance.Weights()
+	w.plan.Weights, w.plan.BandsOnly = w.tolerance.Weights(), !normal.Fitted
+	if normal.Known() { // its studentised gap is the same at every weight
+		w.plan.Weights = []float64{1}
+	}
 	w.plan.Level, w.plan.Replicates = question.Level, question.Replicates
 	w.plan.Seed, w.plan.Workers = question.Seed, question.Workers
 	return w, w.affordable()
@@ -102,7 +107,10 @@ func newWork(question Question, column sample.Column, counts sample.Counts) (*wo
 func (w *work) affordable() error {
 	const most = 1 << 28 // numbers, of eight bytes
 	kept := math.Min(1, 4*(1-w.question.Level))
-	places := float64((len(w.plan.Regions) + len(w.plan.Groups)) * len(w.plan.Weights))
+	places := float64(len(w.plan.Groups) * len(w.plan.Weights))
+	if !w.plan.BandsOnly {
+		places += float64(len(w.plan.Regions) * len(w.plan.Weights))
+	}
 	if w.question.Everyone || places*kept*float64(w.question.Replicates) <= most {
 		return nil
 	}

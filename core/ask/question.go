@@ -22,7 +22,7 @@ type Question struct {
 	Cutoffs    []cutoff.Cutoff   `json:"cutoffs"`    // ">=70", "20..30"
 	Step       sample.StepChoice `json:"step"`       // "auto", "none" or the step itself
 	Range      *sample.Range     `json:"range"`      // "0:83", the ends of the scale; null: the lowest and highest seen
-	Curve      *curve.Given      `json:"curve"`      // {"mean":54.6,"sd":13.1}; null: fitted to the scores
+	Curve      *curve.Given      `json:"curve"`      // {"mean":54.6,"sd":13.1}, with "norm_n":870 if from 870 people; null: fitted to the scores
 	HalfStep   bool              `json:"half_step"`  // judge with the half-step
 	TooHigh    *verdict.Limit    `json:"too_high"`   // "1pt", "20%count" or "40heads"; null: no limit
 	TooLow     *verdict.Limit    `json:"too_low"`    // likewise

@@ -90,7 +90,7 @@ func (w *work) warnings() []string {
 	if w.scale.Low == 0 && counts.Min() >= 0 && m.Mean < 2*m.SD {
 		add("the mean is less than 2 SD above 0, where the scores begin: the curve puts people below 0, where there are none")
 	}
-	if excess := m.ExcessKurtosis(); excess > 10 && !w.question.Everyone {
+	if excess := m.ExcessKurtosis(); excess > 10 && w.table.Curve.Fitted && !w.question.Everyone {
 		add("the tails are very heavy (excess kurtosis %.0f): intervals and bands are too narrow", excess)
 	}
 	if w.question.Curve != nil && math.Abs(m.Mean-w.table.Curve.Mean) > 2*w.table.Curve.SD {

@@ -102,10 +102,23 @@ func (j judging) resample(ctx context.Context, weight float64, regions [][]gap.T
 }
 
 func (j judged) interval(region int) resample.Interval {
+	if !j.table.Curve.Fitted {
+		return j.apart(region, resample.Miss(j.Level))
+	}
 	return resample.IntervalOf(j.plan.Estimates[region], j.plan.Weights[0], j.quantiles.Region[region][0], j.t, !j.plan.Regions[region].Stretch)
 }
 
+// apart has the limits of a given curve's gap, each missed with the
+// probability miss.
+func (j judged) apart(region int, miss float64) resample.Interval {
+	a := j.table.Apart(j.plan.Regions[region], j.plan.Estimates[region], false, miss)
+	return resample.ApartOf(a, j.plan.Weights[0])
+}
+
 func (j judged) band(region int) resample.Interval {
+	if !j.table.Curve.Fitted {
+		return j.apart(region, resample.BandMiss(j.quantiles.Group[0][0], j.Level))
+	}
 	return j.interval(region).Hull(resample.BandOf(j.plan.Estimates[region], 1, j.quantiles.Group[0][0], j.sparse))
 }
 
@@ -181,7 +194,7 @@ func (s Study) curve(p Population, moments sample.Moments, random *rand.Rand) cu
 			people[i] = c.Mean + c.SD*random.NormFloat64()
 		}
 		m := sample.Count(people).Moments()
-		c.Mean, c.SD = m.Mean, m.SD
+		c.Mean, c.SD, c.NormN = m.Mean, m.SD, m.N
 	}
 	return c
 }

@@ -34,7 +34,7 @@
 // independent: that is what D is for. A weight w other than 1 judges a
 // tolerance in percent of the count. For a stretch a and b are the
 // differences of those at its two ends, g is the mean of h at both, and k
-// counts the scores inside. For a given curve v = D = 0.
+// counts the scores inside.
 //
 // v is the delta method's variance of a normal share (as in Peacock et al.
 // 2012), p̃ Agresti and Coull's (1998). The ghosts, which with p̃ keep the
@@ -51,4 +51,50 @@
 //
 // See package resample for what becomes of SE, and [Estimate.ScoreLimits] for
 // the limits where few people are on one side.
+//
+// # Given curves
+//
+// A curve with a stated mean and SD does not come from the people who were
+// counted, so each of the two shares has limits of its own, and no replicates
+// are needed to join them ([Apart]): for the gap E = N - w·S, with N between
+// N₁ and N₂ and S between S₁ and S₂,
+//
+//	E - √[(N-N₁)² + w²(S₂-S)²]  to  E + √[(N₂-N)² + w²(S-S₁)²]
+//
+// (MOVER, the method of variance estimates recovery; Zou & Donner 2008). S₁
+// and S₂ are exact, from the binomial distribution ([ClopperPearson]).
+//
+// Where mean and SD are known, as norms without a number of people are taken
+// to be, N₁ = N₂ = N and the interval is exact too: neither limit is missed
+// more often than it may be, for any n, in any tail or stretch, at any weight.
+//
+// Where they were estimated from n₀ norm people, these are taken to be normal,
+// as the curve says: the mean is normal with variance σ²/n₀, and (n₀-1)SD²/σ²
+// is chi-squared with n₀-1 degrees of freedom. For a tail N₁ and N₂ are the
+// shares at
+//
+//	z(1 - 1/(4(n₀-1))) ± q·√(1/n₀ + z²/(2(n₀-1))),
+//
+// q the normal quantile of the level: √n₀·z is noncentral t (Owen 1968), and
+// these are its limits by Johnson and Welch's (1940) approximation. For a
+// stretch they are those of its log odds, with Student's t with n₀-1 degrees
+// of freedom and the delta method's variance
+//
+//	v₀/n₀ = (φ(zₐ)-φ(z_b))²/n₀ + (zₐφ(zₐ)-z_bφ(z_b))²/(2(n₀-1))
+//
+// (for a tail φ(z)²(1/n₀ + z²/(2(n₀-1)))), which is also the norms' part in the
+// standard error SE² = v₀/n₀ + w²p̃(1-p̃)/n that a band is scaled by.
+//
+// With nobody's count in play, these limits of N are missed on either side at
+// most 2.9% of the time where 2.5% are wanted (tails, n₀ from 2, z to 4) and
+// 3.3% (stretches, n₀ from 5), in 100,000 to 400,000 draws of the norms. For
+// the whole interval see TestNormsAreCovered, and TestKnownCurveIsCoveredForSure.
+//
+// The ghost-studentised interval with the norms' variance added and the norms
+// redrawn in each replicate was tried first, in 600 samples a cell of 50 and 300
+// people, at -2 to +3 SD. With norms from 50, 200 and 1,000 people it covered as
+// well (93.7% at worst and 97.7% on the average; this one 93.8% and 97.0%) and
+// was as wide in the middle, but in the median cell 13 to 18% wider at 2 SD and
+// 60% at 3 SD; with norms from 3 and 5 people it fell to 78%, this one to 94.7%.
+// Nor did it become the exact interval as n₀ grew.
 package gap

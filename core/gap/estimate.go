@@ -20,7 +20,7 @@ type Estimate struct {
 	Inside  float64 // people inside the region
 	Curve   float64 // share by the curve
 	Counted float64 // share counted
-	V       float64 // n times the variance of the curve's share; 0 for a given curve
+	V       float64 // n times the variance of the curve's share; 0 where the curve is known
 	D       float64 // slope of the curve's share on the counted share, with ghosts; 0 for a given curve
 	slope   float64 // the curve's density at its reading point, in SDs of the curve
 	z       float64

@@ -10,7 +10,9 @@ import (
 func (t Table) SampleSums() Sums {
 	m := t.Moments
 	sd := m.SD
-	return newSums(float64(m.N), 0, m.M2/(sd*sd), m.M3/(sd*sd*sd), m.M4/(sd*sd*sd*sd))
+	sums := newSums(float64(m.N), 0, m.M2/(sd*sd), m.M3/(sd*sd*sd), m.M4/(sd*sd*sd*sd))
+	sums.Norms = printed
+	return sums
 }
 
 // SampleInside are the sums of the sample over a region.
@@ -51,6 +53,9 @@ func (t Table) Estimates(regions []Region) []*Estimate {
 func (t Table) estimate(r Region, sums *Sums, in Inside) *Estimate {
 	var e Estimate
 	reading := t.ReadRegion(&r, sums)
+	if t.Curve.NormN > 0 {
+		reading.v = sums.N * t.normVariance(reading.slope, reading.spread)
+	}
 	e.Set(&r, sums, &reading, in)
 	e.unseen = t.unseenBy(&r, sums, &reading)
 	return &e

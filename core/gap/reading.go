@@ -4,18 +4,23 @@ import "tailgap/core/curve"
 
 // Reading is the curve's share of a region as a sample, or a resample, makes
 // it, with what a sample's scores do to it: the influence of a score x is
-// a(x-mean) + b((x-mean)²-M2). A given curve has no influence and no variance.
+// a(x-mean) + b((x-mean)²-M2). A given curve has no influence.
 type Reading struct {
 	share, z, slope float64
 	a, b, v         float64
+	spread          float64 // what the share moves by as the norms' SD grows; their mean moves it by slope
 }
 
 // Set reads the table's curve beyond a point. A fitted curve moves with the
-// sums; a given one stays.
+// sums, one from norms with these; any other stays.
 func (c *Reading) Set(t *Table, p *Point, s *Sums) {
 	switch {
-	case !t.Curve.Fitted:
+	case t.Curve.Known():
 		*c = Reading{share: p.tail, z: p.z}
+	case !t.Curve.Fitted:
+		z := s.Norms.z(p.z)
+		share, slope := curve.Tail(z)
+		*c = Reading{share: share, z: z, slope: slope, spread: slope * z}
 	case s.M2 <= 0: // a resample of one score only: its curve is a step
 		*c = Reading{share: step(p.u, s.Mean)}
 	default:
@@ -46,6 +51,8 @@ func (c *Reading) Subtract(other *Reading, s *Sums) {
 		c.share -= other.share
 	}
 	c.share = max(0, c.share) // below 0 by rounding only
+	c.slope -= other.slope
+	c.spread -= other.spread
 	c.a -= other.a
 	c.b -= other.b
 	c.v = s.variance(c.a, c.b)

@@ -95,6 +95,7 @@ type Sums struct {
 	perN            float64 // 1/n
 	bessel          float64 // n/(n-1)
 	fourth          float64 // M4 - M2²: n times the variance of M2
+	Norms           Norms   // what a curve from norms goes by
 }
 
 // NewSums turns the sums of 1, u, u², u³ and u⁴ into moments.

@@ -13,7 +13,7 @@ import (
 // covariance of the two in Kappa. They apply to tails, not to stretches; t
 // is the quantile of Student's t for the wanted level.
 func (e *Estimate) ScoreLimits(weight, t float64) (low, high float64) {
-	curveLow, curveHigh := e.curveLimits(t)
+	curveLow, curveHigh := e.fittedLimits(t)
 	spread := t * t * e.Kappa(weight) / (weight * weight * e.N)
 	below := (e.Curve - curveLow) / weight
 	above := (curveHigh - e.Curve) / weight
@@ -21,8 +21,8 @@ func (e *Estimate) ScoreLimits(weight, t float64) (low, high float64) {
 		e.Curve - weight*lowerRoot(e.Counted, above*above, spread)
 }
 
-// curveLimits are the limits of the curve's share alone.
-func (e *Estimate) curveLimits(t float64) (low, high float64) {
+// fittedLimits are the limits of a fitted curve's share alone.
+func (e *Estimate) fittedLimits(t float64) (low, high float64) {
 	if e.V == 0 || e.slope == 0 {
 		return e.Curve, e.Curve
 	}

@@ -19,7 +19,8 @@ import (
 
 // The whole method against testdata/generate/fullmethod.py, which draws rows
 // in NumPy: each quantile is a mean over five seeds of 20,000 replicates,
-// with its Monte Carlo SD beside it.
+// with its Monte Carlo SD beside it. Fitted, known and estimated curves, at four
+// levels.
 func TestWholeMethodAgreesWithNumPy(t *testing.T) {
 	var file struct {
 		Cutoffs []struct {
@@ -31,6 +32,7 @@ func TestWholeMethodAgreesWithNumPy(t *testing.T) {
 			Weight          float64
 			Mean            *float64 `json:"given_mean"`
 			SD              *float64 `json:"given_sd"`
+			NormN           *int     `json:"norm_n"`
 			Level           float64
 			SE              float64 `json:"se_points"`
 			SEBelow         float64 `json:"se_below_points"`
@@ -42,15 +44,17 @@ func TestWholeMethodAgreesWithNumPy(t *testing.T) {
 			BandThresholds  int     `json:"band_thresholds"`
 			Band            float64 `json:"band_q_mean"`
 			BandSD          float64 `json:"band_q_sd"`
+			BandLow         float64 `json:"band_low_points"`
+			BandHigh        float64 `json:"band_high_points"`
 		}
 	}
 	testdata.JSON("interval/full.json", &file)
-	require.GreaterOrEqual(t, len(file.Cutoffs), 12)
+	require.Len(t, file.Cutoffs, 27)
 	for _, want := range file.Cutoffs {
-		where := fmt.Sprintf("%s.%s %v%v half-step %v weight %v", want.Dataset, want.Column, want.Side, want.Cutoff, want.HalfStep, want.Weight)
+		where := fmt.Sprintf("%s.%s %v%v half-step %v weight %v level %v", want.Dataset, want.Column, want.Side, want.Cutoff, want.HalfStep, want.Weight, want.Level)
 		var given *curve.Given
 		if want.Mean != nil {
-			given = &curve.Given{Mean: *want.Mean, SD: *want.SD}
+			given = &curve.Given{Mean: *want.Mean, SD: *want.SD, NormN: want.NormN}
 		}
 		table, scale := column{Dataset: want.Dataset, Column: want.Column, Step: want.Step}.table(given)
 		plan := resample.Plan{Table: table, Weights: []float64{want.Weight}, Level: want.Level, Replicates: 20_000, Seed: 5}
@@ -79,11 +83,29 @@ func TestWholeMethodAgreesWithNumPy(t *testing.T) {
 		below, above := e.SideSE(want.Weight)
 		assert.InEpsilonf(t, want.SEBelow, 100*below, 1e-9, "standard error below, %s", where)
 		assert.InEpsilonf(t, want.SEAbove, 100*above, 1e-9, "standard error above, %s", where)
-		i := resample.IntervalOf(e, want.Weight, got.Region[0][0], resample.StudentT(table.Counts.N, want.Level), true)
-		if want.Side.Lower() {
-			i = i.Mirror(1 - want.Weight)
+		var i, band resample.Interval
+		if given != nil {
+			limits := func(miss float64) resample.Interval {
+				return resample.ApartOf(table.Apart(plan.Regions[0], e, want.Side.Lower(), miss), want.Weight)
+			}
+			i, band = limits(resample.Miss(want.Level)), limits(resample.BandMiss(got.Group[0][0], want.Level))
+		} else {
+			i = resample.IntervalOf(e, want.Weight, got.Region[0][0], resample.StudentT(table.Counts.N, want.Level), true)
+			band = i.Hull(resample.BandOf(e, want.Weight, got.Group[0][0], resample.BandSparse(table.Counts.N, want.Level, scale.Step > 0)))
+			if want.Side.Lower() {
+				i, band = i.Mirror(1-want.Weight), band.Mirror(1-want.Weight)
+			}
 		}
 		assert.InDeltaf(t, want.Low, 100*i.Low, monteCarlo*want.SEBelow, "low limit, %s", where)
 		assert.InDeltaf(t, want.High, 100*i.High, monteCarlo*want.SEAbove, "high limit, %s", where)
+		monteCarlo = 8 * math.Max(want.BandSD, 0.004) // its limits are no straight lines of the quantile
+		assert.InDeltaf(t, want.BandLow, 100*band.Low, monteCarlo*want.SEBelow, "the band's low limit, %s", where)
+		assert.InDeltaf(t, want.BandHigh, 100*band.High, monteCarlo*want.SEAbove, "the band's high limit, %s", where)
+
+		plan.BandsOnly = true
+		only, err := resample.Run(context.Background(), plan, nil)
+		require.NoError(t, err)
+		assert.Empty(t, only.Region)
+		assert.Equal(t, got.Group, only.Group, where)
 	}
 }

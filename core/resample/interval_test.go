@@ -56,7 +56,7 @@ func (c column) table(shape *curve.Given) (gap.Table, sample.Scale) {
 	moments := counts.Moments()
 	normal := curve.FitNormal(moments)
 	if shape != nil {
-		normal = curve.Normal{Mean: shape.Mean, SD: shape.SD}
+		normal = shape.Normal()
 	}
 	step := sample.StepChoice{None: true}
 	if c.Step != nil {

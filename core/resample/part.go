@@ -38,8 +38,19 @@ func newPart(plan Plan, made blocks, studies []*study) (Part, error) {
 	return part, nil
 }
 
+// rows is how many regions, and how many groups, the plan asks quantiles of.
+func (p Plan) rows() (regions, groups int) {
+	if p.BandsOnly {
+		return 0, len(p.Groups)
+	}
+	return len(p.Regions), len(p.Groups)
+}
+
 // places is how many quantiles the plan asks for.
-func (p Plan) places() int { return (len(p.Regions) + len(p.Groups)) * len(p.Weights) }
+func (p Plan) places() int {
+	regions, groups := p.rows()
+	return (regions + groups) * len(p.Weights)
+}
 
 // kept is how many values some blocks leave for each place.
 func (p Plan) kept(made blocks) int {
@@ -93,5 +104,6 @@ func merge(plan Plan, parts []Part) Quantiles {
 		quantiles[i] = math.Sqrt(all.least())
 	}
 	rows := slices.Collect(slices.Chunk(quantiles, len(plan.Weights)))
-	return Quantiles{Region: rows[:len(plan.Regions)], Group: rows[len(plan.Regions):]}
+	regions, _ := plan.rows()
+	return Quantiles{Region: rows[:regions], Group: rows[regions:]}
 }

@@ -45,6 +45,24 @@
 // that tables with many people to a score, and of fewer than some thousand
 // scores, keep the direct form. testdata/bench/README.md has the quantiles of
 // both forms side by side.
+//
+// # Given curves
+//
+// A given curve needs replicates for its bands only, and V* is n·SE² itself.
+// If it comes from norms each replicate draws their mean and SD again, once
+// for the whole sweep. The band is the interval of gap.Apart at every
+// threshold, missed on each side with the probability Φ(-q) instead of the
+// level's. So it lies outside every interval, its limits in a sparse tail are
+// the exact ones, and the replicates only say how many thresholds the sweep is
+// worth.
+//
+// Measured in 1,000 samples a cell of 20, 50, 300 and 1,000 whole scores (normal,
+// normal but shifted against the curve, negative binomial; 999 replicates), a
+// 95% band held the whole sweep and one step beyond in 92.2 to 94.8% of the
+// samples (93.9% on the average) against a known curve; norms from 50, 200 and
+// 1,000 people: 90.5 to 98.3% (94.0%), the fewest with 20 scores; from 5 and 20
+// people 94.4% or more. E ± q·SE, tried first, held it in 85.8 to 91.9% against
+// a known curve and was no narrower.
 package resample
 
 import (
@@ -58,13 +76,15 @@ import (
 
 // Plan says what is wanted of the replicates. Every region is judged at every
 // weight (see gap.Estimate.Gap). Groups are runs of regions, from (in) to
-// (out), for which simultaneous limits are wanted.
+// (out), for which simultaneous limits are wanted; BandsOnly, that nothing
+// else is: the regions' own quantiles are then left out.
 type Plan struct {
 	Table      gap.Table
 	Regions    []gap.Region
 	Estimates  []*gap.Estimate // the sample's, one for each region
 	Weights    []float64
 	Groups     [][2]int
+	BandsOnly  bool
 	Level      float64
 	Replicates int
 	Seed       uint64

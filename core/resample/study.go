@@ -23,7 +23,7 @@ type study struct {
 	tails    []gap.Inside // sums over the cells from this one up; one more entry than cells
 	stream   stream
 	normal   *rand.Rand // normal numbers from the stream
-	region   []largest  // by region, then weight
+	region   []largest  // by region, then weight; none where only bands are wanted
 	group    []largest  // by group, then weight
 	sup      []fraction
 }
@@ -36,9 +36,19 @@ type fraction struct{ square, variance float64 }
 type target struct {
 	gap      float64 // E, the sample's
 	binomial float64 // p̃(1-p̃), the sample's
-	least    float64 // floor of V*: 0.05 n SE²
+	least    float64 // floor of V*, part of n SE²
 	below    float64 // what people unseen add to V*, where the resample's gap is above the sample's
 	above    float64 // and where it is below
+}
+
+// leastShare is the part of n·SE² that V* is never below. With a given curve
+// V* is n·SE² itself: what it can't see in an empty tail, or in norms that
+// happen to have a small SD, the limits of the two shares allow for.
+func leastShare(plan Plan) float64 {
+	if plan.Table.Curve.Fitted {
+		return 0.05
+	}
+	return 1
 }
 
 func newStudy(plan Plan, c *cells) *study {
@@ -54,8 +64,10 @@ func newStudy(plan Plan, c *cells) *study {
 		for _, w := range plan.Weights {
 			se := e.SE(w)
 			below, above := e.Unseen(w)
-			s.targets = append(s.targets, target{e.Gap(w), p * (1 - p), 0.05 * e.N * se * se, below, above})
-			s.region = append(s.region, newLargest(k))
+			s.targets = append(s.targets, target{e.Gap(w), p * (1 - p), leastShare(plan) * e.N * se * se, below, above})
+			if !plan.BandsOnly {
+				s.region = append(s.region, newLargest(k))
+			}
 		}
 	}
 	known := map[gap.Point]int{}
@@ -128,12 +140,17 @@ func (s *study) block(ctx context.Context, block, size int) bool {
 func (s *study) replicate() {
 	s.cells.drawer.draw(&s.stream, s.counts)
 	sums := s.sum()
+	if s.plan.Table.Curve.NormN > 0 {
+		sums.Norms = s.norms()
+	}
 	for i := range s.points {
 		s.readings[i].Set(&s.plan.Table, &s.points[i], &sums)
 	}
 	region := 0
 	for g, group := range s.plan.Groups {
-		s.judge(region, group[0], &sums)
+		if !s.plan.BandsOnly {
+			s.judge(region, group[0], &sums)
+		}
 		for w := range s.sup {
 			s.sup[w] = fraction{0, 1}
 		}
@@ -143,7 +160,9 @@ func (s *study) replicate() {
 		}
 		region = group[1]
 	}
-	s.judge(region, len(s.plan.Regions), &sums)
+	if !s.plan.BandsOnly {
+		s.judge(region, len(s.plan.Regions), &sums)
+	}
 }
 
 // sum fills the tails and returns the moments of the resample.
@@ -219,8 +238,10 @@ func (s *study) judge(from, to int, sums *gap.Sums) {
 			} else {
 				f.variance += target.above
 			}
-			if kept := &s.region[at]; f.square >= kept.floor*f.variance {
-				kept.offer(f.square / f.variance)
+			if !s.plan.BandsOnly {
+				if kept := &s.region[at]; f.square >= kept.floor*f.variance {
+					kept.offer(f.square / f.variance)
+				}
 			}
 			if f.square*sup.variance > sup.square*f.variance {
 				*sup = f

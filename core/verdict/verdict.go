@@ -17,8 +17,10 @@ const (
 )
 
 // Limits are an estimate of (curve share - weight·counted share) and its
-// interval, proportions.
-type Limits struct{ Gap, Low, High float64 }
+// interval, proportions. FixedLow and FixedHigh are the parts of the squared
+// distances from the gap to Low and High that more people would not take away,
+// in 0..1: what a curve from norms adds.
+type Limits struct{ Gap, Low, High, FixedLow, FixedHigh float64 }
 
 // Of gives the verdict; limits must return the Limits at a weight. It is two
 // one-sided tests (Schuirmann 1987) by means of an interval; "holds" at every
@@ -53,12 +55,15 @@ const unrealistic = 100
 // PeopleToSettle is how many more people, beside the n at hand, would give an
 // 80% chance that the verdict is settled if the gap is as estimated:
 //
-//	n' = n (w/δ)² (1 + z_0.8/z_{1-α/2})²,
+//	n' = n r(1-f)/(1-rf),  r = (w/δ)² (1 + z_0.8/z_{1-α/2})²,
 //
 // δ the distance from the gap to the edge of the tolerance, w that from the gap
-// to the limit which has to clear it; ok is false where no realistic number would do (more than
-// 100 n). Where the gap is inside the tolerance both edges must be cleared.
+// to the limit which has to clear it, f the part of w² that stays; ok is false
+// where no realistic number would do (more than 100 n). Where the gap is inside
+// the tolerance both edges must be cleared.
 func PeopleToSettle(t Tolerance, n int, level float64, limits func(weight float64) Limits) (more int, ok bool) {
+	normal := distuv.UnitNormal
+	power := 1 + normal.Quantile(0.8)/normal.Quantile((1+level)/2)
 	needed, outside := 0.0, false
 	for _, side := range []struct {
 		edge *Edge
@@ -69,21 +74,23 @@ func PeopleToSettle(t Tolerance, n int, level float64, limits func(weight float6
 		}
 		l := limits(side.edge.Weight)
 		room := side.sign * (side.edge.At - l.Gap) // below zero: outside this edge
-		reach := l.High - l.Gap                    // of the limit that has to clear the edge
+		reach, fixed := l.High-l.Gap, l.FixedHigh  // of the limit that has to clear the edge
 		if (side.sign > 0) == (room < 0) {
-			reach = l.Gap - l.Low
+			reach, fixed = l.Gap-l.Low, l.FixedLow
 		}
-		ratio := reach / math.Abs(room)
+		ratio := reach / math.Abs(room) * power
+		times := math.Inf(1)
+		if ratio*ratio*fixed < 1 {
+			times = ratio * ratio * (1 - fixed) / (1 - ratio*ratio*fixed)
+		}
 		switch {
 		case room < 0:
-			needed, outside = ratio*ratio, true
+			needed, outside = times, true
 		case !outside:
-			needed = max(needed, ratio*ratio)
+			needed = max(needed, times)
 		}
 	}
-	normal := distuv.UnitNormal
-	power := 1 + normal.Quantile(0.8)/normal.Quantile((1+level)/2)
-	more64 := math.Ceil(float64(n)*needed*power*power) - float64(n)
+	more64 := math.Ceil(float64(n)*needed) - float64(n)
 	if !(more64 <= unrealistic*float64(n)) {
 		return 0, false
 	}

@@ -159,3 +159,25 @@ func TestPeopleToSettle(t *testing.T) {
 	lopsided, _ = verdict.PeopleToSettle(both, 100, 0.95, at(0.015, -0.005, 0.095))
 	assert.Equal(t, more, lopsided, "and outside the edge the other one")
 }
+
+// A part f of the squared width that stays: w² is then f + (1-f)n/n' of what it
+// is, and what must be cleared, δ = w·1.429403, is reached at
+// n' = n·r(1-f)/(1-rf), r = 16·2.043194 = 32.691: f = 0.02 gives 100·32.037/0.34618
+// = 9254.6, so 9,255 people in all; f = 1/r or more can never be reached.
+func TestPeopleToSettleWhatOnlyPartlyShrinks(t *testing.T) {
+	one := verdict.NewTolerance(limit(t, "1pt"), nil, 0)
+	fixed := func(f float64) func(float64) verdict.Limits {
+		return func(float64) verdict.Limits {
+			return verdict.Limits{Gap: 0.005, Low: -0.015, High: 0.025, FixedHigh: f}
+		}
+	}
+	more, ok := verdict.PeopleToSettle(one, 100, 0.95, fixed(0.02))
+	assert.True(t, ok)
+	assert.Equal(t, 9155, more)
+	_, ok = verdict.PeopleToSettle(one, 100, 0.95, fixed(0.03))
+	assert.False(t, ok, "realistic in number only below a hundred times the people at hand")
+	for _, f := range []float64{0.031, 0.5, 1} {
+		_, ok = verdict.PeopleToSettle(one, 100, 0.95, fixed(f))
+		assert.False(t, ok, f)
+	}
+}

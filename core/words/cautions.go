@@ -21,10 +21,15 @@ func Cautions() []string {
 func Demo() string { return "DEMO: made-up scores of nobody. Nothing here is a finding." }
 
 // Method says how the figures came about: "95% intervals (ghost-studentised)
-// and bands from 10,000 replicates, seed 1. Made by tailgap 0.1.0."
+// and bands from 10,000 replicates, seed 1. Made by tailgap 0.1.0." Where all
+// the people were counted a curve from norms is judged as it is printed, and
+// how it came about is left out.
 func Method(a ask.Answer) string {
 	q := a.Question
 	text := "These are all the people: the gaps are exact and have no interval."
+	if q.Curve != nil && q.Curve.NormN != nil {
+		text = "These are all the people, and the curve is judged as its norms are printed: the gaps are exact and have no interval."
+	}
 	if !q.Everyone {
 		text = Level(q.Level) + " intervals" + methods(a) + " and bands from " + Count(q.Replicates) + " " +
 			plural(q.Replicates, "replicate") + ", seed " + strconv.FormatUint(q.Seed, 10) + "."

@@ -6,6 +6,7 @@ import (
 	"github.com/stretchr/testify/assert"
 
 	"tailgap/core/ask"
+	"tailgap/core/curve"
 )
 
 func TestMethod(t *testing.T) {
@@ -19,6 +20,9 @@ func TestMethod(t *testing.T) {
 	assert.Equal(t, "95% intervals (ghost-studentised; score) and bands from 10,000 replicates, seed 18446744073709551615. Made by tailgap 1.2.3.", Method(a))
 	a.Question.Everyone = true
 	assert.Equal(t, "These are all the people: the gaps are exact and have no interval. Made by tailgap 1.2.3.", Method(a))
+	people := 870
+	a.Question.Curve = &curve.Given{Mean: 54.6, SD: 13.1, NormN: &people}
+	assert.Equal(t, "These are all the people, and the curve is judged as its norms are printed: the gaps are exact and have no interval. Made by tailgap 1.2.3.", Method(a))
 }
 
 func TestCautionsSayWhatTheFiguresCannot(t *testing.T) {

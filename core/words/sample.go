@@ -6,6 +6,7 @@ import (
 	"strings"
 
 	"tailgap/core/ask"
+	"tailgap/core/curve"
 )
 
 // Sample says what was read and used: "398 usable scores in 412 rows; left
@@ -58,12 +59,23 @@ func source(s string) string {
 }
 
 // Curve says what curve was judged: "the normal curve fitted to these scores
-// (mean 54.6, SD 13.1)", "the normal curve with mean 54.6 and SD 13.1".
+// (mean 54.6, SD 13.1)", "the normal curve with mean 54.6 and SD 13.1, norms
+// from 870 people".
 func Curve(r ask.Result) string {
 	if r.Curve.Source == "given" { // as it was given, not rounded
-		return "the " + Line(r.Curve.Kind) + " curve with mean " + Number(r.Curve.Mean) + " and SD " + Number(r.Curve.SD)
+		return "the " + Line(r.Curve.Kind) + " curve " + GivenCurve(curve.Given{Mean: r.Curve.Mean, SD: r.Curve.SD, NormN: r.Curve.NormN})
 	}
 	return "the " + Line(r.Curve.Kind) + " curve fitted to these scores (" + MeanSD(r.Curve.Mean, r.Curve.SD) + ")"
+}
+
+// GivenCurve says what a given curve is given by: "with mean 54.6 and SD 13.1,
+// norms from 870 people".
+func GivenCurve(c curve.Given) string {
+	text := "with mean " + Number(c.Mean) + " and SD " + Number(c.SD)
+	if c.NormN != nil {
+		text += ", norms from " + People(float64(*c.NormN))
+	}
+	return text
 }
 
 // MeanSD prints a computed mean and SD, both with the decimals that give the

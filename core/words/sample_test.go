@@ -48,6 +48,9 @@ func TestMeanSD(t *testing.T) {
 func TestCurve(t *testing.T) {
 	assert.Equal(t, "the normal curve with mean 54.6 and SD 13.125",
 		Curve(ask.Result{Curve: ask.Curve{Kind: "normal", Mean: 54.6, SD: 13.125, Source: "given"}}), "as it was given")
+	people := 1870
+	assert.Equal(t, "the normal curve with mean 54.6 and SD 13.125, norms from 1,870 people",
+		Curve(ask.Result{Curve: ask.Curve{Kind: "normal", Mean: 54.6, SD: 13.125, Source: "given", NormN: &people}}))
 	assert.Equal(t, "the normal curve fitted to these scores (mean 54.6, SD 13.1)",
 		Curve(ask.Result{Curve: ask.Curve{Kind: "normal", Mean: 54.613, SD: 13.072, Source: "fitted"}}))
 }

@@ -5,7 +5,9 @@ included, for a few cutoffs: writes interval/full.json.
 Rows are drawn by index, 20,000 times, under five seeds; the mean and SD of the
 five quantiles say how far another engine may be from them by chance alone.
 Every cell is an upper tail, P(X >= c) or P(X > c): a lower side has the same
-T*, and its interval by complement and sign.
+T*, and its interval by complement and sign. Under a given curve T* is scaled by
+the sample's own standard error, norms from norm_n people are drawn again with
+every resample, and the interval and the band are the limits of interval.py.
 
 Run from testdata:  python3 generate/fullmethod.py
 """
@@ -17,9 +19,9 @@ import numpy as np
 from scipy.special import ndtr
 
 sys.dont_write_bytecode = True
-from interval import read_column, second_interval, t_quantile
+from interval import given_curve, read_column, second_interval, t_quantile
 
-REPLICATES, SEEDS, LEVEL = 20000, (1, 2, 3, 4, 5), 0.95
+REPLICATES, SEEDS = 20000, (1, 2, 3, 4, 5)
 
 
 class Fit:
@@ -100,7 +102,26 @@ def draws(values, x, seed, rows=500):
         yield np.bincount(drawn.ravel(), minlength=rows * size).reshape(rows, size).astype(float)
 
 
-def run(x, cells, w, given):
+def norms_again(given, norm_n, seed, rows=500):
+    """The mean and SD that as many other norm people would have."""
+    rng = np.random.default_rng((seed, 1))
+    while True:
+        if norm_n is None:
+            yield given
+            continue
+        mean = given[0] + given[1] / math.sqrt(norm_n) * rng.standard_normal((rows, 1))
+        yield mean, given[1] * np.sqrt(rng.chisquare(norm_n - 1, (rows, 1)) / (norm_n - 1))
+
+
+def variance_of_norms(cells, given, norm_n):
+    if norm_n is None:
+        return 0.0
+    z = (cells["d"] - given[0]) / given[1]
+    slope = np.exp(-z * z / 2) / math.sqrt(2 * math.pi)
+    return slope**2 / norm_n + (z * slope) ** 2 / (2 * (norm_n - 1))
+
+
+def run(x, cells, w, given, level, norm_n=None):
     """The sample's own terms and, for each seed, T* of each cell and its sup."""
     values = np.unique(x)
     counts = np.array([[(x == v).sum() for v in values]], dtype=float)
@@ -112,16 +133,18 @@ def run(x, cells, w, given):
     spread = p * (1 - p)
     kappa = np.maximum(raw, -0.95 * v / spread)
     se2 = (v + kappa * spread) / n
+    if given:
+        se2 = se2 + variance_of_norms(cells, given, norm_n)
     quantiles, sup = [], []
     for seed in SEEDS:
         T = []
-        for c in draws(values, x, seed):
-            e, _, vs, ks, _ = Fit(values, c, given).judge(cells, w)
-            V = np.maximum(vs + ks * spread, 0.05 * n * se2)
+        for c, norms in zip(draws(values, x, seed), norms_again(given, norm_n, seed)):
+            e, _, vs, ks, _ = Fit(values, c, norms).judge(cells, w)
+            V = n * se2 if given else np.maximum(vs + ks * spread, 0.05 * n * se2)
             T.append(np.abs(e - E) / np.sqrt((V + np.where(e > E, below, above)) / n))
         T = np.concatenate(T)
-        quantiles.append(np.quantile(T, LEVEL, axis=0))
-        sup.append(np.quantile(T.max(axis=1), LEVEL))
+        quantiles.append(np.quantile(T, level, axis=0))
+        sup.append(np.quantile(T.max(axis=1), level))
     return dict(E=E, share=share, v=v, kappa=kappa, k=k, se=np.sqrt(se2), se_below=np.sqrt(se2 + below / n), se_above=np.sqrt(se2 + above / n), q=np.array(quantiles), sup=np.array(sup))
 
 
@@ -133,21 +156,21 @@ def tail_cells(values, thresholds, strict, shift):
     return dict(i=i, d=thresholds + shift, c=thresholds, strict=np.full(len(thresholds), strict))
 
 
-def case(dataset, column, step, cutoff, side, half, w=1.0, given=None):
+def case(dataset, column, step, cutoff, side, half, w=1.0, given=None, level=0.95, norm_n=None):
     x = read_column(dataset, column)
     values = np.unique(x)
-    n, t = len(x), t_quantile(LEVEL, len(x) - 1)
+    n, t = len(x), t_quantile(level, len(x) - 1)
     strict, lower = side in (">", "<="), side in ("<=", "<")
     shift = 0.0 if not half else step / 2 if strict else -step / 2
-    r = run(x, tail_cells(values, np.array([cutoff]), strict, shift), w, given)
+    r = run(x, tail_cells(values, np.array([cutoff]), strict, shift), w, given, level, norm_n)
     q = max(t, r["q"].mean())
     E, se, k = r["E"][0], r["se"][0], r["k"][0]
     low, high = E - q * r["se_below"][0], E + q * r["se_above"][0]
-    hull = min(k, n - k) < 10
+    hull = not given and min(k, n - k) < 10
     if hull:
-        z = (cutoff + shift - (given or (x.mean(),))[0]) / (given[1] if given else x.std(ddof=1))
+        z = (cutoff + shift - x.mean()) / x.std(ddof=1)
         terms = dict(n=n, k=k, v=r["v"][0], kappa=r["kappa"][0])
-        low2, high2, _ = second_interval(terms, t, r["share"][0], z, given, w)
+        low2, high2, _ = second_interval(terms, t, r["share"][0], z, None, w)
         low, high = min(low, low2), max(high, high2)
     if lower:
         E, low, high = 1 - w - E, 1 - w - high, 1 - w - low
@@ -159,12 +182,21 @@ def case(dataset, column, step, cutoff, side, half, w=1.0, given=None):
     else:
         a, b = tail_cells(values, values, False, 0.0), tail_cells(values, values, True, 0.0)
         cells = {key: np.concatenate([a[key], b[key]]) for key in a}
-    band = run(x, cells, w, given)
+    band = run(x, cells, w, given, level, norm_n)
+    if given:
+        asked = dict(cutoff=cutoff, side=side, half_step=half, norm_n=norm_n, weight=w)
+        limits = given_curve(x, step or 0, asked, *given, level)
+        E, low, high = (limits[name] / 100 for name in ("difference_points", "low_points", "high_points"))
+        one = given_curve(x, step or 0, asked, *given, 1 - 2 * float(ndtr(-band["sup"].mean())))
+        more = dict(band_low_points=one["low_points"], band_high_points=one["high_points"])
+    else:
+        below, above = (band["sup"].mean() * r[name][0] for name in (("se_above", "se_below") if lower else ("se_below", "se_above")))
+        more = dict(band_low_points=100 * min(low, E - below), band_high_points=100 * max(high, E + above))
     return dict(dataset=dataset, column=column, step=step, cutoff=cutoff, side=side, half_step=half, weight=w,
-                given_mean=given and given[0], given_sd=given and given[1], level=LEVEL, replicates=REPLICATES, seeds=len(SEEDS),
+                given_mean=given and given[0], given_sd=given and given[1], norm_n=norm_n, level=level, replicates=REPLICATES, seeds=len(SEEDS),
                 n=n, counted=int(n - k if lower else k), difference_points=100 * E, se_points=100 * se, se_below_points=100 * r["se_below"][0], se_above_points=100 * r["se_above"][0], t=t,
                 quantile_mean=r["q"].mean(), quantile_sd=r["q"].std(ddof=1), q=q, takes_hull=bool(hull), low_points=100 * low, high_points=100 * high,
-                band_thresholds=len(cells["i"]), band_q_mean=band["sup"].mean(), band_q_sd=band["sup"].std(ddof=1))
+                band_thresholds=len(cells["i"]), band_q_mean=band["sup"].mean(), band_q_sd=band["sup"].std(ddof=1), **more)
 
 
 def stretch(dataset, column, step, start, stop, half):
@@ -173,11 +205,11 @@ def stretch(dataset, column, step, start, stop, half):
     shift = step / 2 if half else 0.0
     lo = tail_cells(values, np.array([start]), False, -shift)
     hi = tail_cells(values, np.array([stop]), True, shift)
-    r = run(x, dict(lo, j=hi["i"], d2=hi["d"], c2=hi["c"], strict2=hi["strict"]), 1.0, None)
-    t = t_quantile(LEVEL, len(x) - 1)
+    r = run(x, dict(lo, j=hi["i"], d2=hi["d"], c2=hi["c"], strict2=hi["strict"]), 1.0, None, 0.95)
+    t = t_quantile(0.95, len(x) - 1)
     q, E, se = max(t, r["q"].mean()), r["E"][0], r["se"][0]
     low, high = E - q * r["se_below"][0], E + q * r["se_above"][0]
-    return {"dataset": dataset, "column": column, "step": step, "from": start, "to": stop, "half_step": half, "level": LEVEL, "replicates": REPLICATES,
+    return {"dataset": dataset, "column": column, "step": step, "from": start, "to": stop, "half_step": half, "level": 0.95, "replicates": REPLICATES,
             "seeds": len(SEEDS), "n": len(x), "counted": int(r["k"][0]), "gap_points": 100 * E, "se_points": 100 * se, "t": t,
             "quantile_mean": r["q"].mean(), "quantile_sd": r["q"].std(ddof=1), "q": q, "low_points": 100 * low, "high_points": 100 * high}
 
@@ -198,6 +230,18 @@ CASES = [
     ("pima", "age", 1, 60, ">=", True, 0.8),
     ("pima", "bp", 1, 90, ">=", True, 1.0, (72, 12)),  # a given curve
     ("cd4", "oneyear", 0.01, 5.5, ">=", True, 1.0, (4.1, 1.2)),
+    ("mathexam", "tests", 1, 20, ">=", True, 1.0, None, 0.8),  # other levels
+    ("mathexam", "tests", 1, 20, ">=", True, 1.0, None, 0.9),
+    ("mathexam", "tests", 1, 20, ">=", True, 1.0, None, 0.99),
+    ("cd4", "oneyear", 0.01, 6.5, ">=", False, 1.0, None, 0.8),
+    ("cd4", "oneyear", 0.01, 6.5, ">=", False, 1.0, None, 0.99),
+    ("pima", "bp", 1, 90, ">=", True, 1.0, (72, 12), 0.8),
+    ("pima", "bp", 1, 90, "<", True, 1.0, (72, 12), 0.99),
+    ("pima", "bp", 1, 90, ">=", True, 1.0, (72, 12), 0.95, 20),  # norms from 20 people
+    ("pima", "bp", 1, 90, ">=", True, 1.2, (72, 12), 0.95, 870),
+    ("mathexam", "nsolved", 1, 1, "<=", True, 1.0, (7.3, 3), 0.8, 200),
+    ("mathexam", "nsolved", 1, 1, "<=", True, 1.0, (7.3, 3), 0.99, 200),
+    ("faithful", "eruptions", None, 4.5, ">=", False, 1.0, (3.5, 1.1), 0.9, 870),
 ]
 STRETCHES = [("pima", "glu", 1, 126, 139, True), ("newcomb", "time", 1, -44, 0, False), ("cd4", "baseline", 0.01, 3, 4, True)]
 

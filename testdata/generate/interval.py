@@ -1,6 +1,8 @@
 #!/usr/bin/python3
-"""Recomputes every number of interval/interval.json another way and stops with
-an error where one differs by more than 1e-11 (relative, or absolute below 1e-4).
+"""Recomputes every number of interval/interval.json and interval/norms.json
+another way and stops with an error where one differs by more than 1e-11
+(relative, or absolute below 1e-4; in norms.json points below 1, and limits of
+the noncentral t by more than 1e-7).
 
 What is done differently from interval.R: sums by math.fsum; a lower side is
 the upper side of the reflected scores (x -> -x) rather than a complement; the
@@ -8,7 +10,10 @@ variances are means of squared influence values rather than formulas in the
 moments; I2's roots are bracketed and bisected, with y(1-y) cut to 0 outside
 0..1, rather than solved as a quadratic (the quadratic only decides where the
 stated fallback applies); z, shares and quantiles come from SciPy. Wilson's
-formula checks I2 for a given curve, and expected/ what it has too.
+formula checks I2 for a given curve, and expected/ what it has too. For a given
+curve Clopper and Pearson's limits are bisected from binomial tail sums, and
+those of a curve from norms from the approximate and from the exact distribution
+of a standardised distance, the latter by quadrature over the norms' SD.
 
 Run from testdata:  python3 generate/interval.py
 """
@@ -167,18 +172,101 @@ def wilson(k, n, z):
     return middle - half, middle + half
 
 
+def binomial_limits(k, n, miss):
+    """The shares at which so few, and so many, as k have the probability miss."""
+    at_least = lambda p: betainc(k, n - k + 1, p) - miss
+    at_most = lambda p: betainc(n - k, k + 1, 1 - p) - miss
+    solve = lambda f: brentq(f, 0.0, 1.0, xtol=1e-16, rtol=1e-15, maxiter=500)
+    return (0.0 if k == 0 else solve(at_least)), (1.0 if k == n else solve(at_most))
+
+
+def approximate_t(t, df, ncp):
+    """P(T <= t) of the noncentral t distribution (Johnson & Welch 1940)."""
+    return ndtr((t * (1 - 1 / (4 * df)) - ncp) / math.sqrt(1 + t * t / (2 * df)))
+
+
+NODES, WEIGHTS = np.polynomial.legendre.leggauss(400)
+
+
+def exact_t(t, df, ncp):
+    """The same by integrating over the SD that t is scaled by."""
+    low, high = (math.sqrt(stats.chi2.isf(p, df) / df) for p in (1 - 1e-15, 1e-15))
+    s = low + (high - low) * (NODES + 1) / 2
+    density = stats.chi2.pdf(df * s * s, df) * 2 * df * s
+    return float((high - low) / 2 * np.sum(WEIGHTS * density * ndtr(t * s - ncp)))
+
+
+def z_limits(z, n, miss, distribution):
+    t, root_n = math.sqrt(n) * z, math.sqrt(n)
+    reach = 15 * (1 + abs(z)) * root_n
+    solve = lambda p: brentq(lambda ncp: distribution(t, n - 1, ncp) - p, t - reach, t + reach, xtol=1e-14, rtol=1e-14) / root_n
+    return solve(1 - miss), solve(miss)
+
+
+def given_curve(x, step, r, mean, sd, level):
+    """N - wS with its limits and the band's standard error, where the curve is
+    given: known, or from norm_n people."""
+    n, n0, w = len(x), r["norm_n"], r.get("weight", 1.0)
+    half = step / 2 if r["half_step"] else 0.0
+    miss = (1 - level) / 2
+    if "side" not in r:
+        ends = [(r["from"] - half - mean) / sd, (r["to"] + half - mean) / sd]
+        k = int(((x >= r["from"]) & (x <= r["to"])).sum())
+        N = float(stats.norm.cdf(ends[1]) - stats.norm.cdf(ends[0]))
+        slopes = [(stats.norm.pdf(z), z * stats.norm.pdf(z)) for z in ends]
+        by_mean, by_sd = (slopes[0][i] - slopes[1][i] for i in (0, 1))
+    else:
+        c, side = r["cutoff"], r["side"]
+        k = int({">=": x >= c, ">": x > c, "<=": x <= c, "<": x < c}[side].sum())
+        z = (c + (half if side in (">", "<=") else -half) - mean) / sd
+        z = -z if side in ("<=", "<") else z  # the share beyond z, on the reflected scale
+        N, by_mean, by_sd = float(ndtr(-z)), stats.norm.pdf(z), z * stats.norm.pdf(z)
+    variance = 0.0 if n0 is None else by_mean**2 / n0 + by_sd**2 / (2 * n0 - 2)
+    if n0 is None:
+        N_low = N_high = N
+    elif "side" in r:
+        z_low, z_high = z_limits(z, n0, miss, approximate_t)
+        N_low, N_high = float(ndtr(-z_high)), float(ndtr(-z_low))
+    else:
+        margin = t_quantile(level, n0 - 1) * math.sqrt(variance) / (N * (1 - N))
+        N_low, N_high = (N * math.exp(m) / (1 - N + N * math.exp(m)) for m in (-margin, margin))
+    S, (S_low, S_high) = k / n, binomial_limits(k, n, miss)
+    p = (k + 2) / (n + 4)
+    low = N - w * S - math.hypot(N - N_low, w * (S_high - S))
+    high = N - w * S + math.hypot(N_high - N, w * (S - S_low))
+    return dict(curve_share=N, counted=k, difference_points=100 * (N - w * S), se_points=100 * math.sqrt(variance + w * w * p * (1 - p) / n), low_points=100 * low, high_points=100 * high)
+
+
+def check_norms():
+    data, checked = json.load(open("interval/norms.json")), 0
+    for c in data["columns"]:
+        x = read_column(c["dataset"], c["column"])
+        for r in c["cutoffs"] + c["stretches"]:
+            for i, level in enumerate(data["levels"]):
+                theirs = dict(r, low_points=r["low_points"][i], high_points=r["high_points"][i])
+                own = given_curve(x, c["step"], r, c["mean"], c["sd"], level)
+                compare(f"{c['dataset']}.{c['column']} {r} at {level}", theirs, own, 1.0)
+                checked += 1
+    for r in data["noncentral_t"]:
+        low, high = z_limits(r["z"], r["norm_n"], (1 - r["level"]) / 2, exact_t)
+        for name, own in (("low", low), ("high", high)):
+            assert abs(r[name] - own) < 1e-7, (r, own)
+        checked += 1
+    return checked
+
+
 worst = {}
 
 
-def difference(a, b):
-    return abs(a - b) / max(abs(a), abs(b), 1e-4) if a != b else 0.0
+def difference(a, b, least=1e-4):
+    return abs(a - b) / max(abs(a), abs(b), least) if a != b else 0.0
 
 
-def compare(where, record, own):
+def compare(where, record, own, least_points=1e-4):
     for name, theirs in record.items():
         if name not in own:
             continue
-        d = difference(float(theirs), float(own[name]))
+        d = difference(float(theirs), float(own[name]), least_points if name.endswith("_points") else 1e-4)
         if d >= worst.get(name, (-1,))[0]:
             worst[name] = (d, where)
 
@@ -198,7 +286,7 @@ def compare_with_expected(name, c):
 
 def main():
     data = json.load(open("interval/interval.json"))
-    checked = 0
+    checked = check_norms()
     for c in data["columns"]:
         x, step, name = read_column(c["dataset"], c["column"]), c["step"], f"{c['dataset']}.{c['column']}"
         compare(name, c, summary(x))

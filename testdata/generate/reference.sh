@@ -1,6 +1,6 @@
 #!/bin/sh
 # Makes the check values again. Run from testdata:
-#   sh generate/reference.sh            interval/, shape/, worked/, nist/: about 3 minutes
+#   sh generate/reference.sh            interval/, shape/, worked/, nist/: about 5 minutes
 #   sh generate/reference.sh all        open/ and expected/ too: about 8 minutes more
 # Needs R and, for python3, NumPy, SciPy and mpmath; "all" also needs the R
 # packages boot, MASS, psychotools, nortest, tseries, fBasics, e1071, jsonlite
@@ -21,5 +21,6 @@ fi
 "$python" generate/normality.py
 Rscript generate/shape.R
 Rscript generate/interval.R
+Rscript generate/norms.R
 "$python" generate/interval.py
 "$python" generate/fullmethod.py

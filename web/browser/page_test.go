@@ -58,10 +58,21 @@ func TestPageJudgesAFileAsTheCommandDoes(t *testing.T) {
 	p.click("curve-given")
 	p.write("mean", "5.5")
 	p.write("sd", "5")
+	p.settled()
+	given := append(asked, "--half-step", "--seed", "77", "--replicates", "3000", "--level", "0.9", "--mean", "5.5", "--sd", "5")
+	p.shows(judge(t, given...))
+	p.write("norm-n", "1e3")
+	p.until(`document.querySelector("#editor-curve .trouble")`)
+	assert.Contains(t, get[string](p, `document.querySelector("#editor-curve .trouble").innerText`), `"1e3" is no number of norm people`)
+	p.write("norm-n", "1,870")
+	p.settled()
+	assert.Equal(t, "the normal curve with mean 5.5 and SD 5, norms from 1,870 people", get[string](p, `document.querySelector("#slot-curve").innerText`))
+	given = append(given, "--norm-n", "1870")
+	p.shows(judge(t, given...))
 	p.open("more")
 	p.click("everyone")
 	p.settled()
-	p.shows(judge(t, append(asked, "--half-step", "--seed", "77", "--replicates", "3000", "--level", "0.9", "--mean", "5.5", "--sd", "5", "--everyone")...))
+	p.shows(judge(t, append(given, "--everyone")...))
 }
 
 func TestPageFollowsACutoff(t *testing.T) {
