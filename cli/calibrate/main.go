@@ -11,18 +11,20 @@ import (
 	"flag"
 	"fmt"
 	"io"
+	"io/fs"
 	"os"
 	"os/signal"
 	"path/filepath"
+	"strings"
 
 	"tailgap/core/calibration"
 )
 
 func main() {
 	out := flag.String("out", "testdata/calibration", "the folder to write to")
-	only := flag.String("only", "", "run this one of the studies and print its summary; write nothing")
+	only := flag.String("only", "", "run this one of the studies again, and keep the others as they are stored")
 	sliceOnly := flag.Bool("slice", false, "make the slice again and nothing else")
-	samples := flag.Int("samples", 0, "so many samples in each case, instead of the study's own number")
+	samples := flag.Int("samples", 0, "so many samples in each case, instead of the study's own number; print the summary and store nothing")
 	flag.Parse()
 	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt)
 	defer stop()
@@ -33,34 +35,80 @@ func main() {
 }
 
 func calibrate(ctx context.Context, out, only string, sliceOnly bool, samples int) error {
-	if only != "" {
-		var studies []calibration.Named
-		for _, study := range calibration.Full() {
-			if study.Name == only {
-				studies = append(studies, study)
-			}
-		}
-		results, err := run(ctx, studies, samples)
+	if samples == 0 {
+		slice, err := run(ctx, calibration.Slice(), 0)
 		if err != nil {
 			return err
 		}
+		if err := write(out, "slice-", slice); err != nil || sliceOnly {
+			return err
+		}
+	}
+	studies, err := chosen(only)
+	if err != nil {
+		return err
+	}
+	results, err := run(ctx, studies, samples)
+	switch {
+	case err != nil:
+		return err
+	case samples > 0:
 		return calibration.WriteSummary(os.Stdout, results)
+	case only != "":
+		if results, err = amended(out, results[0]); err != nil {
+			return err
+		}
 	}
-	slice, err := run(ctx, calibration.Slice(), 0)
+	if err := write(out, "", results); err != nil {
+		return err
+	}
+	return writeFile(out, "README.md", func(w io.Writer) error { return calibration.WriteSummary(w, results) })
+}
+
+// chosen are all studies, or the one of that name.
+func chosen(only string) ([]calibration.Named, error) {
+	var names []string
+	for _, study := range calibration.Full() {
+		if study.Name == only {
+			return []calibration.Named{study}, nil
+		}
+		names = append(names, study.Name)
+	}
+	if only != "" {
+		return nil, fmt.Errorf("there is no study %q; the studies are: %s", only, strings.Join(names, ", "))
+	}
+	return calibration.Full(), nil
+}
+
+// amended are the stored results with one of them new.
+func amended(out string, new calibration.Result) ([]calibration.Result, error) {
+	var tables [2]*os.File
+	for i, name := range []string{"cells.csv", "bands.csv"} {
+		file, err := os.Open(filepath.Join(out, name))
+		if errors.Is(err, fs.ErrNotExist) {
+			return []calibration.Result{new}, nil
+		}
+		if err != nil {
+			return nil, err
+		}
+		defer file.Close()
+		tables[i] = file
+	}
+	stored, err := calibration.Read(tables[0], tables[1])
 	if err != nil {
-		return err
+		return nil, err
 	}
-	if err := write(out, "slice-", slice); err != nil || sliceOnly {
-		return err
+	byName := map[string]calibration.Result{}
+	for _, r := range append(stored, new) {
+		byName[r.Name] = r
 	}
-	full, err := run(ctx, calibration.Full(), samples)
-	if err != nil {
-		return err
+	var results []calibration.Result
+	for _, study := range calibration.Full() {
+		if r, known := byName[study.Name]; known {
+			results = append(results, r)
+		}
 	}
-	if err := write(out, "", full); err != nil {
-		return err
-	}
-	return writeFile(out, "README.md", func(w io.Writer) error { return calibration.WriteSummary(w, full) })
+	return results, nil
 }
 
 // write writes the tables of some results, their names led by prefix.
