@@ -81,8 +81,8 @@ func newEvaluator(plan *Plan, s spans, f Features) *evaluator {
 
 // fixedShare is a given curve's share, whatever the sample.
 func fixedShare(given gap.Table, ends []gap.Threshold) float64 {
-	region := given.Region(ends)
-	reading := given.ReadRegion(&region, &gap.Sums{})
+	region, sums := given.Region(ends), given.SampleSums()
+	reading := given.ReadRegion(&region, &sums)
 	return reading.Share()
 }
 

@@ -42,6 +42,9 @@ func drawCase(t *rapid.T) anyCase {
 	}
 	if rapid.Bool().Draw(t, "given") {
 		c.given = &curve.Given{Mean: rapid.Float64Range(5, 25).Draw(t, "mean"), SD: rapid.Float64Range(1, 10).Draw(t, "SD")}
+		if rapid.Bool().Draw(t, "from norms") {
+			c.given.NormN = new(rapid.IntRange(5, 1000).Draw(t, "norm people"))
+		}
 	}
 	for range rapid.IntRange(1, 4).Draw(t, "cutoffs") {
 		side := cutoff.Side(rapid.IntRange(0, 4).Draw(t, "side"))
@@ -114,7 +117,7 @@ func TestUnitsDontMatter(t *testing.T) {
 			other.cutoffs[i].At, other.cutoffs[i].To = c.cutoffs[i].At*factor+shift, c.cutoffs[i].To*factor+shift
 		}
 		if c.given != nil {
-			other.given = &curve.Given{Mean: c.given.Mean*factor + shift, SD: c.given.SD * factor}
+			other.given = &curve.Given{Mean: c.given.Mean*factor + shift, SD: c.given.SD * factor, NormN: c.given.NormN}
 		}
 		p, q := c.plan(), other.plan()
 		p.Everyone, q.Everyone = false, false
@@ -162,7 +165,7 @@ func TestReflection(t *testing.T) {
 			}
 		}
 		if c.given != nil {
-			turned.given = &curve.Given{Mean: -c.given.Mean, SD: c.given.SD}
+			turned.given = &curve.Given{Mean: -c.given.Mean, SD: c.given.SD, NormN: c.given.NormN}
 		}
 		want, got := run(t, c.plan()), run(t, turned.plan())
 		assert.InDelta(t, -want.Skewness.Estimate, got.Skewness.Estimate, 1e-9)

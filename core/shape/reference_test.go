@@ -24,7 +24,7 @@ func plannedOf(counts sample.Counts, step sample.StepChoice, given *curve.Given,
 	moments := counts.Moments()
 	normal := curve.FitNormal(moments)
 	if given != nil {
-		normal = curve.Normal{Mean: given.Mean, SD: given.SD}
+		normal = given.Normal()
 	}
 	scale := sample.NewScale(counts, moments.SD, step, nil)
 	p := Plan{Table: gap.NewTable(counts, moments, normal), Scale: scale, Everyone: true, Level: 0.95, Replicates: 200, Seed: 1}
