@@ -162,6 +162,29 @@ func TestBins(t *testing.T) {
 	}
 }
 
+// Heaps of more distinct scores than are resampled one by one have an estimate
+// and no interval.
+func TestHeapsAmongManyScores(t *testing.T) {
+	source := rand.New(rand.NewPCG(9, 9))
+	scores := make([]float64, 30_000)
+	for i := range scores {
+		scores[i] = math.Round(10_000 + 2500*source.NormFloat64())
+		if i%2 == 0 {
+			scores[i] = 10 * math.Round(scores[i]/10)
+		}
+	}
+	p := planned(scores, sample.StepChoice{Size: 1}, nil, false, atLeast(12_500)...)
+	require.Greater(t, len(p.Table.U), mostEntries)
+	p.Everyone, p.Replicates = false, 100
+	f := run(t, p)
+	require.Equal(t, 10.0, f.Features.Heaps.Spacing)
+	effects := f.Cutoffs[0]
+	require.NotNil(t, effects[Heaps])
+	assert.Nil(t, effects[Heaps].Interval)
+	require.NotNil(t, effects[Rest])
+	assert.NotNil(t, effects[Rest].Interval)
+}
+
 // Newcomb's time of -44 is an outlier; the others of the open data that are
 // further than Grubbs's limit for their number are named here.
 func TestOutliers(t *testing.T) {

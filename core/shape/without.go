@@ -74,10 +74,12 @@ type weighted struct {
 }
 
 // newHeaps are the heaps of the features; none where the entries are bins.
-func (e *evaluator) newHeaps(scale sample.Scale) []heap {
-	var heaps []heap
+func (e *evaluator) newHeaps(scale sample.Scale) (heaps []heap) {
+	if e.bins { // Heaps.At numbers scores
+		return nil
+	}
 	for _, at := range e.features.Heaps.At {
-		if h, ok := e.newHeap(scale, at); ok && !e.bins {
+		if h, ok := e.newHeap(scale, at); ok {
 			heaps = append(heaps, h)
 		}
 	}
