@@ -30,6 +30,7 @@ func (s *sheet) findings() app.UI {
 		table(q, r),
 		stretches(q, r),
 		reading(s.desk.answer, r),
+		s.shape(q, r),
 	)
 }
 

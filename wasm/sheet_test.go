@@ -89,6 +89,9 @@ func TestSheetShowsEveryKindOfAnswer(t *testing.T) {
 					assert.Contains(t, html, words.Capital(words.GapOf(f.Reading)))
 				}
 				assert.Equal(t, len(r.Cutoffs), strings.Count(html, "<article"))
+				for _, said := range append(words.Shape(s.desk.answer.Question, r), words.Normality(r)) {
+					assert.Contains(t, html, app.HTMLString(app.Text(said)))
+				}
 				for _, caution := range words.Cautions() {
 					assert.Contains(t, html, app.HTMLString(app.Text(caution)))
 				}

@@ -15,7 +15,7 @@ import (
 // drawn keeps the figures that were drawn last, so that a change elsewhere on
 // the page doesn't draw them again.
 type drawn struct {
-	sweep, counted picture
+	sweep, counted, worm picture
 }
 
 // picture is a figure with what it was drawn from.

@@ -16,6 +16,7 @@ var takings = []struct {
 	{"save-text", "Text", "tailgap.txt", "text/plain", func(a ask.Answer) ([]byte, error) { return []byte(report.Text(a)), nil }},
 	{"save-csv", "Table (CSV)", "tailgap.csv", "text/csv", report.CSV},
 	{"save-figure", "Figures (SVG)", "tailgap.svg", "image/svg+xml", func(a ask.Answer) ([]byte, error) { return []byte(figure.Sheet(a)), nil }},
+	{"save-worm", "Worm plots (SVG)", "tailgap-worm.svg", "image/svg+xml", func(a ask.Answer) ([]byte, error) { return []byte(figure.WormSheet(a)), nil }},
 	{"save-json", "Answer (JSON)", "tailgap-answer.json", "application/json", report.JSON},
 }
 

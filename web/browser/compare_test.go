@@ -22,8 +22,13 @@ import (
 // JSON; at says which of the results is looked at.
 type commanded struct {
 	ask.Answer
-	plain []struct{ Cutoffs []map[string]any }
+	plain []plainResult
 	at    int
+}
+
+type plainResult struct {
+	Cutoffs []map[string]any
+	Shape   struct{ Cutoffs []map[string]any }
 }
 
 // judge asks the command.
@@ -38,9 +43,7 @@ func judge(t *testing.T, args ...string) commanded {
 	}
 	answer, err := report.ReadJSON(out.Bytes())
 	require.NoError(t, err)
-	var plain struct {
-		Results []struct{ Cutoffs []map[string]any }
-	}
+	var plain struct{ Results []plainResult }
 	require.NoError(t, json.Unmarshal(out.Bytes(), &plain))
 	return commanded{answer, plain.Results, 0}
 }
@@ -111,6 +114,58 @@ func (p *page) shows(c commanded) {
 		stretches = append(stretches, words.Trusted(c.Question, r, sweep)...)
 	}
 	p.says(get[string](p, `document.querySelector("#stretches").textContent`), stretches...)
+	p.showsShape(c, r)
+}
+
+// showsShape holds what the page says of the shape of the scores against the
+// command's answer: every part of every gap, the sentences and the tests.
+func (p *page) showsShape(c commanded, r ask.Result) {
+	p.Helper()
+	said := words.Shape(c.Question, r)
+	require.NotEmpty(p, said)
+	said = append(said, words.Normality(r), words.ReadWorm())
+	said = append(said, words.Worm(c.Question, r)...)
+	text := get[string](p, `document.querySelector("#shape").textContent`)
+	p.says(text, said...)
+	assert.Equal(p, words.Tested(r), strings.Contains(text, words.NoAnswer()))
+	p.says(get[string](p, `document.querySelector("#worm svg desc").textContent`), words.Worm(c.Question, r)...)
+
+	rows := p.all("#shape tbody tr")
+	for i, f := range r.Cutoffs {
+		exact := leaves("", c.plain[c.at].Shape.Cutoffs[i], map[string]any{})
+		texts := map[string]string{"gap_points": words.SignedGapOf(f.Reading)}
+		limits := []string{}
+		for name, effect := range effectsOf(r.Shape.Cutoffs[i].Effects) {
+			if effect != nil {
+				texts[name+".points"] = words.SignedEffect(f, *effect)
+				limits = append(limits, words.SignedEffectLimits(f, *effect))
+			}
+		}
+		seen, printed := map[string]bool{}, ""
+		for _, row := range rows {
+			if row.Cutoff == f.Cutoff.String() {
+				p.holds(row, exact, texts)
+				printed += row.Text
+				for _, one := range row.Fields {
+					seen[one.Field] = true
+				}
+			}
+		}
+		p.says(printed, limits...)
+		for name := range exact {
+			if name != "cutoff" && !strings.HasPrefix(name, "quantile") { // the figure has these
+				assert.True(p, seen[name], "the shape at %s lacks %s", f.Cutoff, name)
+			}
+		}
+	}
+}
+
+// effectsOf are the effects by their names in JSON.
+func effectsOf(e ask.Effects) map[string]*ask.Effect {
+	return map[string]*ask.Effect{
+		"mean_and_sd": e.MeanAndSD, "half_step": e.HalfStep, "asymmetry": e.Asymmetry, "rest": e.Rest,
+		"floor": e.Floor, "ceiling": e.Ceiling, "heaps": e.Heaps, "extremes": e.Extremes, "farthest": e.Farthest,
+	}
 }
 
 func index(r ask.Result, cutoff string) int {

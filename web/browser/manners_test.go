@@ -16,6 +16,7 @@ import (
 	"tailgap/core/ask"
 	"tailgap/core/cutoff"
 	"tailgap/core/demo"
+	"tailgap/core/figure"
 	"tailgap/core/report"
 )
 
@@ -61,6 +62,7 @@ func TestPageFitsEveryWidth(t *testing.T) {
 			p.cutoff("20..25")
 			p.cutoff("<5")
 			p.settled()
+			p.do(chromedp.Click("#shape summary", chromedp.ByQuery))
 			for _, slot := range []string{"data", "curve", "cutoff-2", "too-high", "heads", "more", "add"} {
 				p.open(slot)
 				p.shownNow()
@@ -111,6 +113,20 @@ func TestPageWorksByKeyboard(t *testing.T) {
 	assert.Zero(t, get[int](p, `document.querySelectorAll(".editor").length`))
 }
 
+func TestPageOpensTheShapeByKeyboard(t *testing.T) {
+	p := openPage(t, 1280)
+	open := func() bool { return get[bool](p, `document.getElementById("shape").open`) }
+	assert.False(t, open())
+	p.do(chromedp.Focus("#shape summary", chromedp.ByQuery), chromedp.KeyEvent(kb.Enter))
+	p.until(`document.getElementById("shape").open`)
+	p.open("cutoff-0")
+	p.write("from-cutoff-0", "9")
+	p.settled()
+	assert.True(t, open(), "it stays open when the answer changes")
+	assert.Contains(t, get[string](p, `document.getElementById("shape").innerText`), "At 9 or below")
+	assert.Contains(t, get[string](p, `document.querySelector("#worm svg title").textContent`), "vocabulary")
+}
+
 func TestPageAsksAQuestionFileOfTheScoresThatFollow(t *testing.T) {
 	p := openPage(t, 1280)
 	q := ask.NewQuestion()
@@ -141,7 +157,7 @@ func TestPageGivesAndTakesQuestions(t *testing.T) {
 	p.write("heads", "250")
 	p.settled()
 	p.do(chromedp.Click("#take-away summary", chromedp.ByQuery))
-	for _, id := range []string{"save-question", "save-json", "save-csv", "save-text", "save-figure"} {
+	for _, id := range []string{"save-question", "save-json", "save-csv", "save-text", "save-figure", "save-worm"} {
 		p.click(id)
 	}
 	saved := func(name string) []byte {
@@ -164,6 +180,7 @@ func TestPageGivesAndTakesQuestions(t *testing.T) {
 	require.NoError(t, err)
 	assert.Equal(t, string(csv), string(saved("tailgap.csv")))
 	assert.Contains(t, string(saved("tailgap.svg")), "DEMO")
+	assert.Equal(t, figure.WormSheet(answer), string(saved("tailgap-worm.svg")))
 
 	q.Heads, q.TooHigh, q.Seed = nil, nil, 9
 	text, err := ask.WriteQuestion(q)

@@ -14,7 +14,7 @@ func TestPageOpensWithTheDemoWorkedOut(t *testing.T) {
 	t.Logf("the demo's answer stood after %.0f ms", get[float64](p, `performance.now()`))
 	p.shows(judge(t, "--demo"))
 	assert.Contains(t, get[string](p, `document.querySelector("header").innerText`), "DEMO")
-	assert.Equal(t, 2, get[int](p, `document.querySelectorAll("#sweep svg, #counted svg").length`))
+	assert.Equal(t, 3, get[int](p, `document.querySelectorAll("#sweep svg, #counted svg, #worm svg").length`))
 	assert.Zero(t, get[int](p, `localStorage.length + sessionStorage.length + document.cookie.length`))
 }
 
@@ -112,7 +112,7 @@ func TestPageCancelsLongWork(t *testing.T) {
 	p.click("cancel")
 	p.until(`document.getElementById("work").dataset.state === "stopped"`)
 	assert.Contains(t, get[string](p, `document.getElementById("old").innerText`), "earlier question")
-	assert.Equal(t, 4, get[int](p, `document.querySelectorAll("#take-away button:disabled").length`), "an old answer is not taken away for the new one")
+	assert.Equal(t, 5, get[int](p, `document.querySelectorAll("#take-away button:disabled").length`), "an old answer is not taken away for the new one")
 	assert.Equal(t, 1, get[int](p, `document.querySelectorAll("#findings.old").length`))
 	assert.Equal(t, before, p.all("#cards article"))
 
