@@ -39,10 +39,11 @@
 // numbers of their own. Skewness, the logarithm of the kurtosis, and the parts
 // that only move with mean and SD have a standard error from their influence
 // function, and an interval of max(t, q) of these each way, q the level's
-// quantile of the studentised replicates. The others have the standard error
-// of the replicates. For asymmetry and rest it is widened as by Agresti & Coull
-// (1998) for the two shares in them, which does not collapse where nobody is
-// beyond the cutoff: with Q = S+R, or 2-S-R if that is less, and Q̃ = (nQ+2)/(n+4),
+// quantile of the studentised replicates; where the given curve comes from norm
+// people, what its mean and SD account for has the variance of gap.Estimate.V
+// added. The others have the standard error of the replicates. For asymmetry
+// and rest it is widened as by Agresti & Coull (1998) for the two shares in
+// them, which does not collapse where nobody is beyond the cutoff: with Q = S+R, or 2-S-R if that is less, and Q̃ = (nQ+2)/(n+4),
 //
 //	SE² = Var* + max(0, Q̃(1-Q̃) - Q(1-Q))/(4n)
 //

@@ -26,6 +26,7 @@ type regions struct {
 	judged, half           gap.Region
 	thresholds             []gap.Threshold
 	givenJudged, givenHalf float64 // shares by the given curve, which do not move
+	normVariance           float64 // of givenHalf, times n: where the curve is from norms
 	ends                   []end   // of half
 	stepped                bool    // judged and half are read at different points
 	sign                   float64 // -1 for the lower sides
@@ -70,20 +71,14 @@ func newEvaluator(plan *Plan, s spans, f Features) *evaluator {
 		}
 		if !plan.Table.Curve.Fitted {
 			given := gap.NewTable(s.table.Counts, s.table.Moments, plan.Table.Curve)
-			r.givenJudged, r.givenHalf = fixedShare(given, c.Judged), fixedShare(given, c.Half)
+			half := given.Estimate(given.Region(c.Half))
+			r.givenJudged, r.givenHalf, r.normVariance = given.Estimate(given.Region(c.Judged)).Curve, half.Curve, half.V
 		}
 		e.regions = append(e.regions, r)
 	}
 	e.heaps = e.newHeaps(plan.Scale)
 	e.surplus = make([]float64, len(e.heaps))
 	return e
-}
-
-// fixedShare is a given curve's share, whatever the sample.
-func fixedShare(given gap.Table, ends []gap.Threshold) float64 {
-	region, sums := given.Region(ends), given.SampleSums()
-	reading := given.ReadRegion(&region, &sums)
-	return reading.Share()
 }
 
 // evaluate computes the values into into, whose cutoffs are there already.
@@ -103,7 +98,7 @@ func (e *evaluator) evaluate(plan *Plan, count []int32, into *values) bool {
 		e.withoutPile(Ceiling, e.features.Ceiling, count, into)
 		e.withoutExtremes(Extremes, e.features.Extremes, count, sums.Mean, into)
 		if e.features.Outlier {
-			e.withoutExtremes(Farthest, 1, count, sums.Mean, into)
+			e.withoutOne(Farthest, e.features.Farthest, count, into)
 		}
 	}
 	e.withoutHeaps(plan, count, all, into)
@@ -151,7 +146,7 @@ func (e *evaluator) parts(plan *Plan, r *regions, count []int32, sums *gap.Sums,
 		return
 	}
 	into.value[HalfStep] = r.sign * (r.givenJudged - r.givenHalf)
-	into.value[MeanAndSD], into.variance[MeanAndSD] = r.sign*(r.givenHalf-half.Share()), half.Variance()
+	into.value[MeanAndSD], into.variance[MeanAndSD] = r.sign*(r.givenHalf-half.Share()), half.Variance()+r.normVariance
 }
 
 // reflected is the share of the scores that are in the region when they are

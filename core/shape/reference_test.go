@@ -83,7 +83,7 @@ func TestAgreesWithR(t *testing.T) {
 		}
 		p := planned(scores, step, nil, false, cutoffs...)
 		counts := p.Table.Counts
-		f := Features{Outlier: true, Extremes: (counts.N + 99) / 100,
+		f := Features{Outlier: true, Farthest: Find(p.Table, p.Scale).Farthest, Extremes: (counts.N + 99) / 100,
 			Floor: sample.Pile{Score: counts.Min(), People: 1}, Ceiling: sample.Pile{Score: counts.Max(), People: 1}}
 		v := found(p, f)
 		assert.InDelta(t, column.Skewness, v.skewness, 1e-10)

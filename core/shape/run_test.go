@@ -9,6 +9,7 @@ import (
 	"github.com/stretchr/testify/assert"
 	"github.com/stretchr/testify/require"
 
+	"tailgap/core/curve"
 	"tailgap/core/cutoff"
 	"tailgap/core/gap"
 	"tailgap/core/resample"
@@ -199,4 +200,41 @@ func TestOutliers(t *testing.T) {
 	assert.True(t, f.Outlier)
 	assert.Equal(t, -44.0, f.Farthest)
 	assert.Zero(t, f.Extremes, "one score is the farthest, not the most extreme few")
+}
+
+// Of two scores equally far out the one that is named is left out.
+func TestOutlierLeftOutIsTheOneNamed(t *testing.T) {
+	scores := []float64{-50, 50}
+	for i := range 99 {
+		scores = append(scores, float64(i%3-1))
+	}
+	p := planned(scores, sample.StepChoice{Size: 1}, nil, false, atLeast(40)...)
+	f := run(t, p)
+	require.True(t, f.Features.Outlier)
+	require.Equal(t, -50.0, f.Features.Farthest)
+	others := planned(scores[1:], sample.StepChoice{Size: 1}, nil, false, atLeast(40)...)
+	left := others.Table.Estimate(others.Table.Region(others.Cutoffs[0].Judged)).Gap(1)
+	gap := p.Table.Estimate(p.Table.Region(p.Cutoffs[0].Judged)).Gap(1)
+	assert.InDelta(t, gap-left, f.Cutoffs[0][Farthest].Estimate, 1e-12)
+}
+
+// What the given mean and SD account for is no surer than the norm people make
+// them: with many scores the interval is all but that of the norms alone.
+func TestNormPeopleWidenWhatTheirCurveAccountsFor(t *testing.T) {
+	source := rand.New(rand.NewPCG(4, 4))
+	scores := make([]float64, 100_000)
+	for i := range scores {
+		scores[i] = math.Round(50 + 10*source.NormFloat64())
+	}
+	people := 20
+	width := func(given *curve.Given) float64 {
+		p := planned(scores, sample.StepChoice{Size: 1}, given, true, atLeast(60)...)
+		p.Everyone = false
+		i := run(t, p).Cutoffs[0][MeanAndSD].Interval
+		return i.High - i.Low
+	}
+	z := (59.5 - 52) / 10
+	alone := 2 * 1.95996 * curve.Density(z) * math.Sqrt(1.0/20+z*z/(2*19))
+	assert.InEpsilon(t, alone, width(&curve.Given{Mean: 52, SD: 10, NormN: &people}), 0.01)
+	assert.Less(t, width(&curve.Given{Mean: 52, SD: 10}), alone/10)
 }

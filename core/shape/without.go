@@ -41,6 +41,13 @@ func (e *evaluator) withoutExtremes(kind Kind, people int, count []int32, mean f
 	e.without(kind, into)
 }
 
+// withoutOne leaves out one of the people with a score.
+func (e *evaluator) withoutOne(kind Kind, score float64, count []int32, into *values) {
+	copy(e.left, count)
+	e.left[e.table.Counts.IndexAtLeast(score)]--
+	e.without(kind, into)
+}
+
 // without finds what each gap loses when only the people in left are there.
 func (e *evaluator) without(kind Kind, into *values) {
 	all := e.sum(e.left, e.leftFrom)
