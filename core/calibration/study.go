@@ -2,6 +2,7 @@ package calibration
 
 import (
 	"context"
+	"fmt"
 	"runtime"
 	"sync"
 	"sync/atomic"
@@ -36,9 +37,10 @@ type Case struct {
 // counted.
 const Trust = 2.0
 
-// Run simulates the study and returns a Tally for each case, in their order,
-// or the context's error. progress, which may be nil, is called with how many
-// cases are done; it may be called from several goroutines, one at a time.
+// Run simulates the study and returns a Tally for each case, in their order. It
+// returns the context's error when it ends first, and that of a sample that
+// can't be judged. progress, which may be nil, is called from the calling
+// goroutine with how many cases are done.
 func (s Study) Run(ctx context.Context, progress func(done int, c Case)) ([]Tally, error) {
 	tallies := make([]Tally, len(s.Cases))
 	for i, c := range s.Cases {
@@ -76,6 +78,11 @@ func (s Study) trials(ctx context.Context, c Case) ([]trial, error) {
 		})
 	}
 	group.Wait()
+	for _, trial := range trials {
+		if trial.failure != nil {
+			return nil, fmt.Errorf("%s, n = %d: %w", c.Population.Name, c.N, trial.failure)
+		}
+	}
 	return trials, ctx.Err()
 }
 

@@ -25,6 +25,7 @@ type Norms struct {
 // trial is what came of one sample; none: all its scores were equal.
 type trial struct {
 	none       bool
+	failure    error
 	outcomes   []outcome // by region
 	bandHolds  bool
 	falseTrust bool
@@ -86,8 +87,7 @@ type judged struct {
 }
 
 // resample draws the replicates; those regions from the sweep on are one group.
-// It is false when the study is ending.
-func (j judging) resample(ctx context.Context, weight float64, regions [][]gap.Threshold, sweep int) (judged, bool) {
+func (j judging) resample(ctx context.Context, weight float64, regions [][]gap.Threshold, sweep int) (judged, error) {
 	plan := resample.Plan{Table: j.table, Weights: []float64{weight}, Level: j.Level, Replicates: j.Replicates, Seed: j.seed, Workers: 1}
 	for _, ends := range regions {
 		plan.Regions = append(plan.Regions, j.table.Region(ends))
@@ -98,7 +98,7 @@ func (j judging) resample(ctx context.Context, weight float64, regions [][]gap.T
 	plan.Estimates = j.table.Estimates(plan.Regions)
 	quantiles, err := resample.Run(ctx, plan, nil)
 	n := j.table.Counts.N
-	return judged{j, plan, quantiles, resample.StudentT(n, j.Level), resample.BandSparse(n, j.Level, j.scale.Step > 0)}, err == nil
+	return judged{j, plan, quantiles, resample.StudentT(n, j.Level), resample.BandSparse(n, j.Level, j.scale.Step > 0)}, err
 }
 
 func (j judged) interval(region int) resample.Interval {
@@ -133,9 +133,9 @@ func (j judging) inPoints(ctx context.Context) trial {
 			regions = append(regions, []gap.Threshold{threshold})
 		}
 	}
-	done, ok := j.resample(ctx, 1, regions, len(cutoffs))
-	if !ok {
-		return trial{none: true}
+	done, err := j.resample(ctx, 1, regions, len(cutoffs))
+	if err != nil {
+		return trial{failure: err}
 	}
 	out := trial{bandHolds: true}
 	for i := range cutoffs {
@@ -156,9 +156,9 @@ func (j judging) ofCount(ctx context.Context) trial {
 	var out trial
 	for _, ends := range j.regions(j.population, j.split) {
 		weight := j.weight(j.population, ends)
-		done, ok := j.resample(ctx, weight, [][]gap.Threshold{ends}, 1)
-		if !ok {
-			return trial{none: true}
+		done, err := j.resample(ctx, weight, [][]gap.Threshold{ends}, 1)
+		if err != nil {
+			return trial{failure: err}
 		}
 		out.outcomes = append(out.outcomes, outcome{done.plan.Estimates[0].Gap(weight), done.interval(0)})
 	}
