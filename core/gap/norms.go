@@ -58,7 +58,7 @@ func (t Table) curveLimits(r Region, e *Estimate, lower bool, miss float64) (low
 		return 1 / (1 + math.Exp(margin-odds)), 1 / (1 + math.Exp(-margin-odds))
 	}
 	middle := e.z * (1 - 1/(4*(n-1)))
-	margin := -distuv.UnitNormal.Quantile(miss) * math.Sqrt(1/n+e.z*e.z/(2*(n-1)))
+	margin := -distuv.UnitNormal.Quantile(miss) * math.Hypot(1/math.Sqrt(n), e.z/math.Sqrt(2*(n-1)))
 	if lower {
 		return curve.UpperTail(margin - middle), curve.UpperTail(-margin - middle)
 	}

@@ -17,7 +17,7 @@ type study struct {
 	targets  []target    // by region, then weight
 	points   []gap.Point // each place where the curve is read, once
 	readings []gap.Reading
-	ends     [][2]int     // by region, the places of its ends among the points
+	ends     [][2]int     // by region, the places of its ends among the points; a tail has one
 	spans    [][2]int     // by region, the first cell inside and the first beyond
 	counts   []int32      // people drawn, by cell
 	tails    []gap.Inside // sums over the cells from this one up; one more entry than cells
@@ -72,7 +72,11 @@ func newStudy(plan Plan, c *cells) *study {
 	}
 	known := map[gap.Point]int{}
 	for _, r := range plan.Regions {
-		s.ends = append(s.ends, [2]int{s.point(r.Lower, known), s.point(r.Upper, known)})
+		ends := [2]int{s.point(r.Lower, known)}
+		if r.Stretch {
+			ends[1] = s.point(r.Upper, known)
+		}
+		s.ends = append(s.ends, ends)
 		s.spans = append(s.spans, [2]int{c.cell(r.From), c.cell(r.To)})
 	}
 	s.readings = make([]gap.Reading, len(s.points))

@@ -11,13 +11,14 @@ import (
 // distinct score has a mark: Quantile is the standard score that a normal
 // curve has at the score's place among the people (half of those with the
 // same score counted as below it), Deviation how many SDs of the curve the
-// score itself lies above that, and Limit how far up or down a single score
-// would lie with the probability of the level if the curve were the scores'
-// own,
+// score itself lies above that, and Limit how far from it, up or down, a single
+// score lies at most with the probability of the level if the curve is the
+// scores' own,
 //
 //	t·√(Φ(q)(1-Φ(q))/n)/φ(q),  t the normal quantile of the level
 //
-// For a fitted curve these limits are somewhat too wide.
+// approximately: they are of a large sample, and hold mark by mark, not for all
+// of the worm together. For a fitted curve they are somewhat too wide.
 type Worm struct{ Score, Quantile, Deviation, Limit []float64 }
 
 // mostMarks is how many marks a worm has; more are thinned to it, so that
