@@ -71,7 +71,7 @@ func (w *work) warnings() []string {
 	for _, code := range sample.SuspectedCodes(counts) {
 		add("%s may be a missing code and not a score; if it is one, name it as missing", numeral.Plain(code))
 	}
-	if share, extreme := sample.ExtremeShare(counts, m); share > 0.5 && counts.N >= 20 {
+	if share, extreme := sample.Extremes(counts, m); extreme > 0 {
 		add("the SD is mostly the %s: %.0f%% of the sum of squares comes from there", extremes(extreme), 100*share)
 	}
 	if heaps := sample.Heaps(counts, m, w.scale); heaps.Spacing > 0 {

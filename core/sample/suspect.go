@@ -85,3 +85,17 @@ func ExtremeShare(c Counts, m Moments) (share float64, people int) {
 	}
 	return total / (float64(c.N) * m.M2), people
 }
+
+const (
+	mostlyTheirs      = 0.5 // of the sum of squares: more of it, and the SD is that of a few
+	fewestForExtremes = 20  // people of whom this is said
+)
+
+// Extremes is ExtremeShare where the SD is mostly the most extreme people's,
+// among twenty people or more; elsewhere they are 0.
+func Extremes(c Counts, m Moments) (share float64, people int) {
+	if share, people = ExtremeShare(c, m); c.N < fewestForExtremes || !(share > mostlyTheirs) {
+		return 0, 0
+	}
+	return share, people
+}

@@ -49,3 +49,16 @@ func TestExtremeShare(t *testing.T) {
 	assert.Equal(t, 30, people)
 	assert.Less(t, height, 0.12)
 }
+
+func TestExtremes(t *testing.T) {
+	people := func(scores ...float64) int {
+		counts := sample.Count(scores)
+		share, people := sample.Extremes(counts, counts.Moments())
+		assert.Equal(t, people > 0, share > 0.5)
+		return people
+	}
+	few := []float64{0, 1, 2, 0, 1, 2, 0, 1, 2, 0, 1, 2, 0, 1, 2, 0, 1, 2, 50}
+	assert.Zero(t, people(few...), "19 people")
+	assert.Equal(t, 1, people(append(few, 1)...))
+	assert.Zero(t, people(append(few[:18:18], 0, 1, 2, 4)...))
+}

@@ -76,20 +76,12 @@ type Features struct {
 	Farthest       float64
 }
 
-// mostlyTheirs is the part of the sum of squares from which on the SD is
-// mostly that of a few extreme people, and fewestPeople how many people there
-// must be to say so (common practice).
-const (
-	mostlyTheirs = 0.5
-	fewestPeople = 20
-)
-
 // Find finds the features of a sample.
 func Find(t gap.Table, s sample.Scale) Features {
 	var f Features
 	f.Floor, f.Ceiling = sample.Piles(t.Counts, t.Moments, s)
 	f.Heaps = sample.Heaps(t.Counts, t.Moments, s)
-	if share, people := sample.ExtremeShare(t.Counts, t.Moments); share > mostlyTheirs && t.Counts.N >= fewestPeople && people > 1 {
+	if share, people := sample.Extremes(t.Counts, t.Moments); people > 1 { // one is Farthest
 		f.Extremes, f.ExtremeShare = people, share
 	}
 	f.Farthest = t.Counts.Min()

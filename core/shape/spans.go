@@ -59,8 +59,8 @@ const (
 // binned puts the people of many distinct scores into bins, so that a resample
 // takes no longer for a million scores than for some thousands. A bin counts
 // as its people's mean score; it is no wider than 1/256 of an SD, or of its
-// distance from the mean, which moves no sum of powers up to the eighth by
-// more than 4 in 100,000. The entries at which edges names a first one open a
+// distance from the mean, which moves sums of powers up to the eighth by some
+// parts in 100,000: 4 where its people are spread evenly over it. The entries at which edges names a first one open a
 // bin, so that every share that is counted is counted exactly.
 func (s *spans) binned(edges []int) spans {
 	table := s.table

@@ -6,7 +6,9 @@ import (
 	"testing"
 
 	"github.com/stretchr/testify/assert"
+	"pgregory.net/rapid"
 
+	"tailgap/core/curve"
 	"tailgap/core/cutoff"
 	"tailgap/core/gap"
 	"tailgap/core/sample"
@@ -68,4 +70,24 @@ func TestPlace(t *testing.T) {
 		assert.Greater(t, place, w.Quantile[i-1])
 		assert.Less(t, place, w.Quantile[i])
 	}
+}
+
+// What words.ReadWorm says of a mark above, or below, the line is so for every
+// sample.
+func TestTheWormsSideSaysWhereTheCurveHasTooFew(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		p := drawCase(t).plan()
+		w := NewWorm(p.Table, 0.95)
+		people, before := float64(p.Table.Counts.N), 0.0
+		for i, count := range p.Table.Counts.Count {
+			z := p.Table.Curve.Z(w.Score[i])
+			if w.Deviation[i] > 1e-9 {
+				assert.Less(t, curve.UpperTail(z), (people-before)/people)
+			}
+			before += float64(count)
+			if w.Deviation[i] < -1e-9 {
+				assert.Less(t, curve.UpperTail(-z), before/people)
+			}
+		}
+	})
 }

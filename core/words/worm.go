@@ -52,9 +52,11 @@ func Worm(q ask.Question, r ask.Result) []string {
 	return all
 }
 
-// ReadWorm says how to read a worm plot.
+// ReadWorm says how to read a worm plot. A mark stands for half of the people
+// with its score, so each half of the sentence is certain of that side only on
+// which all of them are counted; the curve is read without the half-step.
 func ReadWorm() string {
-	return "Where the worm is above the line, the curve puts too few people at or above the score there; where it is below, too many."
+	return "Where the worm is above the line, the curve puts too few people at or above the score there; where it is below, too few at or below it."
 }
 
 // run is a run of marks beyond a limit.
