@@ -95,9 +95,9 @@ func (c *Cell) count(o outcome, edge verdict.Tolerance) float64 {
 	truth := c.Gap / 100
 	low, high := math.Max(-1, o.limits.Low), math.Min(1, o.limits.High)
 	switch {
-	case low > truth:
+	case low > truth+rounding:
 		c.TooHigh++
-	case high < truth:
+	case high < truth-rounding:
 		c.TooLow++
 	}
 	switch o.verdict(edge) {

@@ -143,7 +143,7 @@ func (j judging) inPoints(ctx context.Context) trial {
 	}
 	for i := len(cutoffs); i < len(cutoffs)+shown; i++ {
 		band, truth := done.band(i), j.truth(j.population, regions[i])
-		out.bandHolds = out.bandHolds && band.Low <= truth && truth <= band.High
+		out.bandHolds = out.bandHolds && band.Low <= truth+rounding && truth-rounding <= band.High
 		trusted := band.Low >= -Trust/100 && band.High <= Trust/100
 		out.falseTrust = out.falseTrust || trusted && math.Abs(truth) > Trust/100
 	}
@@ -215,9 +215,13 @@ func (c Case) seed(i int) uint64 {
 	return hash.Sum64() ^ uint64(c.N)<<32 ^ uint64(i)
 }
 
-// edges are the tolerance that the truth is just at the edge of: its gap in
-// points to either side, or its ratio, of which weight is the curve's share
-// over the true one.
+// rounding is what a limit may be off. Where nobody of a population is on one
+// side of a cutoff, one exact limit under a known curve is the truth itself.
+const rounding = 1e-12
+
+// edges are the tolerance that the truth is just at the edge of, outside it:
+// its gap in points to either side, or its ratio, of which weight is the
+// curve's share over the true one.
 func edges(truth, weight float64) verdict.Tolerance {
 	if weight != 1 {
 		edge := &verdict.Edge{Weight: weight}
@@ -226,7 +230,7 @@ func edges(truth, weight float64) verdict.Tolerance {
 		}
 		return verdict.Tolerance{Low: edge}
 	}
-	limit := &verdict.Limit{Size: 100 * math.Abs(truth), Unit: verdict.Points}
+	limit := &verdict.Limit{Size: 100 * math.Max(0, math.Abs(truth)-rounding), Unit: verdict.Points}
 	return verdict.NewTolerance(limit, limit, 0)
 }
 
