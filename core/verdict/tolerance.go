@@ -9,6 +9,7 @@ import "math"
 type Edge struct {
 	Weight float64
 	At     float64
+	Moves  bool // with the counted share: a part of it, be it 0%
 }
 
 // Tolerance has the edges that were asked for; nil: no limit on that side.
@@ -32,7 +33,7 @@ func (l *Limit) edge(sign, heads float64) *Edge {
 	case l == nil:
 		return nil
 	case l.Unit == OfCount:
-		return &Edge{Weight: 1 + sign*l.Size/100}
+		return &Edge{Weight: 1 + sign*l.Size/100, Moves: true}
 	case l.Unit == Heads:
 		return &Edge{Weight: 1, At: sign * l.Size / heads}
 	}
@@ -44,15 +45,15 @@ func (t Tolerance) None() bool { return t.High == nil && t.Low == nil }
 
 // OfCount is true when an edge moves with the counted share.
 func (t Tolerance) OfCount() bool {
-	return (t.High != nil && t.High.Weight != 1) || (t.Low != nil && t.Low.Weight != 1)
+	return (t.High != nil && t.High.Moves) || (t.Low != nil && t.Low.Moves)
 }
 
 // InPoints is the tolerance without the edges that move with the counted share.
 func (t Tolerance) InPoints() Tolerance {
-	if t.High != nil && t.High.Weight != 1 {
+	if t.High != nil && t.High.Moves {
 		t.High = nil
 	}
-	if t.Low != nil && t.Low.Weight != 1 {
+	if t.Low != nil && t.Low.Moves {
 		t.Low = nil
 	}
 	return t

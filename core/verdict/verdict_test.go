@@ -110,6 +110,9 @@ func TestVerdictInPercentOfTheCount(t *testing.T) {
 	assert.Equal(t, verdict.Unsettled, verdict.Of(tolerance, limits(0.001, 0)))
 	assert.Equal(t, verdict.Fails, verdict.Of(tolerance, limits(0.021, 0)))
 	assert.Equal(t, verdict.Fails, verdict.Of(tolerance, limits(0, -0.021)))
+	none := verdict.NewTolerance(limit(t, "0%count"), nil, 0)
+	assert.True(t, none.OfCount(), "a part of the count, be it none of it")
+	assert.True(t, none.InPoints().None())
 	assert.Nil(t, verdict.NewTolerance(nil, limit(t, "100%count"), 0).Low, "a count can't be missed by more than all of it")
 }
 
