@@ -132,6 +132,12 @@ func TestReplicatesThatFillTheMemory(t *testing.T) {
 	_, err = fmt.Sscanf(err.Error()[strings.LastIndex(err.Error(), " "):], "%d", &most)
 	require.NoError(t, err)
 	assert.Greater(t, most, 10_000, "the usual number is never too many")
+	given, stopped := q, false
+	given.Curve = norms(30, 10, 200)
+	ctx, cancel := context.WithCancel(context.Background())
+	_, err = ask.Judge(ctx, given, of(scores), func(int, int) { stopped = true; cancel() })
+	assert.ErrorIs(t, err, context.Canceled, "of a given curve only those for the band are kept")
+	assert.True(t, stopped)
 	q.Everyone = true
 	_, err = ask.Judge(context.Background(), q, of(scores), nil)
 	assert.NoError(t, err, "there are none to keep")

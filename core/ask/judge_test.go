@@ -157,45 +157,6 @@ func TestAnUnattainableCutoffIsReadFromTheNextScore(t *testing.T) {
 	assert.Contains(t, between.Notes, "19.5 is between two attainable scores, 19 and 20")
 }
 
-// For any whole-number sample: shares add up over the two sides of a cutoff,
-// intervals hold the gap, more than the gap is in the band, and the answer is
-// free of order and of the number of workers.
-func TestAnswersAreCoherent(t *testing.T) {
-	rapid.Check(t, func(t *rapid.T) {
-		scores := rapid.SliceOfN(rapid.Map(rapid.IntRange(-10, 30), func(i int) float64 { return float64(i) }), 2, 40).Draw(t, "scores")
-		scores = append(scores, 31, -11) // some spread
-		at := rapid.IntRange(-15, 35).Draw(t, "at")
-		q := question()
-		q.Replicates = 200
-		for _, side := range []cutoff.Side{cutoff.AtLeast, cutoff.Below, cutoff.Above, cutoff.AtMost} {
-			q.Cutoffs = append(q.Cutoffs, cutoff.Cutoff{Side: side, At: float64(at)})
-		}
-		q.TooHigh, q.TooLow = points(1), ofCount(30)
-		q.HalfStep = rapid.Bool().Draw(t, "half-step")
-		r := judge(t, q, scores)
-		for i := 0; i < 4; i += 2 {
-			a, b := r.Cutoffs[i], r.Cutoffs[i+1]
-			assert.Equal(t, len(scores), a.Counted+b.Counted)
-			assert.InDelta(t, 1, a.CurveShare+b.CurveShare, 1e-12)
-			assert.InDelta(t, a.GapPoints, -b.GapPoints, 1e-9)
-			assert.InDelta(t, *a.GapLow, -*b.GapHigh, 1e-9)
-		}
-		for _, f := range r.Cutoffs {
-			assert.LessOrEqual(t, *f.GapLow, f.GapPoints)
-			assert.GreaterOrEqual(t, *f.GapHigh, f.GapPoints)
-			if f.Ratio != nil {
-				assert.LessOrEqual(t, *f.RatioLow, *f.Ratio*(1+1e-9))
-				if f.RatioHigh != nil {
-					assert.GreaterOrEqual(t, *f.RatioHigh, *f.Ratio*(1-1e-9))
-				}
-			}
-		}
-		shuffled := rapid.Permutation(scores).Draw(t, "order")
-		q.Workers = rapid.IntRange(1, 5).Draw(t, "workers")
-		assert.Equal(t, r, judge(t, q, shuffled))
-	})
-}
-
 func TestCancelAndProgress(t *testing.T) {
 	ctx, cancel := context.WithCancel(context.Background())
 	q := question(">=24")
