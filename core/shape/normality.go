@@ -31,8 +31,12 @@ type AndersonDarling struct{ A2, A2Star, P float64 }
 // Dallal & Wilkinson's (1986) up to 0.1 and Molin & Abdi's (1998) above.
 type Lilliefors struct{ D, P float64 }
 
-// Test computes the tests. It returns the context's error soon after the
-// context ends.
+// Test computes the tests. Their p-values are for scores without a step, and
+// too small with one: of samples of 100 people from a normal curve rounded to
+// whole numbers 8% (Anderson-Darling) and 18% (Lilliefors) had p < 0.05 where
+// its SD was 10, 14% and 36% where it was 5; of 1,000 people, SD 10, 55% and 93%
+// (200 samples each). It returns the context's error soon after the context
+// ends.
 func Test(ctx context.Context, t gap.Table) (Tests, error) {
 	var tests Tests
 	n := t.Counts.N

@@ -8,8 +8,9 @@ import (
 )
 
 // Normality says what the tests of normality found: "Anderson-Darling A* 1.31,
-// p 0.002; Lilliefors D 0.040, p 0.046."; or why there is none. NoAnswer
-// belongs beside it where there is one.
+// p 0.002; Lilliefors D 0.040, p 0.046; the steps of the scale alone can make p
+// small."; or why there is none. NoAnswer belongs beside it where there is
+// one.
 func Normality(r ask.Result) string {
 	if r.Shape == nil {
 		return ""
@@ -30,8 +31,14 @@ func Normality(r ask.Result) string {
 	case t.LeftOut != "":
 		tests = append(tests, Line(t.LeftOut))
 	}
+	if r.Sample.Step != nil && (t.AndersonDarling != nil && t.AndersonDarling.P < lowP || t.Lilliefors != nil && t.Lilliefors.P < lowP) {
+		tests = append(tests, "the steps of the scale alone can make p small")
+	}
 	return Capital(strings.Join(tests, "; ")) + "."
 }
+
+// lowP is a p-value low enough to be made something of.
+const lowP = 0.1
 
 // Tested is true where a test of normality was made.
 func Tested(r ask.Result) bool {

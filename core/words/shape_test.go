@@ -128,6 +128,8 @@ func TestNormality(t *testing.T) {
 	r := ask.Result{Shape: &ask.Shape{Tests: ask.Tests{
 		AndersonDarling: &ask.AndersonDarling{A2: 1.30988, A2Star: 1.31173, P: 0.00211}, Lilliefors: &ask.Lilliefors{D: 0.03956, P: 0.0457}}}}
 	assert.Equal(t, "Anderson-Darling A* 1.31, p 0.002; Lilliefors D 0.040, p 0.046.", words.Normality(r))
+	r.Sample.Step = new(1.0)
+	assert.Equal(t, "Anderson-Darling A* 1.31, p 0.002; Lilliefors D 0.040, p 0.046; the steps of the scale alone can make p small.", words.Normality(r))
 	assert.True(t, words.Tested(r))
 	r.Shape.Tests = ask.Tests{Lilliefors: &ask.Lilliefors{D: 0.2, P: 0.5}, LeftOut: "the Anderson-Darling test needs at least 8 people"}
 	assert.Equal(t, "Lilliefors D 0.200, p 0.50; the Anderson-Darling test needs at least 8 people.", words.Normality(r))
