@@ -96,16 +96,18 @@ func (c *crew) heard(m *mate, r reply, with []parcel) {
 	}
 }
 
-// share begins a round, with as many helpers as there are to be.
+// share begins a round, with as many helpers as there can be.
 func (c *crew) share(s share, order parcel) {
 	c.rounds++
 	c.round = &round{share: s, id: c.rounds, made: s.From}
-	for len(c.helpers) < c.most-1 {
+	for len(c.helpers) < min(c.most, s.Workers)-1 {
 		c.helpers = append(c.helpers, c.mate(c.heardHelper))
 	}
-	for _, m := range c.helpers {
+	for i, m := range c.helpers {
 		m.in, m.due, m.made = false, 0, false
-		m.post(request{ID: c.round.id, Kind: askMaker}, order)
+		if i < s.Workers-1 {
+			m.post(request{ID: c.round.id, Kind: askMaker}, order)
+		}
 	}
 	c.lead.in, c.lead.due, c.lead.made = true, 0, false
 	c.deal(c.lead)

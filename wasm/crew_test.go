@@ -81,11 +81,14 @@ func TestCrewSharesEveryBlockOnce(t *testing.T) {
 		g.post(request{ID: 3, Kind: askAnswer}, nil)
 		assert.Equal(t, most-1, g.hands[0].inbox[0].Helpers)
 		g.hands[0].inbox = nil
+		started := 1
 		for range rapid.IntRange(1, 3).Draw(t, "scores") {
 			s := share{From: rapid.IntRange(1, 5).Draw(t, "from"), Portion: rapid.IntRange(1, 20).Draw(t, "portion")}
+			s.Workers = rapid.IntRange(1, 6).Draw(t, "room")
 			s.Blocks = s.From + rapid.IntRange(1, 200).Draw(t, "blocks")
 			g.shares(s)
-			require.Len(t, g.hands, most)
+			started = max(started, min(most, s.Workers))
+			require.Len(t, g.hands, started)
 			times, parts := make([]int, s.Blocks), map[string]bool{}
 			for g.round != nil {
 				var busy []int
@@ -99,6 +102,9 @@ func TestCrewSharesEveryBlockOnce(t *testing.T) {
 				name := fmt.Sprint("part ", i)
 				m := g.hands[i].does(name)
 				assert.LessOrEqual(t, len(g.hands[i].inbox), ahead+1)
+				if m.Kind == askBlocks {
+					assert.Less(t, i, s.Workers, "there is no room for it")
+				}
 				for block := m.From; block < m.To; block++ {
 					times[block]++
 					parts[name] = parts[name] || i > 0
@@ -142,7 +148,7 @@ func TestCrewStartsHelpersOnlyForWorkToShare(t *testing.T) {
 	assert.Len(t, g.said, 2)
 	assert.Len(t, g.hands, 1)
 
-	g.shares(share{From: 1, Blocks: 100, Portion: 5})
+	g.shares(share{From: 1, Blocks: 100, Portion: 5, Workers: 9})
 	assert.Len(t, g.hands, 4)
 	assert.Equal(t, []parcel{"the order"}, g.hands[3].inbox[0].with)
 	assert.Equal(t, askMaker, g.hands[3].inbox[0].Kind)
@@ -153,7 +159,7 @@ func TestCrewStartsHelpersOnlyForWorkToShare(t *testing.T) {
 func TestCrewEndsTheRoundWithTheLead(t *testing.T) {
 	g := newGang(2)
 	g.post(request{ID: 9, Kind: askAnswer}, nil)
-	g.shares(share{From: 1, Blocks: 1000, Portion: 5})
+	g.shares(share{From: 1, Blocks: 1000, Portion: 5, Workers: 9})
 	helper := g.hands[1]
 	helper.does("")
 	require.Len(t, helper.inbox, ahead)
@@ -172,7 +178,7 @@ func TestCrewSaysWhenAHelperFails(t *testing.T) {
 	} {
 		g := newGang(2)
 		g.post(request{ID: 9, Kind: askAnswer}, nil)
-		g.shares(share{From: 1, Blocks: 100, Portion: 5})
+		g.shares(share{From: 1, Blocks: 100, Portion: 5, Workers: 9})
 		g.hands[1].receive(r, nil)
 		assert.Equal(t, []reply{{Kind: sayBroken, Error: r.Error}}, g.said, name)
 	}
@@ -190,7 +196,7 @@ func TestDeskSaysWhenAHelperFails(t *testing.T) {
 		return g.crew
 	}
 	d.ask()
-	g.shares(share{From: 1, Blocks: 100, Portion: 5})
+	g.shares(share{From: 1, Blocks: 100, Portion: 5, Workers: 9})
 	g.hands[1].receive(reply{Kind: sayBroken, Error: "out of memory"}, nil)
 	assert.Contains(t, d.trouble[atWork], "out of memory")
 	assert.Nil(t, d.running)

@@ -51,12 +51,13 @@ type request struct {
 // another. The page passes it on and never looks inside.
 type parcel any
 
-// share is the data of sayShare: the blocks that are still to be made, and how
-// many of them make a good portion.
+// share is the data of sayShare: the blocks that are still to be made, how many
+// of them make a good portion, and how many workers there is memory for.
 type share struct {
 	From    int `json:"from"`
 	Blocks  int `json:"blocks"` // in all
 	Portion int `json:"portion"`
+	Workers int `json:"workers"`
 }
 
 // reply is one message from the worker: data, or an error that is a sentence

@@ -17,6 +17,10 @@ const (
 	portionTime  = 25 * time.Millisecond
 )
 
+// roomFor is how many bytes the makers of all workers together may come to
+// take.
+const roomFor = 768 << 20
+
 // sharing has replicates made here, and where there is much to do also by
 // those workers of the crew that have nothing to do.
 func (b *bench) sharing(r request, line line) ask.Runner {
@@ -34,7 +38,7 @@ func (b *bench) sharing(r request, line line) ask.Runner {
 			portion = max(1, int(float64(made)*float64(portionTime)/float64(max(taken, 1))))
 			left := taken / time.Duration(made) * time.Duration(job.Blocks-made)
 			if r.Helpers > 0 && taken >= aloneFor && left >= worthSharing {
-				parts, err = b.together(line, job, share{made, job.Blocks, portion}, told)
+				parts, err = b.together(line, job, share{made, job.Blocks, portion, 1 + roomFor/max(1, job.Memory)}, told)
 				if err != nil {
 					return nil, err
 				}

@@ -22,6 +22,7 @@ type Job struct {
 	Column     int // its index in the sample
 	Blocks     int
 	Replicates int
+	Memory     int // bytes that each maker comes to take, about
 	work       *work
 }
 
@@ -116,7 +117,7 @@ func (w *work) run(ctx context.Context, column int, runner Runner, progress func
 		w.quantiles, err = resample.Run(ctx, w.plan, progress)
 		return err
 	}
-	encoded, err := runner(ctx, Job{column, w.plan.Blocks(), w.question.Replicates, w}, progress)
+	encoded, err := runner(ctx, Job{column, w.plan.Blocks(), w.question.Replicates, w.plan.Memory(), w}, progress)
 	if err != nil {
 		return err
 	}

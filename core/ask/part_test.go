@@ -35,6 +35,8 @@ func TestAnyRunnerGivesTheAnswer(t *testing.T) {
 			func(ctx context.Context, job ask.Job, progress func(done int)) (parts [][]byte, err error) {
 				assert.Equal(t, asked, job.Column)
 				assert.Equal(t, q.Replicates, job.Replicates)
+				assert.Greater(t, job.Memory, 10_000)
+				assert.Less(t, job.Memory, 1_000_000)
 				asked++
 				makers := []*ask.Maker{job.Maker(), elsewhere(t, job), elsewhere(t, job)}
 				ends := append(rapid.SliceOfN(rapid.IntRange(0, job.Blocks), 0, 4).Draw(t, "ends"), 0, job.Blocks)

@@ -24,6 +24,9 @@ func (l *largest) offer(x float64) {
 			return
 		}
 	}
+	if l.values == nil {
+		l.values = make([]float64, 0, 2*l.k) // to grow into it would take several times the memory
+	}
 	l.values = append(l.values, x)
 }
 

@@ -20,6 +20,11 @@ func NewMaker(plan Plan) *Maker {
 	return &Maker{plan: plan, study: newStudy(plan, newCells(&plan))}
 }
 
+// Memory is about how many bytes a maker of the plan comes to take: what it
+// keeps, and half as much again in the part and in the part's bytes, each with
+// the room that collecting garbage leaves.
+func (p Plan) Memory() int { return 3 * 8 * 2 * upperRank(p.Replicates, p.Level) * p.places() }
+
 // Make draws the replicates of the blocks from (in) to (out). progress, which
 // may be nil, takes how many of these replicates are done. It returns an error
 // for blocks that the plan doesn't have, and the context's when it ends first;
