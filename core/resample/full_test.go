@@ -101,11 +101,24 @@ func TestWholeMethodAgreesWithNumPy(t *testing.T) {
 		monteCarlo = 8 * math.Max(want.BandSD, 0.004) // its limits are no straight lines of the quantile
 		assert.InDeltaf(t, want.BandLow, 100*band.Low, monteCarlo*want.SEBelow, "the band's low limit, %s", where)
 		assert.InDeltaf(t, want.BandHigh, 100*band.High, monteCarlo*want.SEAbove, "the band's high limit, %s", where)
-
-		plan.BandsOnly = true
-		only, err := resample.Run(context.Background(), plan, nil)
-		require.NoError(t, err)
-		assert.Empty(t, only.Region)
-		assert.Equal(t, got.Group, only.Group, where)
 	}
+}
+
+// Where only bands are wanted they are the same, and the regions are left out.
+func TestBandsOnly(t *testing.T) {
+	people := 40
+	table, _ := column{Dataset: "mathexam", Column: "tests"}.table(&curve.Given{Mean: 20, SD: 4, NormN: &people})
+	plan := resample.Plan{Table: table, Weights: []float64{1, 1.2}, Level: 0.9, Replicates: 1000, Seed: 5}
+	for at := 9.0; at <= 27; at++ {
+		plan.Regions = append(plan.Regions, table.Tail(gap.Threshold{At: at, Point: at}))
+	}
+	plan.Groups, plan.Estimates = [][2]int{{2, 12}, {14, 19}}, table.Estimates(plan.Regions)
+	all, err := resample.Run(context.Background(), plan, nil)
+	require.NoError(t, err)
+	plan.BandsOnly = true
+	bands, err := resample.Run(context.Background(), plan, nil)
+	require.NoError(t, err)
+	assert.Len(t, all.Region, 19)
+	assert.Empty(t, bands.Region)
+	assert.Equal(t, all.Group, bands.Group)
 }

@@ -233,8 +233,8 @@ CASES = [
     ("mathexam", "tests", 1, 20, ">=", True, 1.0, None, 0.8),  # other levels
     ("mathexam", "tests", 1, 20, ">=", True, 1.0, None, 0.9),
     ("mathexam", "tests", 1, 20, ">=", True, 1.0, None, 0.99),
-    ("cd4", "oneyear", 0.01, 6.5, ">=", False, 1.0, None, 0.8),
-    ("cd4", "oneyear", 0.01, 6.5, ">=", False, 1.0, None, 0.99),
+    ("newcomb", "time", 1, 0, "<=", False, 1.0, None, 0.8),
+    ("newcomb", "time", 1, 0, "<=", False, 1.0, None, 0.99),
     ("pima", "bp", 1, 90, ">=", True, 1.0, (72, 12), 0.8),
     ("pima", "bp", 1, 90, "<", True, 1.0, (72, 12), 0.99),
     ("pima", "bp", 1, 90, ">=", True, 1.0, (72, 12), 0.95, 20),  # norms from 20 people
