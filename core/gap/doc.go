@@ -86,8 +86,8 @@
 // standard error SE² = v₀/n₀ + w²p̃(1-p̃)/n that a band is scaled by.
 //
 // With nobody's count in play, these limits of N are missed on either side at
-// most 2.9% of the time where 2.5% are wanted (tails, n₀ from 2, z to 4) and
-// 3.3% (stretches, n₀ from 5), in 100,000 to 400,000 draws of the norms. For
+// most 3.0% of the time where 2.5% are wanted (tails, n₀ from 2, z to 4) and
+// 3.8% (stretches, n₀ from 5), in 100,000 to 400,000 draws of the norms. For
 // the whole interval see TestNormsAreCovered, and TestKnownCurveIsCoveredForSure.
 //
 // The ghost-studentised interval with the norms' variance added and the norms

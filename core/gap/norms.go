@@ -40,7 +40,8 @@ func (t Table) normVariance(a, b float64) float64 {
 //
 //	z(1 - 1/(4(n-1))) ± q·√(1/n + z²/(2(n-1))),  q = Φ⁻¹(1-miss),
 //
-// and is missed by 2.9% at most where 2.5% are wanted, for n from 2 and z to 4.
+// which are missed on either side at most 3.0% of the time where 2.5% are
+// wanted, for n from 2 and z to 4.
 // For a stretch they are the delta method's on the scale of log odds, with
 // Student's t with n-1 degrees of freedom.
 func (t Table) curveLimits(r Region, e *Estimate, lower bool, miss float64) (low, high float64) {
