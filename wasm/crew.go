@@ -29,6 +29,7 @@ type mate struct {
 	in   bool // has a maker, and can be given blocks
 	due  int  // portions that it was given and hasn't made
 	made bool // some blocks of this round
+	next int  // blocks that make a good portion for it
 }
 
 // round is the sharing of one score's replicates.
@@ -104,12 +105,12 @@ func (c *crew) share(s share, order parcel) {
 		c.helpers = append(c.helpers, c.mate(c.heardHelper))
 	}
 	for i, m := range c.helpers {
-		m.in, m.due, m.made = false, 0, false
+		m.in, m.due, m.made, m.next = false, 0, false, s.Portion
 		if i < s.Workers-1 {
 			m.post(request{ID: c.round.id, Kind: askMaker}, order)
 		}
 	}
-	c.lead.in, c.lead.due, c.lead.made = true, 0, false
+	c.lead.in, c.lead.due, c.lead.made, c.lead.next = true, 0, false, s.Portion
 	c.deal(c.lead)
 }
 
@@ -138,14 +139,14 @@ func (c *crew) delivered(m *mate, r reply) {
 	if c.round == nil || r.ID != c.round.id {
 		return
 	}
-	made, err := decoded[int](r)
+	p, err := decoded[portion](r)
 	if err != nil {
 		c.receive(reply{Kind: sayBroken, Error: err.Error()})
 		return
 	}
 	m.due--
-	m.made = true
-	c.round.made += made
+	m.made, m.next = true, p.Next
+	c.round.made += p.Made
 	c.deal(m)
 	if c.round.made < c.round.Blocks {
 		return
@@ -163,9 +164,9 @@ func (c *crew) delivered(m *mate, r reply) {
 // less, so that all are done at about the same time.
 func (c *crew) deal(m *mate) {
 	for r := c.round; m.in && m.due < ahead && r.From < r.Blocks; m.due++ {
-		portion := max(1, min(r.Portion, (r.Blocks-r.From)/(ahead*(1+len(c.helpers)))))
-		m.post(request{ID: r.id, Kind: askBlocks, From: r.From, To: r.From + portion, Made: r.made})
-		r.From += portion
+		blocks := max(1, min(m.next, (r.Blocks-r.From)/(ahead*(1+len(c.helpers)))))
+		m.post(request{ID: r.id, Kind: askBlocks, From: r.From, To: r.From + blocks, Made: r.made})
+		r.From += blocks
 	}
 }
 

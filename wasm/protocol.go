@@ -60,6 +60,13 @@ type share struct {
 	Workers int `json:"workers"`
 }
 
+// portion is the data of a reply to askBlocks: how many blocks were made, and
+// how many the worker would make in a good portion's time.
+type portion struct {
+	Made int `json:"made"`
+	Next int `json:"next"`
+}
+
 // reply is one message from the worker: data, or an error that is a sentence
 // for the person at the page.
 type reply struct {

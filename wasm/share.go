@@ -14,7 +14,7 @@ import (
 const (
 	aloneFor     = 50 * time.Millisecond  // by then it is known how long the rest takes
 	worthSharing = 150 * time.Millisecond // of work left
-	portionTime  = 25 * time.Millisecond
+	portionTime  = 40 * time.Millisecond
 )
 
 // roomFor is how many bytes the makers of all workers together may come to
@@ -27,18 +27,17 @@ func (b *bench) sharing(r request, line line) ask.Runner {
 	return func(ctx context.Context, job ask.Job, progress func(done int)) (parts [][]byte, err error) {
 		told := func(made, here int) { progress(made*job.Replicates/job.Blocks + here) }
 		b.maker = job.Maker()
-		begun, made, portion := b.now(), 0, 1
-		for made < job.Blocks {
-			to := min(made+portion, job.Blocks)
-			if err := b.maker.Make(ctx, made, to, func(here int) { told(made, here) }); err != nil {
+		begun := b.now()
+		for made, next := 0, 1; made < job.Blocks; {
+			done, err := b.make(request{From: made, To: min(made+next, job.Blocks)}, func(here int) { told(made, here) })
+			if err != nil {
 				return nil, err
 			}
-			made = to
+			made, next = made+done.Made, done.Next
 			taken := b.now().Sub(begun)
-			portion = max(1, int(float64(made)*float64(portionTime)/float64(max(taken, 1))))
 			left := taken / time.Duration(made) * time.Duration(job.Blocks-made)
 			if r.Helpers > 0 && taken >= aloneFor && left >= worthSharing {
-				parts, err = b.together(line, job, share{made, job.Blocks, portion, 1 + roomFor/max(1, job.Memory)}, told)
+				parts, err = b.together(line, job, share{made, job.Blocks, next, 1 + roomFor/max(1, job.Memory)}, told)
 				if err != nil {
 					return nil, err
 				}
@@ -76,12 +75,18 @@ func (b *bench) together(line line, job ask.Job, s share, told func(made, here i
 	}
 }
 
-// make makes some blocks of replicates and says how many.
-func (b *bench) make(r request, progress func(done int)) (int, error) {
+// make makes some blocks of replicates.
+func (b *bench) make(r request, progress func(done int)) (portion, error) {
 	if b.maker == nil {
-		return 0, errors.New("the page asked for replicates without an order")
+		return portion{}, errors.New("the page asked for replicates without an order")
 	}
-	return r.To - r.From, b.maker.Make(context.Background(), r.From, r.To, progress)
+	begun := b.now()
+	if err := b.maker.Make(context.Background(), r.From, r.To, progress); err != nil {
+		return portion{}, err
+	}
+	made, taken := r.To-r.From, max(b.now().Sub(begun), time.Microsecond)
+	next := float64(made) * min(float64(portionTime)/float64(taken), 8) // some browsers' clocks are coarse
+	return portion{Made: made, Next: max(1, int(next))}, nil
 }
 
 // part is everything that was made; then the maker is done with.

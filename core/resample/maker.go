@@ -42,7 +42,7 @@ func (m *Maker) Make(ctx context.Context, from, to int, progress func(done int))
 			progress(m.plan.replicates(blocks{{from, block + 1}}))
 		}
 	}
-	m.made = append(m.made, [2]int{from, to}).joined()
+	m.made = append(m.made, [2]int{from, to})
 	return nil
 }
 
@@ -51,7 +51,7 @@ func (m *Maker) Part() (Part, error) {
 	if m.broken {
 		return Part{}, errors.New("these replicates were not finished")
 	}
-	part, err := newPart(m.plan, m.made, []*study{m.study})
+	part, err := newPart(m.plan, m.made.joined(), []*study{m.study})
 	part.plan = m.plan.fingerprint()
 	return part, err
 }
