@@ -13,7 +13,7 @@ import (
 // is of now, and so long that dealing it out costs nothing beside it.
 const (
 	aloneFor     = 50 * time.Millisecond  // by then it is known how long the rest takes
-	worthSharing = 150 * time.Millisecond // of work left
+	worthSharing = 300 * time.Millisecond // of work left
 	portionTime  = 40 * time.Millisecond
 )
 
