@@ -66,7 +66,7 @@ func (b *bench) serve(m message, line line) (r reply, parcels [][]byte) {
 			if len(m.parcels) != 1 {
 				return nil, errors.New("the page asked for replicates without an order")
 			}
-			maker, err := ask.NewMaker(m.parcels[0])
+			maker, err := ask.NewMaker(context.Background(), m.parcels[0])
 			b.maker = maker
 			return nil, err
 		case askBlocks:

@@ -10,7 +10,8 @@ import (
 )
 
 // result puts together what one column's answer shows.
-func (w *work) result() Result {
+func (w *work) result(steps *steps) (Result, error) {
+	steps.of = len(w.question.Cutoffs) + len(w.sweeps) + 1
 	m := w.table.Moments
 	r := Result{
 		Score: w.column.Name,
@@ -38,14 +39,20 @@ func (w *work) result() Result {
 	}
 	for _, c := range w.question.Cutoffs {
 		r.Cutoffs = append(r.Cutoffs, w.finding(c))
+		if err := steps.next(); err != nil {
+			return Result{}, err
+		}
 	}
 	for _, sweep := range w.sweeps {
 		r.Sweeps = append(r.Sweeps, w.sweep(sweep))
+		if err := steps.next(); err != nil {
+			return Result{}, err
+		}
 	}
 	r.Worst = worst(r.Sweeps, w.scale.Step > 0)
 	r.Shape = w.shape(r.Cutoffs)
 	r.Warnings = w.warnings()
-	return r
+	return r, steps.next()
 }
 
 // finding is the answer at one cutoff.

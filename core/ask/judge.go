@@ -38,10 +38,9 @@ func JudgeWith(ctx context.Context, question Question, from sample.Sample, progr
 		Format: AnswerFormat, Program: Program, Demo: from.Demo, Question: question,
 		Warnings: []string{}, Suppressed: []string{}, Results: []Result{},
 	}
-	each := question.Replicates + question.shapeReplicates()
-	meter := newMeter(progress, len(from.Columns)*each)
+	meter := newMeter(progress, question, from.Columns)
 	for i, column := range from.Columns {
-		result, err := judgeColumn(ctx, question, column, i, runner, meter.from(i*each))
+		result, err := judgeColumn(ctx, question, column, i, runner, meter)
 		if err != nil {
 			return Answer{}, err
 		}
@@ -56,20 +55,23 @@ func JudgeWith(ctx context.Context, question Question, from sample.Sample, progr
 	return answer, nil
 }
 
-func judgeColumn(ctx context.Context, question Question, column sample.Column, index int, runner Runner, report func(done int)) (Result, error) {
-	w, err := newWork(question, column, sample.Count(column.Scores))
+func judgeColumn(ctx context.Context, question Question, column sample.Column, index int, runner Runner, meter *meter) (Result, error) {
+	units := stagesOf(question, column)
+	counts, err := sample.CountContext(ctx, column.Scores, meter.stage(units.counting))
 	if err != nil {
 		return Result{}, err
 	}
-	if err := w.run(ctx, index, runner, report); err != nil {
+	w, err := newWork(question, column, counts, &steps{ctx: ctx, tell: meter.stage(units.planning)})
+	if err != nil {
 		return Result{}, err
 	}
-	report(question.Replicates)
-	if err := w.find(ctx, func(done int) { report(question.Replicates + done) }); err != nil {
+	if err := w.run(ctx, index, runner, meter.stage(units.drawing)); err != nil {
 		return Result{}, err
 	}
-	report(question.Replicates + question.shapeReplicates())
-	return w.result(), nil
+	if err := w.find(ctx, meter.stage(units.shape)); err != nil {
+		return Result{}, err
+	}
+	return w.result(&steps{ctx: ctx, tell: meter.stage(units.assembling)})
 }
 
 // describe returns the moments of a count table that a curve can be held

@@ -157,28 +157,6 @@ func TestAnUnattainableCutoffIsReadFromTheNextScore(t *testing.T) {
 	assert.Contains(t, between.Notes, "19.5 is between two attainable scores, 19 and 20")
 }
 
-func TestCancelAndProgress(t *testing.T) {
-	ctx, cancel := context.WithCancel(context.Background())
-	q := question(">=24")
-	q.Replicates = 1_000_000
-	_, err := ask.Judge(ctx, q, of(testdata.Open("mathexam", "tests")), func(done, total int) {
-		assert.Equal(t, 1_001_000, total)
-		cancel()
-	})
-	assert.ErrorIs(t, err, context.Canceled)
-	q.Replicates = 500
-	two := of(testdata.Open("mathexam", "tests"))
-	two.Columns = append(two.Columns, two.Columns[0])
-	last := 0
-	_, err = ask.Judge(context.Background(), q, two, func(done, total int) {
-		assert.Equal(t, 2*(500+500), total, "as many for the shape, below a thousand")
-		assert.Greater(t, done, last)
-		last = done
-	})
-	require.NoError(t, err)
-	assert.Equal(t, 2000, last)
-}
-
 // A stretch no wider than a rounding is not less than nothing to the curve.
 func TestANarrowStretchHasNoShareBelowNothing(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {

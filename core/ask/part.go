@@ -53,13 +53,13 @@ type Maker struct{ maker *resample.Maker }
 
 // NewMaker makes replicates of the job that gave the order. It returns an error
 // for bytes that are no order, and Judge's for a question that can't be asked
-// of the scores.
-func NewMaker(order []byte) (*Maker, error) {
+// of the scores, or the context's.
+func NewMaker(ctx context.Context, order []byte) (*Maker, error) {
 	question, counts, err := readOrder(order)
 	if err != nil {
 		return nil, err
 	}
-	w, err := newWork(question, sample.Column{Name: "the score"}, counts)
+	w, err := newWork(question, sample.Column{Name: "the score"}, counts, &steps{ctx: ctx})
 	if err != nil {
 		return nil, err
 	}
@@ -109,7 +109,8 @@ func (m *Maker) Part() ([]byte, error) {
 
 // run draws the replicates, or has them drawn, unless everyone was counted:
 // then every gap is exact.
-func (w *work) run(ctx context.Context, column int, runner Runner, progress func(done int)) (err error) {
+func (w *work) run(ctx context.Context, column int, runner Runner, tell func(done, of int)) (err error) {
+	progress := func(done int) { tell(done, w.question.Replicates) }
 	switch {
 	case w.question.Everyone:
 		return ctx.Err()

@@ -66,7 +66,7 @@ func TestAnyRunnerGivesTheAnswer(t *testing.T) {
 func elsewhere(t require.TestingT, job ask.Job) *ask.Maker {
 	order, err := job.Order()
 	require.NoError(t, err)
-	maker, err := ask.NewMaker(order)
+	maker, err := ask.NewMaker(context.Background(), order)
 	require.NoError(t, err)
 	return maker
 }
@@ -117,7 +117,7 @@ func anOrder(t require.TestingT) (order []byte) {
 
 func TestMakersRefuseOtherBytes(t *testing.T) {
 	good := anOrder(t)
-	_, err := ask.NewMaker(good)
+	_, err := ask.NewMaker(context.Background(), good)
 	require.NoError(t, err)
 	table := 12 + int(good[8]) + 256*int(good[9]) // behind the question
 	for name, c := range map[string]struct {
@@ -133,7 +133,7 @@ func TestMakersRefuseOtherBytes(t *testing.T) {
 		"one score":          {good[:table+16], "one usable score"},
 		"another question":   {slices.Concat(good[:12], []byte("[ "), good[14:]), "question"},
 	} {
-		_, err := ask.NewMaker(c.order)
+		_, err := ask.NewMaker(context.Background(), c.order)
 		assert.ErrorContains(t, err, c.error, name)
 	}
 }
@@ -145,38 +145,7 @@ func FuzzOrder(f *testing.F) {
 	f.Add(good[:len(good)-16])
 	f.Add([]byte("tgorder1"))
 	f.Fuzz(func(t *testing.T, order []byte) {
-		maker, err := ask.NewMaker(order)
+		maker, err := ask.NewMaker(context.Background(), order)
 		assert.NotEqual(t, maker == nil, err == nil)
 	})
-}
-
-// watcher holds progress to its promise: never back, and to the end.
-type watcher struct {
-	t           require.TestingT
-	done, total int
-}
-
-func (w *watcher) progress(done, total int) {
-	if w.total == 0 {
-		w.total = total
-	}
-	assert.Greater(w.t, done, w.done)
-	assert.Equal(w.t, w.total, total)
-	w.done = done
-}
-
-func (w *watcher) ended() {
-	assert.Positive(w.t, w.total)
-	assert.Equal(w.t, w.total, w.done)
-}
-
-func TestProgressGoesToTheEnd(t *testing.T) {
-	q := question(">=24")
-	for _, everyone := range []bool{false, true} {
-		q.Everyone = everyone
-		progress := watcher{t: t}
-		_, err := ask.Judge(context.Background(), q, twoColumns(), progress.progress)
-		require.NoError(t, err)
-		progress.ended()
-	}
 }

@@ -49,12 +49,17 @@ type sweepPlan struct {
 	regions    []int
 }
 
-// newWork plans the judging of one column with this count table; it refuses a column that has no
-// spread, a scale of too many steps, a cutoff at which no curve can be read and
-// more replicates than there is memory for.
-func newWork(question Question, column sample.Column, counts sample.Counts) (*work, error) {
+// newWork plans the judging of one column with this count table; it refuses a
+// column that has no spread, a scale of too many steps, a cutoff at which no
+// curve can be read and more replicates than there is memory for, and ends
+// with the context of its steps.
+func newWork(question Question, column sample.Column, counts sample.Counts, steps *steps) (*work, error) {
+	steps.of = 4
 	moments, err := describe(column.Name, counts)
 	if err != nil {
+		return nil, err
+	}
+	if err := steps.next(); err != nil {
 		return nil, err
 	}
 	normal := curve.FitNormal(moments)
@@ -78,18 +83,16 @@ func newWork(question Question, column sample.Column, counts sample.Counts) (*wo
 	if !w.countable() {
 		return nil, fmt.Errorf("the steps of %v on the scale of %s are too many to count; check the step and the range", w.scale.Step, column.Name)
 	}
+	if err := steps.next(); err != nil {
+		return nil, err
+	}
 	w.halfStep = question.HalfStep && w.scale.Step > 0
 	w.planSweeps()
-	for _, c := range question.Cutoffs {
-		for _, halfStep := range []bool{false, true} {
-			if halfStep && w.scale.Step == 0 {
-				continue
-			}
-			if !w.readable(c, halfStep) {
-				return nil, fmt.Errorf("the cutoff %s is too many SDs from the curve's mean to compute with; check it, the curve and the step", shortened(c))
-			}
-			w.region(c, halfStep)
-		}
+	if err := w.planCutoffs(); err != nil {
+		return nil, err
+	}
+	if err := steps.next(); err != nil {
+		return nil, err
 	}
 	w.plan.Table, w.plan.Estimates = w.table, w.table.Estimates(w.plan.Regions)
 	w.plan.Weights, w.plan.BandsOnly = w.tolerance.Weights(), !normal.Fitted
@@ -98,7 +101,10 @@ func newWork(question Question, column sample.Column, counts sample.Counts) (*wo
 	}
 	w.plan.Level, w.plan.Replicates = question.Level, question.Replicates
 	w.plan.Seed, w.plan.Workers = question.Seed, question.Workers
-	return w, w.affordable()
+	if err := w.affordable(); err != nil {
+		return nil, err
+	}
+	return w, steps.next()
 }
 
 // affordable is an error where the replicates' largest gaps, which are kept
@@ -158,6 +164,22 @@ func (w *work) add(ends []gap.Threshold) int {
 		w.plan.Regions = append(w.plan.Regions, w.table.Region(ends))
 	}
 	return index
+}
+
+// planCutoffs plans the regions of the cutoffs, in both readings.
+func (w *work) planCutoffs() error {
+	for _, c := range w.question.Cutoffs {
+		for _, halfStep := range []bool{false, true} {
+			if halfStep && w.scale.Step == 0 {
+				continue
+			}
+			if !w.readable(c, halfStep) {
+				return fmt.Errorf("the cutoff %s is too many SDs from the curve's mean to compute with; check it, the curve and the step", shortened(c))
+			}
+			w.region(c, halfStep)
+		}
+	}
+	return nil
 }
 
 // planSweeps plans a sweep for each side in use. Sides that part the people

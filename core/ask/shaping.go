@@ -29,8 +29,8 @@ func (w *work) shaping() shape.Plan {
 func (q Question) shapeReplicates() int { return min(shape.Replicates, q.Replicates) }
 
 // find looks at the shape of the scores.
-func (w *work) find(ctx context.Context, report func(done int)) (err error) {
-	if w.found, err = shape.Run(ctx, w.shaping(), report); err == nil && !w.question.Everyone {
+func (w *work) find(ctx context.Context, tell func(done, of int)) (err error) {
+	if w.found, err = shape.Run(ctx, w.shaping(), tell); err == nil && !w.question.Everyone {
 		w.tested, err = shape.Test(ctx, w.table)
 	}
 	return err

@@ -188,7 +188,7 @@ func largestBy(plan Plan, c *cells) [][]float64 {
 	plan.Level = 0.9
 	s := newStudy(plan, c)
 	for block := range plan.Blocks() {
-		s.block(context.Background(), block, plan.replicates(blocks{{block, block + 1}}))
+		s.block(context.Background(), block, plan.replicates(blocks{{block, block + 1}}), func(int) {})
 	}
 	all := make([][]float64, plan.places())
 	for i := range all {

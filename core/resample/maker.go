@@ -33,13 +33,16 @@ func (m *Maker) Make(ctx context.Context, from, to int, progress func(done int))
 	if from < 0 || to < from || to > m.plan.Blocks() {
 		return fmt.Errorf("there are no blocks %d to %d of %d", from, to, m.plan.Blocks())
 	}
+	done := 0
+	tell := func(more int) {
+		if done += more; progress != nil {
+			progress(done)
+		}
+	}
 	for block := from; block < to; block++ {
-		if !m.study.block(ctx, block, m.plan.replicates(blocks{{block, block + 1}})) {
+		if !m.study.block(ctx, block, m.plan.replicates(blocks{{block, block + 1}}), tell) {
 			m.broken = true
 			return ctx.Err()
-		}
-		if progress != nil {
-			progress(m.plan.replicates(blocks{{from, block + 1}}))
 		}
 	}
 	m.made = append(m.made, [2]int{from, to})

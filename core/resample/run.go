@@ -113,7 +113,7 @@ func (p Plan) Blocks() int { return (p.Replicates + blockSize - 1) / blockSize }
 // with the number of replicates done.
 func Run(ctx context.Context, plan Plan, progress func(done int)) (Quantiles, error) {
 	studies := newStudies(plan)
-	reports := make(chan report, len(studies))
+	reports := make(chan report)
 	var next atomic.Int64
 	for _, s := range studies {
 		go s.work(ctx, &next, reports)

@@ -121,21 +121,29 @@ func (s *study) work(ctx context.Context, next *atomic.Int64, reports chan<- rep
 	for {
 		block := int(next.Add(1)) - 1
 		size := s.plan.replicates(blocks{{block, block + 1}})
-		if size == 0 || !s.block(ctx, block, size) {
+		if size == 0 || !s.block(ctx, block, size, func(done int) { reports <- report{done: done} }) {
 			return
 		}
-		reports <- report{done: size}
 	}
 }
 
-// block runs the replicates of one block; false when the context ended.
-func (s *study) block(ctx context.Context, block, size int) bool {
+// toldAtOnce is how many replicates are made between two tellings of progress.
+const toldAtOnce = 16
+
+// block runs the replicates of one block, telling how many more are done;
+// false when the context ended.
+func (s *study) block(ctx context.Context, block, size int, tell func(done int)) bool {
 	s.stream.restart(s.plan.Seed, block)
-	for range size {
+	untold := 0
+	for i := range size {
 		if ctx.Err() != nil {
 			return false
 		}
 		s.replicate()
+		if untold++; untold == toldAtOnce || i == size-1 {
+			tell(untold)
+			untold = 0
+		}
 	}
 	return true
 }

@@ -53,7 +53,7 @@ type counting struct {
 
 func (c *counting) did(scores int) error {
 	c.done += scores
-	if c.progress != nil && scores > 0 {
+	if c.progress != nil && scores > 0 && c.ctx.Err() == nil {
 		c.progress(c.done, c.total)
 	}
 	return c.ctx.Err()

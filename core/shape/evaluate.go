@@ -18,6 +18,8 @@ type evaluator struct {
 	surplus  []float64 // of each heap
 	left     []int32   // counts without some of the people,
 	leftFrom []float64 // and how many of these are before each entry
+
+	pause func() bool // between passes over all entries, unless nil; false: leave the rest
 }
 
 // regions are one cutoff's: as judged, and as read with the half-step, by the
@@ -89,7 +91,13 @@ func (e *evaluator) evaluate(plan *Plan, count []int32, into *values) bool {
 	if !spread(&sums) {
 		return false
 	}
+	if !e.goOn() {
+		return false
+	}
 	into.moments = e.moments(count, sums.N, sums.Mean)
+	if !e.goOn() {
+		return false
+	}
 	for i := range into.cutoffs {
 		e.parts(plan, &e.regions[i], count, &sums, &into.cutoffs[i])
 	}
@@ -101,9 +109,14 @@ func (e *evaluator) evaluate(plan *Plan, count []int32, into *values) bool {
 			e.withoutOne(Farthest, e.features.Farthest, count, into)
 		}
 	}
+	if !e.goOn() {
+		return false
+	}
 	e.withoutHeaps(plan, count, all, into)
 	return true
 }
+
+func (e *evaluator) goOn() bool { return e.pause == nil || e.pause() }
 
 // power are sums of powers of the entries.
 type power struct{ s0, s1, s2, s3, s4 float64 }

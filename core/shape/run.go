@@ -12,29 +12,63 @@ import (
 // Run finds the features of the plan's sample and splits the gap at each
 // cutoff. It returns the context's error soon after the context ends, having
 // stopped all its goroutines. progress, which may be nil, is called from the
-// calling goroutine with the number of replicates done.
-func Run(ctx context.Context, plan Plan, progress func(done int)) (Findings, error) {
+// calling goroutine with how much of the work is done.
+func Run(ctx context.Context, plan Plan, progress func(done, of int)) (Findings, error) {
+	work := preparation{ctx: ctx, progress: progress, of: mostPreparing + plan.Replicates}
 	features := Find(plan.Table, plan.Scale)
 	scores := newSpans(plan.fitted(), plan.Scale.Step)
+	work.step()
 	whole := newEvaluator(&plan, scores, features)
+	whole.pause = work.step
+	work.step()
 	count := make([]int32, len(plan.Table.Counts.Count))
 	for i, people := range plan.Table.Counts.Count {
 		count[i] = int32(people)
 	}
 	estimates := values{cutoffs: make([]parts, len(plan.Cutoffs))}
 	whole.evaluate(&plan, count, &estimates)
-	if plan.Everyone || ctx.Err() != nil {
-		return assemble(&plan, features, &estimates, nil, scores.bins), ctx.Err()
+	if ctx.Err() != nil {
+		return Findings{}, ctx.Err()
+	}
+	if plan.Everyone {
+		work.tell(work.of)
+		return assemble(&plan, features, &estimates, nil, scores.bins), nil
 	}
 	if len(count) > mostEntries {
 		scores = scores.binned(whole.edges())
+		work.step()
 	}
 	features.Outlier = false // one score has no interval
-	replicates, err := draw(ctx, &plan, func() *evaluator { return newEvaluator(&plan, scores, features) }, progress)
+	replicates, err := draw(ctx, &plan, func() *evaluator { return newEvaluator(&plan, scores, features) },
+		func(done int) { work.tell(mostPreparing + done) })
 	if err != nil {
 		return Findings{}, err
 	}
 	return assemble(&plan, whole.features, &estimates, replicates, scores.bins), nil
+}
+
+// mostPreparing is more steps than are taken before the first replicate; in
+// progress each counts as one.
+const mostPreparing = 16
+
+// preparation is the work before the replicates. Of many distinct scores each
+// step takes some milliseconds.
+type preparation struct {
+	ctx      context.Context
+	progress func(done, of int)
+	done, of int
+}
+
+// step comes after each step; false when the context has ended.
+func (p *preparation) step() bool {
+	p.tell(p.done + 1)
+	return p.ctx.Err() == nil
+}
+
+func (p *preparation) tell(done int) {
+	if p.done = done; p.progress != nil && p.ctx.Err() == nil {
+		p.progress(done, p.of)
+	}
 }
 
 // edges are the entries at which something begins that is counted.
@@ -66,7 +100,7 @@ func draw(ctx context.Context, plan *Plan, newEvaluator func() *evaluator, progr
 	workers = min(workers, (plan.Replicates+blockSize-1)/blockSize)
 	first := newEvaluator()
 	d := &draws{plan: plan, drawer: resample.NewDrawer(first.table.Counts),
-		all: make([]values, plan.Replicates), spread: make([]bool, plan.Replicates), reports: make(chan report, workers)}
+		all: make([]values, plan.Replicates), spread: make([]bool, plan.Replicates), reports: make(chan report)}
 	go d.work(ctx, first)
 	for range workers - 1 {
 		go d.work(ctx, newEvaluator())
@@ -80,7 +114,7 @@ func draw(ctx context.Context, plan *Plan, newEvaluator func() *evaluator, progr
 			if r.failure != nil {
 				failure = r.failure
 			}
-		case progress != nil:
+		default:
 			done += r.done
 			progress(done)
 		}

@@ -104,17 +104,19 @@ func TestTheSameForAnyWorkers(t *testing.T) {
 
 func TestCancelAndProgress(t *testing.T) {
 	p := planned(testdata.Open("pima", "age"), sample.StepChoice{}, nil, false, atLeast(25)...)
+	for _, p.Everyone = range []bool{false, true} {
+		last, total := 0, 0
+		_, err := Run(context.Background(), p, func(done, of int) {
+			assert.Greater(t, done, last)
+			last, total = done, of
+		})
+		require.NoError(t, err)
+		assert.Equal(t, total, last)
+	}
 	p.Everyone = false
-	last := 0
-	_, err := Run(context.Background(), p, func(done int) {
-		assert.Greater(t, done, last)
-		last = done
-	})
-	require.NoError(t, err)
-	assert.Equal(t, p.Replicates, last)
 	ctx, cancel := context.WithCancel(context.Background())
 	p.Replicates = 1 << 20
-	_, err = Run(ctx, p, func(int) { cancel() })
+	_, err := Run(ctx, p, func(int, int) { cancel() })
 	assert.ErrorIs(t, err, context.Canceled)
 	_, err = Run(ctx, p, nil)
 	assert.ErrorIs(t, err, context.Canceled)

@@ -50,6 +50,9 @@ func (e *evaluator) withoutOne(kind Kind, score float64, count []int32, into *va
 
 // without finds what each gap loses when only the people in left are there.
 func (e *evaluator) without(kind Kind, into *values) {
+	if !e.goOn() {
+		return
+	}
 	all := e.sum(e.left, e.leftFrom)
 	sums := all.sums()
 	for i := range into.cutoffs {
