@@ -14,13 +14,18 @@ import (
 
 // Files holds everything that tests of core read.
 //
-//go:embed open expected nist interval shape worked calibration/*.csv
+//go:embed open expected nist interval shape worked calibration/*.csv bench/scores.csv
 var Files embed.FS
 
 // Open returns the values of one column of the open data, without the blank
 // cells.
 func Open(dataset, column string) []float64 {
-	file, err := Files.Open("open/" + dataset + ".csv")
+	return Column("open/"+dataset+".csv", column)
+}
+
+// Column returns the values of one column of a file, without the blank cells.
+func Column(path, column string) []float64 {
+	file, err := Files.Open(path)
 	must(err)
 	rows, err := csv.NewReader(file).ReadAll()
 	must(err)
@@ -39,7 +44,7 @@ func Open(dataset, column string) []float64 {
 		}
 		return values
 	}
-	panic("no column " + column + " in " + dataset)
+	panic("no column " + column + " in " + path)
 }
 
 // NIST returns the n values of one NIST StRD univariate data set: the file's

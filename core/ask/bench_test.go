@@ -36,6 +36,7 @@ func BenchmarkJudge(b *testing.B) {
 		{"1000-whole", normalScores(1_000, 8, true), []string{">=60", "<=40"}},
 		{"1000000-whole", normalScores(1_000_000, 6, true), []string{">=60", "<=40"}},
 		{"10000-distinct", normalScores(10_000, 10, false), []string{">=60", "<=40"}},
+		{"100000-distinct", normalScores(100_000, 10, false), []string{">=60", ">=40"}},
 	} {
 		q := ask.NewQuestion()
 		q.Cutoffs = question(c.cutoffs...).Cutoffs

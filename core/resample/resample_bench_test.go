@@ -9,6 +9,7 @@ import (
 	"tailgap/core/curve"
 	"tailgap/core/gap"
 	"tailgap/core/sample"
+	"tailgap/testdata"
 )
 
 // wholeNumbers are n scores with about 50 distinct values.
@@ -33,6 +34,37 @@ func planFor(scores []float64, workers int) Plan {
 	plan.Groups = [][2]int{{0, len(plan.Regions)}}
 	plan.Estimates = table.Estimates(plan.Regions)
 	return plan
+}
+
+// One cutoff's interval of the scores that testdata/bench times others with.
+func BenchmarkOneCutoff(b *testing.B) {
+	counts := sample.Count(testdata.Column("bench/scores.csv", "score"))
+	moments := counts.Moments()
+	table := gap.NewTable(counts, moments, curve.FitNormal(moments))
+	plan := Plan{Table: table, Weights: []float64{1}, Level: 0.95, Replicates: 10_000, Seed: 1, Workers: 1}
+	plan.Regions = []gap.Region{table.Tail(gap.Threshold{At: 60, Point: 60})}
+	for b.Loop() {
+		plan.Estimates = table.Estimates(plan.Regions)
+		quantiles, err := Run(context.Background(), plan, nil)
+		if err != nil {
+			b.Fatal(err)
+		}
+		IntervalOf(plan.Estimates[0], 1, quantiles.Region[0][0], StudentT(counts.N, plan.Level), true)
+	}
+}
+
+// The whole curve of the same scores: every threshold of one sweep, with band.
+func BenchmarkWholeCurve(b *testing.B) {
+	for _, workers := range []int{1, 2} {
+		plan := planFor(testdata.Column("bench/scores.csv", "score"), workers)
+		b.Run(fmt.Sprintf("workers=%d", workers), func(b *testing.B) {
+			for b.Loop() {
+				if _, err := Run(context.Background(), plan, nil); err != nil {
+					b.Fatal(err)
+				}
+			}
+		})
+	}
 }
 
 func BenchmarkRun(b *testing.B) {
