@@ -6,7 +6,7 @@ WASM     := GOOS=js GOARCH=wasm
 SUDO     := $(shell [ "$$(id -u)" = 0 ] || echo sudo)
 INSTALL  := $(SUDO) apt-get update && $(SUDO) apt-get install -y
 
-.PHONY: build page demo test tools lint wasm-test bench calibrate fuzz fmt reference clean
+.PHONY: build page demo test tools lint wasm-test bench compare calibrate fuzz fmt reference clean
 .DEFAULT_GOAL := build
 
 ## build: bin/tailgap, with the page in it, and dist/tailgap.html
@@ -70,6 +70,10 @@ fuzz:
 			$(GO) test -run '^$$' -fuzz "^$$name\$$" -fuzztime $(FUZZTIME) "./$$(dirname "$$file")"; \
 		done; \
 	done
+
+## compare: time tailgap beside R's boot and SciPy, and as WebAssembly; needs R with boot, and SciPy
+compare:
+	cd testdata/bench && python3 run.py
 
 ## calibrate: simulate how often intervals, bands and verdicts are right, into testdata/calibration; most of an hour
 calibrate:

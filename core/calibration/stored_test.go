@@ -94,11 +94,14 @@ func TestStudyKeepsItsPromises(t *testing.T) {
 }
 
 // Where the tolerance is the true gap itself, "holds" is wrong no more often
-// than the interval misses on that side, and in 2.5% of the samples at most at
-// the median cell.
+// than the interval misses on that side, and at the median cell no more often
+// than half of what the level leaves: in 2.5% of the samples at 0.95.
 func TestVerdictsAtTheBoundary(t *testing.T) {
 	errors := calibration.Groups()[len(calibration.Groups())-1]
-	for _, study := range stored(t, "") {
+	results := stored(t, "")
+	for _, named := range calibration.Full() {
+		study := results[named.Name]
+		require.NotEmpty(t, study.Tallies, named.Name)
 		for _, tally := range study.Tallies {
 			for _, c := range tally.Cells {
 				miss := c.TooLow // the tolerance's upper edge is the true gap
@@ -112,7 +115,7 @@ func TestVerdictsAtTheBoundary(t *testing.T) {
 		for _, n := range []int{20, 50, 100, 300, 1000, 5000} {
 			want := func(t calibration.Tally) bool { return t.N == n && !errors.Has(t) }
 			middle, _ := calibration.Wrong(study.Tallies, want, func(c calibration.Cell) int { return c.FalseHolds })
-			assert.False(t, middle > 0.025, "%s, n = %d: %v", study.Name, n, middle)
+			assert.False(t, middle > (1-named.Level)/2, "%s, n = %d: %v", study.Name, n, middle)
 		}
 	}
 }
