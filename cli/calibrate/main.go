@@ -81,12 +81,12 @@ func chosen(only string) ([]calibration.Named, error) {
 }
 
 // amended are the stored results with one of them new.
-func amended(out string, new calibration.Result) ([]calibration.Result, error) {
+func amended(out string, fresh calibration.Result) ([]calibration.Result, error) {
 	var tables [2]*os.File
 	for i, name := range []string{"cells.csv", "bands.csv"} {
 		file, err := os.Open(filepath.Join(out, name))
 		if errors.Is(err, fs.ErrNotExist) {
-			return []calibration.Result{new}, nil
+			return []calibration.Result{fresh}, nil
 		}
 		if err != nil {
 			return nil, err
@@ -99,7 +99,7 @@ func amended(out string, new calibration.Result) ([]calibration.Result, error) {
 		return nil, err
 	}
 	byName := map[string]calibration.Result{}
-	for _, r := range append(stored, new) {
+	for _, r := range append(stored, fresh) {
 		byName[r.Name] = r
 	}
 	var results []calibration.Result

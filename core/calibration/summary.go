@@ -154,10 +154,10 @@ func mainTables(page *strings.Builder, tallies []Tally) {
 		page.WriteString("\n")
 	}
 	page.WriteString("\nVerdicts when the tolerance is the true gap itself, in percent of the samples; false trust: some threshold in the trusted range though its gap is beyond 2 points. Without the gross errors.\n\n")
-	errors := Groups()[len(Groups())-1]
+	grossErrors := Groups()[len(Groups())-1]
 	page.WriteString("| n | false holds, median cell | largest | false fails, median cell | largest | false trust, largest |\n| --- | --- | --- | --- | --- | --- |\n")
 	for _, n := range sizes {
-		want := func(t Tally) bool { return t.N == n && !errors.Has(t) }
+		want := func(t Tally) bool { return t.N == n && !grossErrors.Has(t) }
 		holds, mostHolds := Wrong(tallies, want, func(c Cell) int { return c.FalseHolds })
 		fails, mostFails := Wrong(tallies, want, func(c Cell) int { return c.FalseFails })
 		trust := 0.0

@@ -164,12 +164,12 @@ func stack(laid []flag) int {
 		}
 	}
 	for i := range laid {
-		for clear := false; !clear; {
-			clear = true
+		for free := false; !free; {
+			free = true
 			for j := range laid[:i] {
 				if laid[i].row == laid[j].row && laid[i].touches(&laid[j]) {
 					laid[i].row++
-					clear = false
+					free = false
 				}
 			}
 		}

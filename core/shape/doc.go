@@ -55,6 +55,7 @@
 //
 // testdata/shape/README.md has the coverage. Skewness and kurtosis of strongly
 // skewed or heavy-tailed scores are badly known from any sample; their
-// intervals are too short there, and end where those of n scores must:
-// |skewness| at (n-2)/√(n-1), kurtosis at 1 and n-2+1/(n-1).
+// intervals are too short there, on the side away from 0 (core/words leaves
+// that limit out), and end where those of n scores must: |skewness| at
+// (n-2)/√(n-1), kurtosis at 1 and n-2+1/(n-1).
 package shape

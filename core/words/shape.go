@@ -19,13 +19,13 @@ const (
 	// below which an effect of no part of its own (a pile's, a heap's) goes
 	// unsaid.
 	leastPart = 0.1
-	// leastShape is the skewness or kurtosis from which on it is called long
-	// or heavy where everyone was counted (common practice).
+	// leastShape is the skewness from which on a tail is called long where
+	// everyone was counted (common practice).
 	leastShape = 0.5
 )
 
 // Shape says what the shape of the scores does to the gaps at the cutoffs, in
-// six sentences at most: "Skewness 0.92 (95% interval 0.61 to 1.23): the long
+// six sentences at most: "Skewness 0.92 (95% interval 0.61 or higher): the long
 // upper tail accounts for 2.1 of the 4.4 points too low at 45 or above (1.2 to
 // 3.0)." Only what is there gets a sentence.
 func Shape(q ask.Question, r ask.Result) []string {
@@ -37,7 +37,7 @@ func Shape(q ask.Question, r ask.Result) []string {
 	for _, one := range []said{
 		parts(q, r, givenMean(r), func(c ask.ShapeAt) *ask.Effect { return c.MeanAndSD }),
 		parts(q, r, asymmetry(q, s.Skewness), func(c ask.ShapeAt) *ask.Effect { return c.Asymmetry }),
-		parts(q, r, tails(q, s.ExcessKurtosis), func(c ask.ShapeAt) *ask.Effect { return c.Rest }),
+		parts(q, r, tails(q, s), func(c ask.ShapeAt) *ask.Effect { return c.Rest }),
 		parts(q, r, lead{"", "reading the curve without the half-step accounts for"}, func(c ask.ShapeAt) *ask.Effect { return c.HalfStep }),
 		without(q, r, piled(s.Floor, "lowest"), func(c ask.ShapeAt) *ask.Effect { return c.Floor }),
 		without(q, r, piled(s.Ceiling, "highest"), func(c ask.ShapeAt) *ask.Effect { return c.Ceiling }),
@@ -82,42 +82,53 @@ func givenMean(r ask.Result) lead {
 
 func asymmetry(q ask.Question, skewness ask.Measured) lead {
 	cause := "asymmetry accounts for"
-	switch sure, up := direction(q, skewness.Value, skewness.Low, skewness.High); {
-	case sure && up:
+	sure := sign(skewness)
+	if q.Everyone && math.Abs(skewness.Value) >= leastShape {
+		sure = skewness.Value
+	}
+	switch {
+	case sure > 0:
 		cause = "the long upper tail accounts for"
-	case sure:
+	case sure < 0:
 		cause = "the long lower tail accounts for"
 	}
-	return lead{"skewness " + figure(q, skewness), cause}
+	return lead{"skewness " + figure(q, skewness, sure), cause}
 }
 
-func tails(q ask.Question, kurtosis ask.Measured) lead {
-	cause := "tails and peak together account for"
-	switch sure, up := direction(q, kurtosis.Value, kurtosis.Low, kurtosis.High); {
-	case sure && up:
-		cause = "heavy tails account for"
-	case sure:
-		cause = "light tails account for"
+// tails calls them neither heavy nor light: a floor or two groups make a
+// kurtosis too.
+func tails(q ask.Question, s *ask.Shape) lead {
+	open := math.Max(math.Abs(sign(s.Skewness)), sign(s.ExcessKurtosis))
+	return lead{"excess kurtosis " + figure(q, s.ExcessKurtosis, open), "tails and peak together account for"}
+}
+
+// sign is the side of 0 on which a skewness or kurtosis surely lies, 1 or -1;
+// 0 where neither is sure.
+func sign(m ask.Measured) float64 {
+	switch {
+	case m.Low != nil && *m.Low > 0:
+		return 1
+	case m.High != nil && *m.High < 0:
+		return -1
 	}
-	return lead{"excess kurtosis " + figure(q, kurtosis), cause}
+	return 0
 }
 
-// figure prints a skewness or a kurtosis with its interval.
-func figure(q ask.Question, m ask.Measured) string {
+// figure prints a skewness or a kurtosis with its interval, which is open
+// upwards or, below 0, downwards: of skewed scores, and of heavy tails, a
+// sample shows too little, and the far limit does not keep its promise.
+func figure(q ask.Question, m ask.Measured, open float64) string {
 	if m.Low == nil || m.High == nil {
 		return shape(m.Value)
 	}
-	return shape(m.Value) + " (" + Level(q.Level) + " interval " + shape(*m.Low) + " to " + shape(*m.High) + ")"
-}
-
-// direction is whether the side of a skewness or kurtosis is sure, and whether
-// it is above zero. When everyone was counted all sides are, and it is whether
-// it is worth a word; without an interval none is.
-func direction(q ask.Question, value float64, low, high *float64) (sure, up bool) {
-	if low == nil || high == nil {
-		return q.Everyone && math.Abs(value) >= leastShape, value > 0
+	interval := shape(*m.Low) + " to " + shape(*m.High)
+	switch {
+	case open > 0:
+		interval = shape(*m.Low) + " or higher"
+	case open < 0:
+		interval = shape(*m.High) + " or lower"
 	}
-	return *low > 0 || *high < 0, value > 0
+	return shape(m.Value) + " (" + Level(q.Level) + " interval " + interval + ")"
 }
 
 // named is an effect at one cutoff, to be said.
@@ -126,8 +137,8 @@ type named struct {
 	effect  ask.Effect
 }
 
-// clear is true for an effect whose interval leaves 0 out.
-func clear(e ask.Effect) bool { return e.Low != nil && e.High != nil && (*e.Low > 0 || *e.High < 0) }
+// certain is true for an effect whose interval leaves 0 out.
+func certain(e ask.Effect) bool { return e.Low != nil && e.High != nil && (*e.Low > 0 || *e.High < 0) }
 
 // sorted are the effects that apply: the sure ones, largest first, and the
 // others in the order of the cutoffs. What needs no interval, as exact says or
@@ -139,7 +150,7 @@ func sorted(q ask.Question, r ask.Result, of func(ask.ShapeAt) *ask.Effect, exac
 			continue
 		}
 		one := named{r.Cutoffs[i], *e}
-		if clear(*e) || (exact || q.Everyone) && e.Low == nil && !one.slight() {
+		if certain(*e) || (exact || q.Everyone) && e.Low == nil && !one.slight() {
 			sure = append(sure, one)
 		} else {
 			unsure = append(unsure, one)

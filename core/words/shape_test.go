@@ -43,9 +43,9 @@ func TestShape(t *testing.T) {
 		"30..40": {Asymmetry: of(0.2, -1.2, 1.7), Rest: of(5.8, 4, 7), HalfStep: of(0.02, 0.01, 0.03)},
 	}, ">=45", "<=20", "30..40")
 	assert.Equal(t, []string{
-		"Skewness 0.92 (95% interval 0.61 to 1.23): the long upper tail accounts for 2.1 of the 4.4 points too low at 45 or above (1.2 to 3.0); " +
+		"Skewness 0.92 (95% interval 0.61 or higher): the long upper tail accounts for 2.1 of the 4.4 points too low at 45 or above (1.2 to 3.0); " +
 			"3.4 points too high at 20 or below (2.2 to 4.6), where the whole gap is 2.5 points too high; no sure part from 30 to 40.",
-		"Excess kurtosis 0.10 (95% interval -0.30 to 0.60): tails and peak together account for 5.8 of the 6.0 points too high from 30 to 40 (4.0 to 7.0); " +
+		"Excess kurtosis 0.10 (95% interval -0.30 or higher): tails and peak together account for 5.8 of the 6.0 points too high from 30 to 40 (4.0 to 7.0); " +
 			"no sure part at 45 or above and at 20 or below.",
 		"Reading the curve without the half-step accounts for 0.8 of the 4.4 points too low at 45 or above (0.7 to 0.9).",
 	}, words.Shape(q, r))
@@ -53,16 +53,21 @@ func TestShape(t *testing.T) {
 	r.Shape.Skewness, r.Shape.ExcessKurtosis = measured(-0.9, -1.2, -0.6), measured(-1.1, -1.3, -0.8)
 	said := strings.Join(words.Shape(q, r), " ")
 	assert.Contains(t, said, "the long lower tail accounts for")
-	assert.Contains(t, said, "light tails account for")
+	assert.Contains(t, said, "Skewness -0.90 (95% interval -0.60 or lower): ")
+	assert.Contains(t, said, "Excess kurtosis -1.10 (95% interval -1.30 or higher): tails and peak together account for")
 	r.Shape.Skewness = measured(0.1, -0.2, 0.4)
-	assert.Contains(t, strings.Join(words.Shape(q, r), " "), "): asymmetry accounts for")
+	said = strings.Join(words.Shape(q, r), " ")
+	assert.Contains(t, said, "Skewness 0.10 (95% interval -0.20 to 0.40): asymmetry accounts for")
+	assert.Contains(t, said, "Excess kurtosis -1.10 (95% interval -1.30 to -0.80): tails and peak together account for")
+	r.Shape.ExcessKurtosis = measured(2.1, 0.3, 3.9)
+	assert.Contains(t, strings.Join(words.Shape(q, r), " "), "Excess kurtosis 2.10 (95% interval 0.30 or higher): tails and peak together account for")
 }
 
 func TestShapeOfNothing(t *testing.T) {
 	q := ask.NewQuestion()
 	assert.Empty(t, words.Shape(q, ask.Result{}))
 	r := shaped(t, nil, nil)
-	assert.Equal(t, []string{"Skewness 0.92 (95% interval 0.61 to 1.23).", "Excess kurtosis 0.10 (95% interval -0.30 to 0.60)."}, words.Shape(q, r))
+	assert.Equal(t, []string{"Skewness 0.92 (95% interval 0.61 or higher).", "Excess kurtosis 0.10 (95% interval -0.30 or higher)."}, words.Shape(q, r))
 	r.Shape.Cutoffs = []ask.ShapeAt{{}}
 	assert.Empty(t, words.Shape(q, r), "the parts of no cutoff")
 }
@@ -121,7 +126,7 @@ func TestManyCutoffs(t *testing.T) {
 	said := words.Shape(q, shaped(t, gaps, effects, order...))
 	assert.Contains(t, said[0], "10.0 of the 10.0 points too high at 10 or above (9.5 to 10.5), 9.0 of the 10.0 points too high at 9 or above (8.5 to 9.5) and "+
 		"8.0 of the 10.0 points too high at 8 or above (7.5 to 8.5), and less at 2 other cutoffs; no sure part at 5 others.")
-	assert.Equal(t, "Excess kurtosis 0.10 (95% interval -0.30 to 0.60): no sure part at any cutoff.", said[1])
+	assert.Equal(t, "Excess kurtosis 0.10 (95% interval -0.30 or higher): no sure part at any cutoff.", said[1])
 }
 
 func TestNormality(t *testing.T) {
@@ -150,12 +155,14 @@ func TestWorm(t *testing.T) {
 	r := ask.Result{Shape: &ask.Shape{Worm: w}}
 	assert.Equal(t, []string{
 		"Higher than the curve has them, beyond the 95% limits of a score by itself: the scores at 4; lower: those from 1 to 2 and at 6.",
-		"The curve is furthest off at 6, a score 0.90 SDs lower than the curve has it.",
+		"The curve is most clearly off at 6, a score 0.90 SDs lower than the curve has it.",
 	}, words.Worm(q, r))
+	r.Shape.Worm.Limit = []float64{0.5, 0.3, 0.3, 0.3, 0.3, 0.8} // widest at the ends
+	assert.Equal(t, "The curve is most clearly off at 4, a score 0.50 SDs higher than the curve has it.", words.Worm(q, r)[1])
 	r.Shape.Worm.Limit = nil
-	assert.Equal(t, []string{"The curve is furthest off at 6, a score 0.90 SDs lower than the curve has it."}, words.Worm(q, r))
+	assert.Equal(t, []string{"The curve is most clearly off at 6, a score 0.90 SDs lower than the curve has it."}, words.Worm(q, r))
 	r.Shape.Worm.Limit = []float64{1, 1, 1, 1, 1, 1}
-	assert.Equal(t, "No score lies beyond the 95% limits of a score by itself.", words.Worm(q, r)[0])
+	assert.Equal(t, []string{"No score lies beyond the 95% limits of a score by itself."}, words.Worm(q, r))
 	r.Shape.Worm.Deviation = r.Shape.Worm.Deviation[:3]
 	assert.Empty(t, words.Worm(q, r))
 	assert.Empty(t, words.Worm(q, ask.Result{}))

@@ -119,8 +119,8 @@ func failedBy(q ask.Question, f ask.Finding) string {
 
 // printAlike is true where a gap is printed with the digits of a limit.
 func printAlike(gap, at float64, decimals int) bool {
-	print := func(x float64) string { return strconv.FormatFloat(math.Abs(x), 'f', decimals, 64) }
-	return print(gap) == print(at)
+	printed := func(x float64) string { return strconv.FormatFloat(math.Abs(x), 'f', decimals, 64) }
+	return printed(gap) == printed(at)
 }
 
 // reachedLimits are the limits of the tolerance that the interval straddles:

@@ -10,8 +10,8 @@ import (
 
 // Worm says what a worm plot shows: "Higher than the curve has them, by more
 // than the 95% limits: the scores from 19 to 33. Lower: those from 0 to 13 and
-// from 34 to 37. The curve is furthest off at 37, which is 0.71 SDs lower than
-// the curve has it." Empty where there is no worm.
+// from 34 to 37. The curve is most clearly off at 37, a score
+// 0.71 SDs lower than the curve has it." Empty where there is no worm.
 func Worm(q ask.Question, r ask.Result) []string {
 	if r.Shape == nil {
 		return nil
@@ -36,20 +36,31 @@ func Worm(q ask.Question, r ask.Result) []string {
 			all = append(all, "Higher than the curve has them, "+beyond+": the scores "+runsOf(higher)+"; lower: those "+runsOf(lower)+".")
 		}
 	}
-	furthest := 0
-	for i, deviation := range w.Deviation {
-		if math.Abs(deviation) > math.Abs(w.Deviation[furthest]) {
-			furthest = i
-		}
-	}
-	if off := w.Deviation[furthest]; off != 0 {
+	if at, ok := clearest(w); ok {
 		direction := "higher"
-		if off < 0 {
+		if w.Deviation[at] < 0 {
 			direction = "lower"
 		}
-		all = append(all, "The curve is furthest off at "+Number(w.Score[furthest])+", a score "+unsigned(off, 2)+" SDs "+direction+" than the curve has it.")
+		all = append(all, "The curve is most clearly off at "+Number(w.Score[at])+", a score "+unsigned(w.Deviation[at], 2)+" SDs "+direction+" than the curve has it.")
 	}
 	return all
+}
+
+// clearest is the mark that is the most times as far off as its limit, if it is
+// beyond it: at the ends, where the limits are widest, marks are far off by
+// chance. Without limits it is the one that is furthest off.
+func clearest(w ask.Worm) (at int, ok bool) {
+	most := 0.0
+	for i, deviation := range w.Deviation {
+		off := math.Abs(deviation)
+		if w.Limit != nil {
+			off /= w.Limit[i]
+		}
+		if off > most {
+			at, most = i, off
+		}
+	}
+	return at, most > 1 || w.Limit == nil && most > 0
 }
 
 // ReadWorm says how to read a worm plot. A mark stands for half of the people
