@@ -32,6 +32,27 @@ func TestUpperTail(t *testing.T) {
 	}
 }
 
+// Wichura (1988), Algorithm AS 241, test values in its text; 0.975 is in any
+// table; the last two are R 4.2.2's qnorm(share, lower.tail = FALSE).
+func TestQuantile(t *testing.T) {
+	for _, want := range []struct{ share, z float64 }{
+		{0.25, 0.6744897501960817},
+		{0.001, 3.090232306167814},
+		{1e-20, 9.262340089798408},
+		{0.975, -1.959963984540054},
+		{1e-100, 21.273453560965319},
+		{1e-300, 37.047096299361201},
+	} {
+		assert.InEpsilon(t, want.z, curve.Quantile(want.share), 1e-14, want.share)
+		assert.InEpsilon(t, want.share, curve.UpperTail(curve.Quantile(want.share)), 1e-12, want.share)
+	}
+	assert.Zero(t, curve.Quantile(0.5))
+	for share := 0.001; share < 0.5; share += 0.001 {
+		assert.InDelta(t, share, curve.UpperTail(curve.Quantile(share)), 1e-15)
+		assert.InDelta(t, 1-share, curve.UpperTail(curve.Quantile(1-share)), 1e-15)
+	}
+}
+
 func TestTailAgreesWithErfc(t *testing.T) {
 	for z := -36.0; z <= 36; z += 1.0 / 1024 {
 		share, density := curve.Tail(z)

@@ -1,6 +1,10 @@
 package curve
 
-import "math"
+import (
+	"math"
+
+	"gonum.org/v1/gonum/mathext"
+)
 
 // Tail is the share of a standard normal curve at or beyond z together with
 // its density there. Both come from one exponential, which makes this the
@@ -63,5 +67,6 @@ func LogTail(z float64) float64 {
 }
 
 // Quantile is the z beyond which lies that share of a standard normal curve:
-// the z with UpperTail(z) = share, for a share in (0,1).
-func Quantile(share float64) float64 { return math.Sqrt2 * math.Erfcinv(2*share) }
+// the z with UpperTail(z) = share, with all its digits for any share in (0,1),
+// the smallest too. +Inf for 0, -Inf for 1.
+func Quantile(share float64) float64 { return -mathext.NormalQuantile(share) }

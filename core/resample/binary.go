@@ -13,6 +13,9 @@ import (
 const (
 	partFormat = "tgpart02"
 	partHeader = len(partFormat) + 8 + 3*4
+	// mostEmpty is how many places without a value are read. What a place takes
+	// is not in the bytes then to bound it.
+	mostEmpty = 1 << 16
 )
 
 // MarshalBinary implements encoding.BinaryMarshaler. It fails for a part that
@@ -51,7 +54,7 @@ func (p *Part) UnmarshalBinary(data []byte) error {
 	number := func(i int) uint64 { return uint64(binary.LittleEndian.Uint32(header[8+4*i:])) }
 	ranges, count, places := number(0), number(1), number(2)
 	// count and places are below 2³²: their product fits, eight times it may not
-	if places == 0 || len(body)%8 != 0 || ranges > uint64(len(body)/8) || count*places != uint64(len(body)/8)-ranges || count == 0 && places > 1<<24 {
+	if places == 0 || len(body)%8 != 0 || ranges > uint64(len(body)/8) || count*places != uint64(len(body)/8)-ranges || count == 0 && places > mostEmpty {
 		return wrong
 	}
 	part := Part{plan: binary.LittleEndian.Uint64(header), kept: make([][]float64, places)}

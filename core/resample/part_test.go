@@ -2,6 +2,7 @@ package resample
 
 import (
 	"context"
+	"encoding/binary"
 	"math/rand/v2"
 	"slices"
 	"testing"
@@ -167,6 +168,13 @@ func TestPartsRefuseOtherBytes(t *testing.T) {
 		"not a number":      func(data []byte) []byte { copy(data[len(data)-2:], "\xff\xff"); return data },
 		"from after to":     func(data []byte) []byte { data[partHeader] = 3; return data },
 		"too many ranges":   func(data []byte) []byte { data[16] = 255; return data },
+		"places of nothing": func(data []byte) []byte {
+			data = data[:partHeader]
+			binary.LittleEndian.PutUint32(data[16:], 0)
+			binary.LittleEndian.PutUint32(data[20:], 0)
+			binary.LittleEndian.PutUint32(data[24:], mostEmpty+1)
+			return data
+		},
 	} {
 		var part Part
 		assert.Error(t, part.UnmarshalBinary(change(slices.Clone(good))), name)

@@ -161,9 +161,14 @@ func newStudies(plan Plan) []*study {
 	return studies
 }
 
-// upperRank is how many of the largest of b replicates to keep so that the
-// smallest kept is their quantile: the value of rank ⌈(b+1)·level⌉.
-func upperRank(b int, level float64) int {
-	rank := int(math.Ceil(float64(b+1)*level - 1e-9))
-	return b - min(max(rank, 1), b) + 1
+// Rank is the rank from below of that one of b sorted replicates which is their
+// quantile at a level: ⌈(b+1)·level⌉, the first or the last where there is none.
+// From above it is the quantile at 1-level, so that both ends of an interval are
+// as far in.
+func Rank(b int, level float64) int {
+	return min(max(int(math.Ceil(float64(b+1)*level-1e-9)), 1), b)
 }
+
+// upperRank is how many of the largest of b replicates to keep so that the
+// smallest kept is their quantile.
+func upperRank(b int, level float64) int { return b - Rank(b, level) + 1 }

@@ -30,7 +30,8 @@
 // would not move, there is none. The effect of heaps is the gap less the gap
 // with each heap's surplus over the mean of the scores around it spread evenly
 // over those scores and its own: the attainable scores up to half the heaps'
-// spacing away, those at exactly half of it with half the weight. These
+// spacing away, those at exactly half of it with half the weight and a floor or
+// ceiling itself left out. These
 // effects overlap and do not add up.
 //
 // # Intervals

@@ -142,7 +142,7 @@ func (a *assembly) studentised(value, variance func(*values) float64) *resample.
 		return nil
 	}
 	slices.Sort(squares)
-	margin := math.Max(a.t, math.Sqrt(quantile(squares, a.plan.Level))) * math.Sqrt(least/a.n)
+	margin := math.Max(a.t, math.Sqrt(squares[resample.Rank(len(squares), a.plan.Level)-1])) * math.Sqrt(least/a.n)
 	return &resample.Interval{Low: estimate - margin, High: estimate + margin}
 }
 
@@ -160,16 +160,9 @@ func (a *assembly) hull(value func(*values) float64, extra float64) *resample.In
 	for _, x := range all {
 		squares += (x - mean) * (x - mean)
 	}
-	estimate, tail := value(a.estimates), (1-a.plan.Level)/2
+	estimate, rank := value(a.estimates), resample.Rank(len(all), (1+a.plan.Level)/2)
 	margin := a.t * math.Sqrt(squares/float64(len(all)-1)+extra)
 	slices.Sort(all)
 	around := resample.Interval{Low: estimate - margin, High: estimate + margin}
-	return new(around.Hull(resample.Interval{Low: quantile(all, tail), High: quantile(all, 1-tail)}))
-}
-
-// quantile is the value of rank ⌈(b+1)·level⌉ of b sorted ones, the first or
-// the last where there is none.
-func quantile(sorted []float64, level float64) float64 {
-	rank := int(math.Ceil(float64(len(sorted)+1)*level - 1e-9))
-	return sorted[min(max(rank, 1), len(sorted))-1]
+	return new(around.Hull(resample.Interval{Low: all[len(all)-rank], High: all[rank-1]}))
 }

@@ -29,6 +29,13 @@ type AndersonDarling struct{ A2, A2Star, P float64 }
 // Lilliefors is the largest distance D between the shares counted below a
 // score and the fitted curve's, on either side of each jump, with its p-value:
 // Dallal & Wilkinson's (1986) up to 0.1 and Molin & Abdi's (1998) above.
+//
+// Dallal & Wilkinson's formula drifts above some hundred people: where Molin &
+// Abdi's critical values are those of p = 0.05 it has 0.052 at n = 300, 0.057 at
+// 1,000, 0.069 at 10⁴ and 0.097 at 10⁶. Up to 1,000 people, and below 0.001, it
+// is kept, because it is the published one and what R's nortest gives. Else D is
+// brought to that of 100 people by the factor of those critical values,
+// (0.83+n)/√n - 0.01 (Abdi & Molin 2007), which has 0.050 at any n.
 type Lilliefors struct{ D, P float64 }
 
 // Test computes the tests. Their p-values are for scores without a step, and
@@ -90,6 +97,9 @@ func andersonDarlingP(a float64) float64 {
 
 func lillieforsP(d, n float64) float64 {
 	p := dallalWilkinsonP(d, n)
+	if n > 1000 && p >= 0.001 {
+		p = math.Max(0.001, dallalWilkinsonP(d*molinAbdiFactor(n)/molinAbdiFactor(100), 100))
+	}
 	if p > 0.1 {
 		return math.Max(0.1, molinAbdiP(d, n))
 	}
@@ -106,6 +116,9 @@ func dallalWilkinsonP(d, n float64) float64 {
 	root := math.Sqrt(n + 2.78019)
 	return math.Exp(-7.01256*d*d*(n+2.78019) + 2.99587*d*root - 0.122119 + 0.974598/math.Sqrt(n) + 1.67997/n)
 }
+
+// molinAbdiFactor times D's critical values is about the same for any n.
+func molinAbdiFactor(n float64) float64 { return (0.83+n)/math.Sqrt(n) - 0.01 }
 
 // molinAbdiP is a polynomial in a, which does away with the number of people
 // (as in Abdi & Molin 2007).

@@ -79,6 +79,18 @@ func TestPublishedCriticalValues(t *testing.T) {
 	}
 }
 
+// Critical values of any number of people (Abdi & Molin 2007): p does not
+// drift with it.
+func TestPOfVeryManyPeople(t *testing.T) {
+	for _, n := range []float64{1001, 1e4, 1e6, 1e9} {
+		for level, critical := range map[float64]float64{0.2: 0.741, 0.15: 0.775, 0.1: 0.819, 0.05: 0.895, 0.01: 1.035} {
+			d := critical / ((0.83+n)/math.Sqrt(n) - 0.01)
+			assert.InEpsilon(t, level, lillieforsP(d, n), 0.12, "n = %v, %v", n, level)
+		}
+	}
+	assert.InDelta(t, 0.0572, lillieforsP(0.895/((0.83+1000)/math.Sqrt(1000)-0.01), 1000), 5e-5, "up to 1,000 Dallal & Wilkinson's own")
+}
+
 func TestPValuesFall(t *testing.T) {
 	before := 1.0
 	for a := 0.02; a < 12; a += 0.01 {

@@ -1,6 +1,8 @@
 package shape
 
 import (
+	"math"
+
 	"tailgap/core/curve"
 	"tailgap/core/gap"
 	"tailgap/core/resample"
@@ -90,6 +92,12 @@ func Find(t gap.Table, s sample.Scale) Features {
 	}
 	f.Outlier = outlying(t.Counts.N, (f.Farthest-t.Moments.Mean)/t.Moments.SD)
 	return f
+}
+
+// piled is true for a score, up to noise, at which people are piled up.
+func (f *Features) piled(score, noise float64) bool {
+	at := func(p sample.Pile) bool { return p.People > 0 && math.Abs(score-p.Score) < noise }
+	return at(f.Floor) || at(f.Ceiling)
 }
 
 // fitted is the table with the curve that is fitted to its scores.

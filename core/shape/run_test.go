@@ -188,6 +188,37 @@ func TestHeapsAmongManyScores(t *testing.T) {
 	assert.NotNil(t, effects[Rest].Interval)
 }
 
+// A pile beside a heap is none of the scores around it: with the same people
+// everywhere else the heap on 5 has the surplus that it has without the pile.
+func TestPileBesideHeap(t *testing.T) {
+	counts := map[float64]int{3: 60, 4: 4, 5: 20, 6: 4, 7: 4}
+	for score := 8.0; score <= 40; score++ {
+		counts[score] = 4
+		if math.Mod(score, 5) == 0 {
+			counts[score] = 20
+		}
+	}
+	var scores []float64
+	for score, people := range counts {
+		for range people {
+			scores = append(scores, score)
+		}
+	}
+	p := planned(scores, sample.StepChoice{Size: 1}, nil, false, atLeast(5)...)
+	features := Find(p.Table, p.Scale)
+	require.Equal(t, sample.Pile{Score: 3, People: 60}, features.Floor)
+	require.Equal(t, 5.0, features.Heaps.Spacing)
+	e := newEvaluator(&p, newSpans(p.fitted(), 1), features)
+	count := make([]int32, len(p.Table.U))
+	for i, people := range p.Table.Counts.Count {
+		count[i] = int32(people)
+	}
+	v := values{cutoffs: make([]parts, 1)}
+	require.True(t, e.evaluate(&p, count, &v))
+	require.Equal(t, 5.0, p.Table.Counts.Score[e.heaps[0].at])
+	assert.InDelta(t, 20-4, e.surplus[0], 1e-12)
+}
+
 // Newcomb's time of -44 is an outlier; the others of the open data that are
 // further than Grubbs's limit for their number are named here.
 func TestOutliers(t *testing.T) {

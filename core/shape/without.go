@@ -69,7 +69,7 @@ func (e *evaluator) without(kind Kind, into *values) {
 func spread(s *gap.Sums) bool { return s.N >= 2 && s.M2 > 1e-10*(1+s.Mean*s.Mean) }
 
 // heap is a round score with the scores around it, over which its surplus is
-// spread: their entries and weights, and what spreading one person does to the
+// spread, those with a pile of people left out: their entries and weights, and what spreading one person does to the
 // sums and to the people inside each region.
 type heap struct {
 	at     int
@@ -105,7 +105,7 @@ func (e *evaluator) newHeap(scale sample.Scale, at int) (h heap, ok bool) {
 	total, inside := 0.0, make([]float64, len(e.regions))
 	for k := -math.Floor(steps + 0.1); k <= steps+0.1; k++ {
 		score := scale.Score(index + k)
-		if score < lowest-scale.Step/4 || score > highest+scale.Step/4 {
+		if score < lowest-scale.Step/4 || score > highest+scale.Step/4 || e.features.piled(score, scale.Step/4) {
 			continue
 		}
 		weight := 1.0
