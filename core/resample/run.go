@@ -69,7 +69,6 @@ import (
 	"context"
 	"math"
 	"runtime"
-	"sync/atomic"
 
 	"tailgap/core/gap"
 )
@@ -113,30 +112,11 @@ func (p Plan) Blocks() int { return (p.Replicates + blockSize - 1) / blockSize }
 // with the number of replicates done.
 func Run(ctx context.Context, plan Plan, progress func(done int)) (Quantiles, error) {
 	studies := newStudies(plan)
-	reports := make(chan report)
-	var next atomic.Int64
-	for _, s := range studies {
-		go s.work(ctx, &next, reports)
+	workers := make([]Worker, len(studies))
+	for i, s := range studies {
+		workers[i] = s.work
 	}
-	var failure any
-	done := 0
-	for working := len(studies); working > 0; {
-		r := <-reports
-		if r.ended {
-			working--
-			if r.failure != nil {
-				failure = r.failure
-			}
-			continue
-		}
-		done += r.done
-		if progress != nil {
-			progress(done)
-		}
-	}
-	if failure != nil {
-		panic(failure) // here the caller can recover it
-	}
+	InBlocks(ctx, plan.Blocks(), workers, progress)
 	if err := ctx.Err(); err != nil {
 		return Quantiles{}, err
 	}

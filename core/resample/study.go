@@ -4,7 +4,6 @@ import (
 	"context"
 	"math"
 	"math/rand/v2"
-	"sync/atomic"
 
 	"tailgap/core/gap"
 )
@@ -106,25 +105,9 @@ func (s *study) point(p gap.Point, known map[gap.Point]int) int {
 	return index
 }
 
-// report is what a goroutine tells of its work: so many replicates done, or
-// that it has ended, and with what panic if there was one.
-type report struct {
-	done    int
-	ended   bool
-	failure any
-}
-
-// work takes blocks of replicates, the next that nobody has taken, until they
-// come to the end or the context ends.
-func (s *study) work(ctx context.Context, next *atomic.Int64, reports chan<- report) {
-	defer func() { reports <- report{ended: true, failure: recover()} }()
-	for {
-		block := int(next.Add(1)) - 1
-		size := s.plan.replicates(blocks{{block, block + 1}})
-		if size == 0 || !s.block(ctx, block, size, func(done int) { reports <- report{done: done} }) {
-			return
-		}
-	}
+// work is a Worker.
+func (s *study) work(ctx context.Context, block int, tell func(done int)) {
+	s.block(ctx, block, s.plan.replicates(blocks{{block, block + 1}}), tell)
 }
 
 // toldAtOnce is how many replicates are made between two tellings of progress.

@@ -4,7 +4,6 @@ import (
 	"context"
 	"math"
 	"runtime"
-	"sync/atomic"
 
 	"tailgap/core/resample"
 )
@@ -97,31 +96,17 @@ func draw(ctx context.Context, plan *Plan, newEvaluator func() *evaluator, progr
 	if workers <= 0 {
 		workers = runtime.GOMAXPROCS(0)
 	}
-	workers = min(workers, (plan.Replicates+blockSize-1)/blockSize)
-	first := newEvaluator()
-	d := &draws{plan: plan, drawer: resample.NewDrawer(first.table.Counts),
-		all: make([]values, plan.Replicates), spread: make([]bool, plan.Replicates), reports: make(chan report)}
-	go d.work(ctx, first)
-	for range workers - 1 {
-		go d.work(ctx, newEvaluator())
-	}
-	var failure any
-	for done := 0; workers > 0; {
-		r := <-d.reports
-		switch {
-		case r.ended:
-			workers--
-			if r.failure != nil {
-				failure = r.failure
-			}
-		default:
-			done += r.done
-			progress(done)
+	blocks := (plan.Replicates + blockSize - 1) / blockSize
+	d := &draws{plan: plan, all: make([]values, plan.Replicates), spread: make([]bool, plan.Replicates)}
+	var all []resample.Worker
+	for range min(workers, blocks) {
+		e := newEvaluator()
+		if all == nil {
+			d.drawer = resample.NewDrawer(e.table.Counts)
 		}
+		all = append(all, d.worker(e))
 	}
-	if failure != nil {
-		panic(failure) // here the caller can recover it
-	}
+	resample.InBlocks(ctx, blocks, all, progress)
 	kept := d.all[:0]
 	for i, v := range d.all {
 		if d.spread[i] {
@@ -134,44 +119,30 @@ func draw(ctx context.Context, plan *Plan, newEvaluator func() *evaluator, progr
 // draws are the replicates in the making. Each has its place, so that it
 // doesn't matter which worker makes it.
 type draws struct {
-	plan    *Plan
-	drawer  resample.Drawer
-	all     []values
-	spread  []bool // those that have a spread
-	next    atomic.Int64
-	reports chan report
+	plan   *Plan
+	drawer resample.Drawer
+	all    []values
+	spread []bool // those that have a spread
 }
 
-// report is what a worker tells: so many replicates done, or that it has
-// ended, and with what panic if there was one.
-type report struct {
-	done    int
-	ended   bool
-	failure any
-}
-
-// work takes blocks of replicates, the next that nobody has taken, until there
-// are no more or the context ends.
-func (d *draws) work(ctx context.Context, e *evaluator) {
-	defer func() { d.reports <- report{ended: true, failure: recover()} }()
+// worker makes blocks of replicates.
+func (d *draws) worker(e *evaluator) resample.Worker {
 	var stream resample.Stream
 	count := make([]int32, len(e.table.U))
-	for {
-		block := int(d.next.Add(1)) - 1
+	return func(ctx context.Context, block int, tell func(done int)) {
 		from, to := block*blockSize, min((block+1)*blockSize, len(d.all))
-		if from >= to {
-			return
-		}
 		stream.Restart(d.plan.Seed^ownStream, block)
+		cutoffs := len(d.plan.Cutoffs)
+		room := make([]parts, (to-from)*cutoffs)
 		for i := from; i < to; i++ {
 			if ctx.Err() != nil {
 				return
 			}
 			d.drawer.Draw(&stream, count)
-			d.all[i].cutoffs = make([]parts, len(d.plan.Cutoffs))
+			d.all[i].cutoffs, room = room[:cutoffs:cutoffs], room[cutoffs:]
 			d.spread[i] = e.evaluate(d.plan, count, &d.all[i])
 		}
-		d.reports <- report{done: to - from}
+		tell(to - from)
 	}
 }
 
