@@ -86,16 +86,15 @@ func (c *cells) cell(score int) int {
 
 // What things cost, in index draws (of one person among few).
 const (
-	costOfBinomial = 40 // drawing the people of one score or cell
-	costOfScore    = 3  // adding them up
-	costOfSpread   = 8  // spreading the people of one cell
+	costOfScore  = 3 // adding up the people of one score or cell
+	costOfSpread = 8 // spreading the people of one cell
 )
 
 // binnedIsFaster is true where a resample of so many cells costs less than
 // half of one of all scores; from close calls the direct form comes out.
 func binnedIsFaster(counts sample.Counts, cells int) bool {
 	scores, people := len(counts.Count), counts.N
-	direct := min(people, scores*costOfBinomial) + scores*costOfScore
-	binned := min(people, cells*costOfBinomial) + cells*(costOfScore+costOfSpread)
-	return 2*binned < direct
+	_, direct := fastest(people, scores)
+	_, binned := fastest(people, cells)
+	return 2*(binned+cells*(costOfScore+costOfSpread)) < direct+scores*costOfScore
 }

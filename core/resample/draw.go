@@ -1,48 +1,95 @@
 package resample
 
-import "tailgap/core/sample"
+import (
+	"math"
+
+	"tailgap/core/sample"
+)
 
 // drawer draws resampled count tables: n people with replacement from the
 // people of a count table.
 type drawer struct {
-	counts sample.Counts
-	rows   []uint32 // for each person, the index of the score: index draws; nil: conditional binomials
+	counts   sample.Counts
+	rows     []uint32  // for each person, the index of the score; nil: conditional binomials
+	poissons *poissons // draw most people score by score; nil: everyone is drawn by index
 }
 
-// newDrawer chooses the faster way for the table: an index draw for each
-// person, or a binomial draw for each distinct score.
+// newDrawer chooses the fastest way for the table: an index draw for each
+// person; a Poisson draw for each distinct score and a few people by index; or
+// a binomial draw for each distinct score.
 func newDrawer(counts sample.Counts) drawer {
 	d := drawer{counts: counts}
-	if counts.N <= costOfBinomial*len(counts.Count) {
-		d.rows = make([]uint32, 0, counts.N)
-		for i, count := range counts.Count {
-			for range count {
-				d.rows = append(d.rows, uint32(i))
-			}
+	way, _ := fastest(counts.N, len(counts.Count))
+	if way == byBinomials {
+		return d
+	}
+	d.rows = make([]uint32, 0, counts.N)
+	for i, count := range counts.Count {
+		for range count {
+			d.rows = append(d.rows, uint32(i))
 		}
+	}
+	if way == byPoissons {
+		d.poissons = newPoissons(counts.Count, counts.N)
 	}
 	return d
 }
 
+// The ways to draw a resample.
+const (
+	byIndex = iota
+	byPoissons
+	byBinomials
+)
+
+// What a draw costs, in index draws of one person.
+const (
+	costOfBinomial = 40
+	costOfPoisson  = 3
+)
+
+// fastest is the way with the least cost for n people with so many scores.
+func fastest(n, scores int) (way, cost int) {
+	missing := int(2 * shortBy * math.Sqrt(float64(n))) // twice: of many people, a row is seldom at hand
+	way, cost = byIndex, n
+	if c := costOfPoisson*scores + missing; c < cost && n > 4*shortBy*shortBy {
+		way, cost = byPoissons, c
+	}
+	if c := costOfBinomial * scores; c < cost {
+		way, cost = byBinomials, c
+	}
+	return way, cost
+}
+
 // draw fills into with a resample's counts of the distinct scores.
 func (d *drawer) draw(r *stream, into []int32) {
-	switch {
-	case d.rows == nil:
+	if d.rows == nil {
 		d.drawBinomials(r, into)
-	case len(d.rows) > 1<<12:
-		drawPeople(r, d.rows, into)
-	default:
-		drawFewPeople(r, d.rows, into)
+		return
+	}
+	missing := len(d.rows)
+	if d.poissons == nil {
+		clear(into)
+	} else {
+		drawn := d.poissons.draw(r, into)
+		for drawn > len(d.rows) {
+			drawn = d.poissons.draw(r, into)
+		}
+		missing -= drawn
+	}
+	if len(d.rows) > 1<<12 {
+		drawPeople(r, d.rows, missing, into)
+	} else {
+		drawFewPeople(r, d.rows, missing, into)
 	}
 }
 
-// drawPeople draws as many rows as there are, with replacement, by Lemire's
-// (2019) multiply-shift with rejection, so that everyone has the same chance.
-func drawPeople(r *stream, rows []uint32, into []int32) {
-	clear(into)
+// drawPeople draws so many rows, with replacement, by Lemire's (2019)
+// multiply-shift with rejection, so that everyone has the same chance.
+func drawPeople(r *stream, rows []uint32, people int, into []int32) {
 	n := uint64(len(rows))
 	reject := (1 << 32) % n
-	for range rows {
+	for range people {
 		product := (r.Uint64() >> 32) * n
 		for product&0xffffffff < reject {
 			product = (r.Uint64() >> 32) * n
@@ -55,10 +102,9 @@ func drawPeople(r *stream, rows []uint32, into []int32) {
 // are enough for one. This is the innermost loop of most answers, and calls
 // and memory are slow in WebAssembly: so it is written out, and keeps the
 // stream in its hands.
-func drawFewPeople(r *stream, rows []uint32, into []int32) {
-	clear(into)
+func drawFewPeople(r *stream, rows []uint32, left int, into []int32) {
 	state := *r
-	left, n := len(rows), uint32(len(rows))
+	n := uint32(len(rows))
 	reject := (1 << 16) % n
 	var random uint64
 	for left >= 4 {

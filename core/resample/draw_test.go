@@ -61,11 +61,34 @@ func TestBinomialHasItsDistribution(t *testing.T) {
 	assert.Equal(t, 9, r.binomial(9, 1))
 }
 
-// Both ways of drawing a resample give multinomial counts.
+// The alias tables have the probabilities of their Poisson distributions
+// (gonum's), to 2⁻³² for each column, and nothing else.
+func TestPoissonTables(t *testing.T) {
+	for _, mean := range []float64{0.05, 0.9, 1, 3.7, 20, 333.3, 61_000} {
+		var p poissons
+		p.add(mean)
+		table, got := p.scores[0], map[int]float64{}
+		for number, column := range p.columns {
+			own := (float64(column.threshold) + 0.5) / (1 << 32)
+			got[int(table.least)+number] += own / float64(len(p.columns))
+			got[int(table.least)+int(column.alias)] += (1 - own) / float64(len(p.columns))
+		}
+		poisson, total := distuv.Poisson{Lambda: mean}, 0.0
+		for k, probability := range got {
+			assert.InDelta(t, poisson.Prob(float64(k)), probability, 1e-9, "mean %v, %d", mean, k)
+			total += probability
+		}
+		assert.InDelta(t, 1, total, 1e-9)
+		assert.LessOrEqual(t, len(p.columns), int(40+40*math.Sqrt(mean)))
+	}
+}
+
+// All ways of drawing a resample give multinomial counts.
 func TestDrawIsMultinomial(t *testing.T) {
 	counts := sample.Count([]float64{1, 1, 1, 2, 2, 4, 4, 4, 4, 7, 9})
 	for name, d := range map[string]drawer{
 		"index draws":           newDrawer(counts),
+		"Poisson draws":         {counts, newDrawer(counts).rows, newPoissons(counts.Count, counts.N)},
 		"conditional binomials": {counts: counts},
 	} {
 		const draws = 100_000
@@ -97,6 +120,8 @@ func TestDrawIsMultinomial(t *testing.T) {
 	assert.NotNil(t, newDrawer(counts).rows)
 	many := sample.Counts{Score: []float64{1, 2}, Count: []int{500, 500}, N: 1000}
 	assert.Nil(t, newDrawer(many).rows, "two distinct scores of 1,000 people are drawn by binomials")
+	assert.NotNil(t, newDrawer(sample.Count(wholeNumbers(1000))).poissons, "some fifty of 1,000 people by Poisson numbers")
+	assert.Nil(t, newDrawer(sample.Count(scoresOf("normal", 1000))).poissons, "a thousand by index")
 }
 
 func TestLargestIsTheOrderStatistic(t *testing.T) {
