@@ -100,6 +100,9 @@ func TestVerdictInPercentOfTheCount(t *testing.T) {
 	assert.True(t, tolerance.OfCount())
 	limits := func(high12, low08 float64) func(float64) verdict.Limits {
 		return func(weight float64) verdict.Limits {
+			if weight == 1 {
+				return verdict.Limits{Low: high12 - 0.02, High: low08 + 0.02}
+			}
 			if weight == 1.2 {
 				return verdict.Limits{Gap: high12 - 0.01, Low: high12 - 0.02, High: high12}
 			}
@@ -114,6 +117,24 @@ func TestVerdictInPercentOfTheCount(t *testing.T) {
 	assert.True(t, none.OfCount(), "a part of the count, be it none of it")
 	assert.True(t, none.InPoints().None())
 	assert.Nil(t, verdict.NewTolerance(nil, limit(t, "100%count"), 0).Low, "a count can't be missed by more than all of it")
+}
+
+// Too high by more than a part of the count, for sure, but not for sure too
+// high: that is unsettled.
+func TestAPartOfTheCountFailsWithTheGap(t *testing.T) {
+	tolerance := verdict.NewTolerance(limit(t, "20%count"), limit(t, "20%count"), 0)
+	limits := func(gapLow, gapHigh, low, high float64) func(float64) verdict.Limits {
+		return func(weight float64) verdict.Limits {
+			if weight == 1 {
+				return verdict.Limits{Low: gapLow, High: gapHigh}
+			}
+			return verdict.Limits{Low: low, High: high}
+		}
+	}
+	assert.Equal(t, verdict.Fails, verdict.Of(tolerance, limits(0.01, 0.2, 0.02, 0.03)))
+	assert.Equal(t, verdict.Unsettled, verdict.Of(tolerance, limits(-0.01, 0.2, 0.02, 0.03)))
+	assert.Equal(t, verdict.Fails, verdict.Of(tolerance, limits(-0.2, -0.01, -0.03, -0.02)))
+	assert.Equal(t, verdict.Unsettled, verdict.Of(tolerance, limits(-0.2, 0.01, -0.03, -0.02)))
 }
 
 func TestTrivial(t *testing.T) {
