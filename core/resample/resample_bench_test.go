@@ -41,15 +41,20 @@ func BenchmarkOneCutoff(b *testing.B) {
 	counts := sample.Count(testdata.Column("bench/scores.csv", "score"))
 	moments := counts.Moments()
 	table := gap.NewTable(counts, moments, curve.FitNormal(moments))
-	plan := Plan{Table: table, Weights: []float64{1}, Level: 0.95, Replicates: 10_000, Seed: 1, Workers: 1}
+	plan := Plan{Table: table, Weights: []float64{1}, Level: 0.95, Replicates: 10_000, Seed: 1}
 	plan.Regions = []gap.Region{table.Tail(gap.Threshold{At: 60, Point: 60})}
-	for b.Loop() {
-		plan.Estimates = table.Estimates(plan.Regions)
-		quantiles, err := Run(context.Background(), plan, nil)
-		if err != nil {
-			b.Fatal(err)
-		}
-		IntervalOf(plan.Estimates[0], 1, quantiles.Region[0][0], StudentT(counts.N, plan.Level), true)
+	plan.Estimates = table.Estimates(plan.Regions)
+	for _, workers := range []int{1, 2} {
+		plan.Workers = workers
+		b.Run(fmt.Sprintf("workers=%d", workers), func(b *testing.B) {
+			for b.Loop() {
+				quantiles, err := Run(context.Background(), plan, nil)
+				if err != nil {
+					b.Fatal(err)
+				}
+				IntervalOf(plan.Estimates[0], 1, quantiles.Region[0][0], StudentT(counts.N, plan.Level), true)
+			}
+		})
 	}
 }
 

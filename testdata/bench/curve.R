@@ -1,11 +1,16 @@
-# The gap at every threshold, 10,000 bootstrap samples, by boot::boot: seconds
-# of the fastest of three ways to write the statistic, which returns the gap
-# alone (no standard errors). Run from testdata/bench:  Rscript curve.R
+# The gap at every threshold, 10,000 bootstrap samples, by boot::boot, with a
+# statistic that returns the gap alone (no standard errors): seconds of the
+# plain vectorised way to write it, and of the fastest of three that count
+# first. Run from testdata/bench:  Rscript curve.R
 library(boot)
 x <- read.csv("scores.csv")$score
 low <- min(x); values <- low:max(x); n <- length(x); k <- length(values)
 beyond <- function(counts) rev(cumsum(rev(counts)))
 
+plain <- function(x, i) {
+  y <- x[i]
+  pnorm(values, mean(y), sd(y), lower.tail = FALSE) - colMeans(outer(y, values, ">="))
+}
 by_index <- function(x, i) {
   y <- x[i]
   m <- mean(y); s <- sqrt(sum((y - m)^2) / (n - 1))
@@ -32,4 +37,4 @@ ways <- c(
   counts = seconds(function() boot(x, by_counts, 10000)),
   frequency = seconds(function() boot(x, by_frequency, 10000, stype = "f"))
 )
-cat(names(which.min(ways)), min(ways), "\n")
+cat(seconds(function() boot(x, plain, 10000)), names(which.min(ways)), min(ways), "\n")
