@@ -30,7 +30,7 @@ type Estimate struct {
 // Set estimates the region from the sums of the sample, or of a resample, and
 // from the curve as they make it read. Readings, one for each place where the
 // curve is read, and estimates, one for each region, are the inner loop of
-// every answer: one exponential a reading, one division an estimate.
+// every answer: one look at the curve a reading, one division an estimate.
 func (e *Estimate) Set(r *Region, s *Sums, c *Reading, in Inside) {
 	e.N, e.Inside, e.Counted = s.N, in.K, in.K*s.perN
 	e.Curve, e.V, e.slope, e.z = c.share, c.v, c.slope, c.z
