@@ -68,7 +68,7 @@ func judgeColumn(ctx context.Context, question Question, column sample.Column, i
 	if err := w.run(ctx, index, runner, meter.stage(units.drawing)); err != nil {
 		return Result{}, err
 	}
-	if err := w.find(ctx, meter.stage(units.shape)); err != nil {
+	if err := w.find(ctx, meter.stage(units.shape), meter.stage(units.testing)); err != nil {
 		return Result{}, err
 	}
 	return w.result(&steps{ctx: ctx, tell: meter.stage(units.assembling)})

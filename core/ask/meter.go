@@ -15,7 +15,7 @@ type meter struct {
 }
 
 // stages are the units of the stages of one column, in their order.
-type stages struct{ counting, planning, drawing, shape, assembling int }
+type stages struct{ counting, planning, drawing, shape, testing, assembling int }
 
 // What a stage takes, in replicates of as many scores.
 func stagesOf(question Question, column sample.Column) stages {
@@ -23,7 +23,7 @@ func stagesOf(question Question, column sample.Column) stages {
 	s := stages{
 		counting: 1 + scores/500, planning: 1 + scores/1000,
 		drawing: question.Replicates, shape: question.shapeReplicates() + scores/1000,
-		assembling: 1 + len(question.Cutoffs),
+		testing: 1 + scores/2000, assembling: 1 + len(question.Cutoffs),
 	}
 	if question.Everyone {
 		s.drawing = 0
@@ -32,7 +32,7 @@ func stagesOf(question Question, column sample.Column) stages {
 }
 
 func (s stages) total() int {
-	return s.counting + s.planning + s.drawing + s.shape + s.assembling
+	return s.counting + s.planning + s.drawing + s.shape + s.testing + s.assembling
 }
 
 func newMeter(progress Progress, question Question, columns []sample.Column) *meter {

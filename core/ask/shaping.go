@@ -28,10 +28,10 @@ func (w *work) shaping() shape.Plan {
 // beside the question's own.
 func (q Question) shapeReplicates() int { return min(shape.Replicates, q.Replicates) }
 
-// find looks at the shape of the scores.
-func (w *work) find(ctx context.Context, tell func(done, of int)) (err error) {
-	if w.found, err = shape.Run(ctx, w.shaping(), tell); err == nil && !w.question.Everyone {
-		w.tested, err = shape.Test(ctx, w.table)
+// find looks at the shape of the scores, and tests it.
+func (w *work) find(ctx context.Context, tellRun, tellTest func(done, of int)) (err error) {
+	if w.found, err = shape.Run(ctx, w.shaping(), tellRun); err == nil && !w.question.Everyone {
+		w.tested, err = shape.Test(ctx, w.table, tellTest)
 	}
 	return err
 }

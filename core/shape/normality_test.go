@@ -38,7 +38,7 @@ func TestNormalityAgreesWithR(t *testing.T) {
 			}
 		}
 		testdata.JSON(path, &want)
-		got, err := Test(context.Background(), table(testdata.Open(want.Dataset, want.Column)))
+		got, err := Test(context.Background(), table(testdata.Open(want.Dataset, want.Column)), nil)
 		require.NoError(t, err)
 		a, l := want.Tests.AndersonDarling, want.Tests.Lilliefors
 		assert.InEpsilon(t, a.A2, got.AndersonDarling.A2, 1e-9, path)
@@ -110,21 +110,21 @@ func TestPValuesFall(t *testing.T) {
 }
 
 func TestFewPeopleAreNotTested(t *testing.T) {
-	few, err := Test(context.Background(), table([]float64{1, 2, 3, 5}))
+	few, err := Test(context.Background(), table([]float64{1, 2, 3, 5}), nil)
 	require.NoError(t, err)
 	assert.Equal(t, Tests{}, few)
-	some, err := Test(context.Background(), table([]float64{1, 2, 3, 5, 9}))
+	some, err := Test(context.Background(), table([]float64{1, 2, 3, 5, 9}), nil)
 	require.NoError(t, err)
 	assert.Nil(t, some.AndersonDarling)
 	assert.NotNil(t, some.Lilliefors)
 	given := table(testdata.Open("mathexam", "tests"))
 	given.Curve = curve.Normal{Mean: 20, SD: 4}
-	none, err := Test(context.Background(), given)
+	none, err := Test(context.Background(), given, nil)
 	require.NoError(t, err)
 	assert.Equal(t, Tests{}, none, "the p-values are for a fitted curve")
 	ended, cancel := context.WithCancel(context.Background())
 	cancel()
-	_, err = Test(ended, table(testdata.Open("mathexam", "tests")))
+	_, err = Test(ended, table(testdata.Open("mathexam", "tests")), nil)
 	assert.ErrorIs(t, err, context.Canceled)
 }
 
@@ -136,7 +136,7 @@ func TestFarTailsAreTested(t *testing.T) {
 		scores[i] = float64(i%7) * 1e-3
 	}
 	scores[0] = 1e6 // 70 SDs out
-	got, err := Test(context.Background(), table(scores))
+	got, err := Test(context.Background(), table(scores), nil)
 	require.NoError(t, err)
 	assert.Greater(t, got.AndersonDarling.A2, 1000.0)
 	assert.Less(t, got.AndersonDarling.A2, 1e6)

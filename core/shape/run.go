@@ -15,7 +15,9 @@ import (
 func Run(ctx context.Context, plan Plan, progress func(done, of int)) (Findings, error) {
 	work := preparation{ctx: ctx, progress: progress, of: mostPreparing + plan.Replicates}
 	features := Find(plan.Table, plan.Scale)
-	scores := newSpans(plan.fitted(), plan.Scale.Step)
+	fitted := plan.fitted()
+	work.step()
+	scores := newSpans(fitted, plan.Scale.Step)
 	work.step()
 	whole := newEvaluator(&plan, scores, features)
 	whole.pause = work.step
