@@ -110,20 +110,27 @@ func (s *study) work(ctx context.Context, block int, tell func(done int)) {
 	s.block(ctx, block, s.plan.replicates(blocks{{block, block + 1}}), tell)
 }
 
-// toldAtOnce is how many replicates are made between two tellings of progress.
-const toldAtOnce = 16
+// toldAtOnce is how many replicates are made between two tellings of progress,
+// which cost as much as some short replicates: a block of them, unless there
+// is so much to judge that a block takes many milliseconds.
+func (s *study) toldAtOnce() int {
+	if len(s.targets) > 1000 {
+		return blockSize / 4
+	}
+	return blockSize
+}
 
 // block runs the replicates of one block, telling how many more are done;
 // false when the context ended.
 func (s *study) block(ctx context.Context, block, size int, tell func(done int)) bool {
 	s.stream.restart(s.plan.Seed, block)
-	untold := 0
+	untold, atOnce := 0, s.toldAtOnce()
 	for i := range size {
 		if ctx.Err() != nil {
 			return false
 		}
 		s.replicate()
-		if untold++; untold == toldAtOnce || i == size-1 {
+		if untold++; untold == atOnce || i == size-1 {
 			tell(untold)
 			untold = 0
 		}
