@@ -73,7 +73,7 @@ fuzz:
 
 ## compare: time tailgap beside R's boot and SciPy, and as WebAssembly; needs R with boot, and SciPy
 compare:
-	cd testdata/bench && python3 run.py
+	cd testdata/bench && "$${PYTHON:-/usr/bin/python3}" run.py
 
 ## calibrate: simulate how often intervals, bands and verdicts are right, into testdata/calibration; most of an hour
 calibrate:

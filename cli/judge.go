@@ -45,8 +45,9 @@ FILE is delimited text (comma, semicolon or tab); - is standard input; rows of
 several files are pooled. Results go to standard output.
 
 Exit status: 0 done, and every verdict holds or none was asked for; 1 the
-program's own failure; 2 the command line or the data can't be used; 3 at least
-one verdict fails; 4 none fails and at least one is unsettled.`,
+program's own failure, or stopped before it was done (Ctrl-C); 2 the command
+line or the data can't be used; 3 at least one verdict fails; 4 none fails and
+at least one is unsettled.`,
 		Example: `  tailgap judge --demo
   tailgap judge scores.csv --score vocabulary --cutoff '<=11' --cutoff '>=30'
   tailgap judge scores.csv --score vocabulary --cutoff '<=11' --too-high 1pt --too-low 2pt --heads 4000
