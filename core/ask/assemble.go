@@ -5,7 +5,6 @@ import (
 
 	"tailgap/core/cutoff"
 	"tailgap/core/gap"
-	"tailgap/core/resample"
 	"tailgap/core/verdict"
 )
 
@@ -14,12 +13,11 @@ import (
 type shown struct {
 	*work
 	region int
-	tail   bool
 	lower  bool
 }
 
 func (w *work) shownAt(c cutoff.Cutoff, halfStep bool) shown {
-	return shown{w, w.region(c, halfStep), c.Side != cutoff.Stretch, c.Side.Lower()}
+	return shown{w, w.region(c, halfStep), c.Side.Lower()}
 }
 
 func (s shown) estimate() *gap.Estimate { return s.plan.Estimates[s.region] }
@@ -45,20 +43,6 @@ func (s shown) gap(weight float64) float64 {
 	return s.curveShare() - weight*s.countedShare()
 }
 
-// interval is the interval of curve share - weight·counted share; with a
-// fitted curve by the quantile of the studentised replicates at the weight of.
-func (s shown) interval(weight, of float64) resample.Interval {
-	if !s.table.Curve.Fitted {
-		return resample.ApartOf(s.apart(resample.Miss(s.question.Level)), weight)
-	}
-	quantile := s.quantiles.Region[s.region][s.weightIndex(of)]
-	i := resample.IntervalOf(s.estimate(), weight, quantile, s.t, s.tail)
-	if s.lower {
-		return i.Mirror(1 - weight)
-	}
-	return i
-}
-
 // limits are those that a verdict is judged by; all at the gap itself when
 // everyone was counted.
 func (s shown) limits(weight float64) verdict.Limits {
@@ -67,46 +51,19 @@ func (s shown) limits(weight float64) verdict.Limits {
 	if s.question.Everyone {
 		return l
 	}
-	i := s.interval(weight, weight)
+	i := s.judged.Interval(s.region, s.lower, weight, weight)
 	l.Low, l.High = i.Low, i.High
-	if !s.table.Curve.Fitted {
-		l.FixedLow, l.FixedHigh = s.apart(resample.Miss(s.question.Level)).CurveParts(weight)
-	}
+	l.FixedLow, l.FixedHigh = s.judged.FixedParts(s.region, s.lower, weight)
 	return l
 }
 
-// bandLimits are the simultaneous limits for a whole sweep. They hold the
-// interval for the one threshold, which can be wider where few people are
-// beyond it.
+// bandLimits are the simultaneous limits for a whole sweep.
 func (s shown) bandLimits(group int, weight float64) verdict.Limits {
-	l := s.limits(weight)
 	if s.question.Everyone {
-		return l
+		return s.limits(weight)
 	}
-	quantile := s.quantiles.Group[group][s.weightIndex(weight)]
-	if !s.table.Curve.Fitted {
-		i := resample.ApartOf(s.apart(resample.BandMiss(quantile, s.question.Level)), weight)
-		l.Low, l.High = i.Low, i.High
-		return l
-	}
-	band := resample.BandOf(s.estimate(), weight, quantile, s.sparse)
-	if s.lower {
-		band = band.Mirror(1 - weight)
-	}
-	l.Low, l.High = math.Min(l.Low, band.Low), math.Max(l.High, band.High)
-	return l
-}
-
-func (w *work) weightIndex(weight float64) int {
-	if w.table.Curve.Known() {
-		return 0
-	}
-	for i, known := range w.plan.Weights {
-		if known == weight {
-			return i
-		}
-	}
-	panic("ask: a weight that was not planned")
+	i := s.judged.Band(s.region, group, s.lower, weight)
+	return verdict.Limits{Gap: s.gap(weight), Low: i.Low, High: i.High}
 }
 
 // decide gives the verdict by some limits. A limit in percent of the count

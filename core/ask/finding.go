@@ -89,21 +89,14 @@ func (w *work) finding(c cutoff.Cutoff) Finding {
 
 // method names how the interval was made.
 func (s shown) method() string {
-	switch {
-	case s.question.Everyone:
+	if s.question.Everyone {
 		return "exact"
-	case s.table.Curve.Known():
-		return "exact binomial, Clopper-Pearson"
-	case !s.table.Curve.Fitted:
-		return "exact binomial and the norms' own sampling, MOVER"
-	case s.tail && s.estimate().Few():
-		return "ghost-studentised, hull with score limits"
 	}
-	return "ghost-studentised"
+	return s.judged.Method(s.region)
 }
 
 func (s shown) ratioLimits(ratio float64) (low, high *float64) {
-	return resample.RatioLimits(ratio, func(weight float64) resample.Interval { return s.interval(weight, 1) })
+	return resample.RatioLimits(ratio, func(weight float64) resample.Interval { return s.judged.Interval(s.region, s.lower, weight, 1) })
 }
 
 func (w *work) heads(r Reading) *HeadCount {
@@ -127,7 +120,7 @@ func (w *work) sweep(plan sweepPlan) Sweep {
 	}
 	unbroken := false // every threshold since the last of the side's own was trusted
 	for i, at := range plan.thresholds {
-		s := shown{w, plan.regions[i], true, plan.side.Lower()}
+		s := shown{w, plan.regions[i], plan.side.Lower()}
 		out.CurveShare = append(out.CurveShare, s.curveShare())
 		out.CountedShare = append(out.CountedShare, s.countedShare())
 		out.GapPoints = append(out.GapPoints, toPoints(s.gap(1)))

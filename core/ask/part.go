@@ -109,25 +109,29 @@ func (m *Maker) Part() ([]byte, error) {
 
 // run draws the replicates, or has them drawn, unless everyone was counted:
 // then every gap is exact.
-func (w *work) run(ctx context.Context, column int, runner Runner, tell func(done, of int)) (err error) {
-	progress := func(done int) { tell(done, w.question.Replicates) }
-	switch {
-	case w.question.Everyone:
+func (w *work) run(ctx context.Context, column int, runner Runner, tell func(done, of int)) error {
+	if w.question.Everyone {
 		return ctx.Err()
-	case runner == nil:
-		w.quantiles, err = resample.Run(ctx, w.plan, progress)
-		return err
+	}
+	progress := func(done int) { tell(done, w.question.Replicates) }
+	quantiles, err := w.replicate(ctx, column, runner, progress)
+	w.judged = resample.Judge(w.plan, quantiles, w.scale.Step > 0)
+	return err
+}
+
+func (w *work) replicate(ctx context.Context, column int, runner Runner, progress func(done int)) (resample.Quantiles, error) {
+	if runner == nil {
+		return resample.Run(ctx, w.plan, progress)
 	}
 	encoded, err := runner(ctx, Job{column, w.plan.Blocks(), w.question.Replicates, w.plan.Memory(), w}, progress)
 	if err != nil {
-		return err
+		return resample.Quantiles{}, err
 	}
 	parts := make([]resample.Part, len(encoded))
 	for i, data := range encoded {
 		if err := parts[i].UnmarshalBinary(data); err != nil {
-			return err
+			return resample.Quantiles{}, err
 		}
 	}
-	w.quantiles, err = resample.Merge(w.plan, parts)
-	return err
+	return resample.Merge(w.plan, parts)
 }

@@ -25,10 +25,7 @@ type work struct {
 	plan      resample.Plan
 	known     map[key]int
 	sweeps    []sweepPlan
-	quantiles resample.Quantiles
-	aparts    map[apartKey]gap.Apart
-	t         float64 // Student's t at the question's level
-	sparse    resample.Sparse
+	judged    *resample.Judged // what the replicates came to; nil when everyone was counted
 	found     shape.Findings
 	tested    shape.Tests
 }
@@ -76,10 +73,7 @@ func newWork(question Question, column sample.Column, counts sample.Counts, step
 		scale:     sample.NewScale(counts, moments.SD, question.Step, question.Range),
 		tolerance: verdict.NewTolerance(question.TooHigh, question.TooLow, heads),
 		known:     map[key]int{},
-		aparts:    map[apartKey]gap.Apart{},
-		t:         resample.StudentT(counts.N, question.Level),
 	}
-	w.sparse = resample.BandSparse(counts.N, question.Level, w.scale.Step > 0)
 	if !w.countable() {
 		return nil, fmt.Errorf("the steps of %v on the scale of %s are too many to count; check the step and the range", w.scale.Step, column.Name)
 	}

@@ -39,7 +39,7 @@ func agree(t *testing.T, p Population, study Study) {
 	for _, threshold := range sweep {
 		regions = append(regions, []gap.Threshold{threshold})
 	}
-	done, err := j.resample(context.Background(), 1, regions, cutoffs)
+	judged, _, err := j.resample(context.Background(), 1, regions, cutoffs)
 	require.NoError(t, err)
 
 	question := ask.NewQuestion()
@@ -58,13 +58,13 @@ func agree(t *testing.T, p Population, study Study) {
 	require.NoError(t, err)
 	r := answer.Results[0]
 	for i, f := range r.Cutoffs {
-		assert.InDelta(t, *f.GapLow, 100*max(-1, done.interval(i).Low), 1e-9, "%s %v", p.Name, f.Cutoff)
-		assert.InDelta(t, *f.GapHigh, 100*min(1, done.interval(i).High), 1e-9, "%s %v", p.Name, f.Cutoff)
+		assert.InDelta(t, *f.GapLow, 100*max(-1, judged.Interval(i, false, 1, 1).Low), 1e-9, "%s %v", p.Name, f.Cutoff)
+		assert.InDelta(t, *f.GapHigh, 100*min(1, judged.Interval(i, false, 1, 1).High), 1e-9, "%s %v", p.Name, f.Cutoff)
 	}
 	require.Len(t, r.Sweeps[0].Threshold, shown)
 	for i := range shown {
-		assert.InDelta(t, r.Sweeps[0].BandLow[i], 100*max(-1, done.band(cutoffs+i).Low), 1e-9, p.Name)
-		assert.InDelta(t, r.Sweeps[0].BandHigh[i], 100*min(1, done.band(cutoffs+i).High), 1e-9, p.Name)
+		assert.InDelta(t, r.Sweeps[0].BandLow[i], 100*max(-1, judged.Band(cutoffs+i, 0, false, 1).Low), 1e-9, p.Name)
+		assert.InDelta(t, r.Sweeps[0].BandHigh[i], 100*min(1, judged.Band(cutoffs+i, 0, false, 1).High), 1e-9, p.Name)
 	}
 }
 

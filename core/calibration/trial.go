@@ -77,17 +77,8 @@ func (j judging) split(at float64, strict bool) gap.Threshold {
 	return gap.Split(j.scale, at, strict, j.HalfStep)
 }
 
-// judged is what the replicates of some regions came to.
-type judged struct {
-	judging
-	plan      resample.Plan
-	quantiles resample.Quantiles
-	t         float64
-	sparse    resample.Sparse
-}
-
 // resample draws the replicates; those regions from the sweep on are one group.
-func (j judging) resample(ctx context.Context, weight float64, regions [][]gap.Threshold, sweep int) (judged, error) {
+func (j judging) resample(ctx context.Context, weight float64, regions [][]gap.Threshold, sweep int) (*resample.Judged, []*gap.Estimate, error) {
 	plan := resample.Plan{Table: j.table, Weights: []float64{weight}, Level: j.Level, Replicates: j.Replicates, Seed: j.seed, Workers: 1}
 	for _, ends := range regions {
 		plan.Regions = append(plan.Regions, j.table.Region(ends))
@@ -97,29 +88,7 @@ func (j judging) resample(ctx context.Context, weight float64, regions [][]gap.T
 	}
 	plan.Estimates = j.table.Estimates(plan.Regions)
 	quantiles, err := resample.Run(ctx, plan, nil)
-	n := j.table.Counts.N
-	return judged{j, plan, quantiles, resample.StudentT(n, j.Level), resample.BandSparse(n, j.Level, j.scale.Step > 0)}, err
-}
-
-func (j judged) interval(region int) resample.Interval {
-	if !j.table.Curve.Fitted {
-		return j.apart(region, resample.Miss(j.Level))
-	}
-	return resample.IntervalOf(j.plan.Estimates[region], j.plan.Weights[0], j.quantiles.Region[region][0], j.t, !j.plan.Regions[region].Stretch)
-}
-
-// apart has the limits of a given curve's gap, each missed with the
-// probability miss.
-func (j judged) apart(region int, miss float64) resample.Interval {
-	a := j.table.Apart(j.plan.Regions[region], j.plan.Estimates[region], false, miss)
-	return resample.ApartOf(a, j.plan.Weights[0])
-}
-
-func (j judged) band(region int) resample.Interval {
-	if !j.table.Curve.Fitted {
-		return j.apart(region, resample.BandMiss(j.quantiles.Group[0][0], j.Level))
-	}
-	return j.interval(region).Hull(resample.BandOf(j.plan.Estimates[region], 1, j.quantiles.Group[0][0], j.sparse))
+	return resample.Judge(plan, quantiles, j.scale.Step > 0), plan.Estimates, err
 }
 
 // inPoints judges the gaps at the cutoffs and, for upper tails, over the sweep.
@@ -133,16 +102,16 @@ func (j judging) inPoints(ctx context.Context) trial {
 			regions = append(regions, []gap.Threshold{threshold})
 		}
 	}
-	done, err := j.resample(ctx, 1, regions, len(cutoffs))
+	judged, estimates, err := j.resample(ctx, 1, regions, len(cutoffs))
 	if err != nil {
 		return trial{failure: err}
 	}
 	out := trial{bandHolds: true}
 	for i := range cutoffs {
-		out.outcomes = append(out.outcomes, outcome{done.plan.Estimates[i].Gap(1), done.interval(i)})
+		out.outcomes = append(out.outcomes, outcome{estimates[i].Gap(1), judged.Interval(i, false, 1, 1)})
 	}
 	for i := len(cutoffs); i < len(cutoffs)+shown; i++ {
-		band, truth := done.band(i), j.truth(j.population, regions[i])
+		band, truth := judged.Band(i, 0, false, 1), j.truth(j.population, regions[i])
 		out.bandHolds = out.bandHolds && band.Low <= truth+rounding && truth-rounding <= band.High
 		trusted := band.Low >= -Trust/100 && band.High <= Trust/100
 		out.falseTrust = out.falseTrust || trusted && math.Abs(truth) > Trust/100
@@ -156,11 +125,11 @@ func (j judging) ofCount(ctx context.Context) trial {
 	var out trial
 	for _, ends := range j.regions(j.population, j.split) {
 		weight := j.weight(j.population, ends)
-		done, err := j.resample(ctx, weight, [][]gap.Threshold{ends}, 1)
+		judged, estimates, err := j.resample(ctx, weight, [][]gap.Threshold{ends}, 1)
 		if err != nil {
 			return trial{failure: err}
 		}
-		out.outcomes = append(out.outcomes, outcome{done.plan.Estimates[0].Gap(weight), done.interval(0)})
+		out.outcomes = append(out.outcomes, outcome{estimates[0].Gap(weight), judged.Interval(0, false, weight, weight)})
 	}
 	return out
 }

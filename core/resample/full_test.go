@@ -83,19 +83,10 @@ func TestWholeMethodAgreesWithNumPy(t *testing.T) {
 		below, above := e.SideSE(want.Weight)
 		assert.InEpsilonf(t, want.SEBelow, 100*below, 1e-9, "standard error below, %s", where)
 		assert.InEpsilonf(t, want.SEAbove, 100*above, 1e-9, "standard error above, %s", where)
-		var i, band resample.Interval
-		if given != nil {
-			limits := func(miss float64) resample.Interval {
-				return resample.ApartOf(table.Apart(plan.Regions[0], e, want.Side.Lower(), miss), want.Weight)
-			}
-			i, band = limits(resample.Miss(want.Level)), limits(resample.BandMiss(got.Group[0][0], want.Level))
-		} else {
-			i = resample.IntervalOf(e, want.Weight, got.Region[0][0], resample.StudentT(table.Counts.N, want.Level), true)
-			band = i.Hull(resample.BandOf(e, want.Weight, got.Group[0][0], resample.BandSparse(table.Counts.N, want.Level, scale.Step > 0)))
-			if want.Side.Lower() {
-				i, band = i.Mirror(1-want.Weight), band.Mirror(1-want.Weight)
-			}
-		}
+		// The band's at the cutoff itself, which need be none of its thresholds.
+		judged := resample.Judge(plan, got, scale.Step > 0)
+		i := judged.Interval(0, want.Side.Lower(), want.Weight, want.Weight)
+		band := judged.Band(0, 0, want.Side.Lower(), want.Weight)
 		assert.InDeltaf(t, want.Low, 100*i.Low, monteCarlo*want.SEBelow, "low limit, %s", where)
 		assert.InDeltaf(t, want.High, 100*i.High, monteCarlo*want.SEAbove, "high limit, %s", where)
 		monteCarlo = 8 * math.Max(want.BandSD, 0.004) // its limits are no straight lines of the quantile

@@ -4,8 +4,6 @@ import (
 	"math"
 
 	"gonum.org/v1/gonum/stat/distuv"
-
-	"tailgap/core/gap"
 )
 
 // Interval has the limits of a gap, proportions.
@@ -24,51 +22,6 @@ func (i Interval) Hull(other Interval) Interval {
 func StudentT(n int, level float64) float64 {
 	t := distuv.StudentsT{Mu: 0, Sigma: 1, Nu: float64(n - 1)}
 	return -t.Quantile((1 - level) / 2)
-}
-
-// IntervalOf is the ghost-studentised interval of Gap(weight): q standard
-// errors (gap.Estimate.SideSE) each way, q being the larger of Student's t and the quantile of the
-// studentised replicates; for a tail with fewer than ten people on either
-// side, the hull of that and the score limits.
-func IntervalOf(e *gap.Estimate, weight, quantile, t float64, tail bool) Interval {
-	i := margins(e, weight, math.Max(quantile, t))
-	if tail && e.Few() && weight > 0 {
-		low, high := e.ScoreLimits(weight, t)
-		i = i.Hull(Interval{low, high})
-	}
-	return i
-}
-
-// Sparse says where a band holds the score limits too: where fewer than People
-// are on either side of a threshold, at the quantile T.
-type Sparse struct{ People, T float64 }
-
-// BandSparse is a band's Sparse at the level, for n people. On a scale with a
-// step it is as for one cutoff. Without one the outermost thresholds stand at
-// the outermost scores themselves, wherever those fell, which no replicate
-// shows: few people there are too few more often, and what the level leaves is
-// divided by ten.
-func BandSparse(n int, level float64, step bool) Sparse {
-	if step {
-		return Sparse{gap.FewPeople, StudentT(n, level)}
-	}
-	return Sparse{3 * gap.FewPeople, StudentT(n, 1-(1-level)/10)}
-}
-
-// BandOf are the simultaneous limits at one threshold: quantile is that of the
-// largest studentised replicate over the whole sweep.
-func BandOf(e *gap.Estimate, weight, quantile float64, sparse Sparse) Interval {
-	i := margins(e, weight, quantile)
-	if math.Min(e.Inside, e.N-e.Inside) < sparse.People && weight > 0 {
-		low, high := e.ScoreLimits(weight, sparse.T)
-		i = i.Hull(Interval{low, high})
-	}
-	return i
-}
-
-func margins(e *gap.Estimate, weight, quantile float64) Interval {
-	below, above := e.SideSE(weight)
-	return Interval{e.Gap(weight) - quantile*below, e.Gap(weight) + quantile*above}
 }
 
 // RatioLimits are the limits of curve share over counted share: the weights

@@ -52,7 +52,7 @@ func BenchmarkOneCutoff(b *testing.B) {
 				if err != nil {
 					b.Fatal(err)
 				}
-				IntervalOf(plan.Estimates[0], 1, quantiles.Region[0][0], StudentT(counts.N, plan.Level), true)
+				Judge(plan, quantiles, true).Interval(0, false, 1, 1)
 			}
 		})
 	}

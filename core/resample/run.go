@@ -15,7 +15,7 @@
 // limits (gap.Estimate.ScoreLimits) too. The band for a sweep is made likewise at
 // every threshold, q being the level's quantile of the largest T* over all
 // thresholds of the sweep and one step beyond them; where few people are on
-// one side it holds the score limits at [BandSparse]'s quantile.
+// one side it holds the score limits too, further out without a step (bandSparse).
 //
 // # Many distinct scores
 //
